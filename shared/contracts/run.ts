@@ -1,0 +1,99 @@
+import { z } from 'zod';
+import { idSchema, instantSchema, personSchema } from './common.ts';
+import { boundsSchema } from './geometry.ts';
+import { jobSchema } from './job.ts';
+
+const seedSchema = z.number().int('A seed is a whole number.').min(0).max(4_294_967_295);
+
+const forestFields = {
+  trees: z.number().int().min(1, 'At least one tree.').max(2_000, 'At most 2000 trees.').default(100),
+  maxDepth: z.number().int().min(1).max(64).default(25),
+  minLeaf: z.number().int().min(1).max(10_000).default(1),
+  /** Bands drawn for a split (random forest) or a tree (random-subspace forest); null is the square root of their number. */
+  featuresPerTree: z.number().int().min(1).max(512).nullable().default(null),
+};
+export const classifierSchema = z.discriminatedUnion('kind', [
+  z.object({ kind: z.literal('random-forest'), ...forestFields }).strict(),
+  z.object({ kind: z.literal('random-subspace-forest'), ...forestFields }).strict(),
+  z.object({ kind: z.literal('nearest-neighbours'), neighbours: z.number().int().min(1).max(50).default(5) }).strict(),
+]);
+export type ClassifierRecipe = z.infer<typeof classifierSchema>;
+
+/** All that is needed to make the same class map again from the same scene and samples. */
+export const recipeSchema = z
+  .object({
+    sceneId: idSchema,
+    bandIds: z.array(idSchema).min(1, 'Choose at least one band.').max(64),
+    classIds: z.array(idSchema).min(2, 'Choose at least two classes.').max(254),
+    /** Share of each class's polygons held out of training for the accuracy figures. */
+    heldOutShare: z.number().min(0.05, 'At least 5 % is held out.').max(0.9, 'At most 90 % is held out.').default(0.3),
+    seed: seedSchema.default(1),
+    maxPixelsPerClass: z.number().int().min(10, 'At least 10 pixels a class.').max(200_000).default(1_000),
+    classifier: classifierSchema,
+  })
+  .strict();
+export type Recipe = z.infer<typeof recipeSchema>;
+export type RecipeInput = z.input<typeof recipeSchema>;
+
+export const startRunSchema = z
+  .object({
+    name: z.string().trim().max(120).default(''),
+    note: z.string().trim().max(2_000).default(''),
+    recipe: recipeSchema,
+  })
+  .strict();
+export type StartRun = z.input<typeof startRunSchema>;
+
+/** Checks of a recipe before it starts. */
+export const recipeCheckSchema = z.object({
+  problems: z.array(z.object({ severity: z.enum(['stops', 'warns']), text: z.string() })),
+  perClass: z.array(
+    z.object({
+      classId: idSchema,
+      name: z.string(),
+      trainingPolygons: z.number().int(),
+      heldOutPolygons: z.number().int(),
+    }),
+  ),
+});
+export type RecipeCheck = z.infer<typeof recipeCheckSchema>;
+
+export const classAreaSchema = z.object({
+  classId: idSchema.nullable(),
+  code: z.number().int(),
+  name: z.string(),
+  colour: z.string(),
+  pixels: z.number().int(),
+  areaHa: z.number(),
+});
+
+export const runSchema = z.object({
+  id: idSchema,
+  projectId: idSchema,
+  number: z.number().int(),
+  name: z.string(),
+  note: z.string(),
+  recipe: recipeSchema,
+  /** The class scheme as it stood at the start. */
+  classes: z.array(z.object({ id: idSchema, code: z.number().int(), name: z.string(), colour: z.string() })),
+  sceneName: z.string(),
+  job: jobSchema,
+  startedBy: personSchema.nullable(),
+  createdAt: instantSchema,
+  trainingPixels: z.number().int().nullable(),
+  trainingPolygons: z.number().int().nullable(),
+  heldOutPolygons: z.number().int().nullable(),
+  /** SHA-256 of the class raster's bytes, row-major, one byte a pixel. */
+  classMapSha256: z.string().nullable(),
+  /** SHA-256 over the samples' ids, versions and geometry and the scene's band digests. */
+  inputSha256: z.string().nullable(),
+  areas: z.array(classAreaSchema).nullable(),
+  overallAccuracy: z.number().nullable(),
+  bounds: boundsSchema.nullable(),
+  notes: z.array(z.string()),
+  abilities: z.object({ cancel: z.boolean(), delete: z.boolean() }),
+});
+export type Run = z.infer<typeof runSchema>;
+export const runListSchema = z.object({ runs: z.array(runSchema) });
+
+export const runProbeSchema = z.object({ code: z.number().int().nullable(), name: z.string().nullable() });

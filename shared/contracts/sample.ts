@@ -1,0 +1,113 @@
+import { z } from 'zod';
+import { idSchema, instantSchema, personSchema } from './common.ts';
+import { polygonSchema } from './geometry.ts';
+
+export const confidenceSchema = z.enum(['low', 'medium', 'high']);
+export type Confidence = z.infer<typeof confidenceSchema>;
+
+export const sampleSchema = z.object({
+  id: idSchema,
+  projectId: idSchema,
+  /** Number within the project, from 1, never used twice. */
+  number: z.number().int(),
+  sceneId: idSchema,
+  classId: idSchema,
+  geometry: polygonSchema,
+  confidence: confidenceSchema,
+  note: z.string(),
+  /** Scene pixels whose centre lies inside and that hold data. */
+  pixelCount: z.number().int(),
+  areaHa: z.number(),
+  version: z.number().int(),
+  createdBy: personSchema.nullable(),
+  createdAt: instantSchema,
+  updatedAt: instantSchema,
+  abilities: z.object({ edit: z.boolean() }),
+});
+export type Sample = z.infer<typeof sampleSchema>;
+export const sampleListSchema = z.object({ samples: z.array(sampleSchema) });
+export const sampleListQuerySchema = z.object({
+  bbox: z
+    .string()
+    .regex(/^-?[\d.]+(,-?[\d.]+){3}$/, 'bbox is west,south,east,north in degrees.')
+    .optional(),
+});
+
+const noteSchema = z.string().trim().max(2_000);
+export const createSampleSchema = z
+  .object({
+    /** Made by the client, so that sending again after a lost answer makes no second sample. */
+    id: idSchema,
+    sceneId: idSchema,
+    classId: idSchema,
+    geometry: polygonSchema,
+    confidence: confidenceSchema.default('medium'),
+    note: noteSchema.default(''),
+  })
+  .strict();
+export type CreateSample = z.input<typeof createSampleSchema>;
+export const updateSampleSchema = z
+  .object({
+    version: z.number().int(),
+    classId: idSchema.optional(),
+    geometry: polygonSchema.optional(),
+    confidence: confidenceSchema.optional(),
+    note: noteSchema.optional(),
+  })
+  .strict();
+export type UpdateSample = z.infer<typeof updateSampleSchema>;
+export const deleteSampleSchema = z.object({ version: z.number().int() }).strict();
+export const restoreSampleSchema = z.object({ versionNumber: z.number().int().min(1) }).strict();
+
+/** Why a drawing is refused; `at` is the place on the map. */
+export const drawingRefusalSchema = z.object({
+  reason: z.enum([
+    'not-closed',
+    'too-few-positions',
+    'self-crossing',
+    'no-area',
+    'outside-scene',
+    'outside-study-area',
+    'no-pixel',
+  ]),
+  found: z.string(),
+  wanted: z.string(),
+  advice: z.string(),
+  at: z.tuple([z.number(), z.number()]).nullable(),
+});
+export type DrawingRefusal = z.infer<typeof drawingRefusalSchema>;
+
+/** What a drawing would hold, asked while it is drawn; nothing is stored. */
+export const measureDrawingSchema = z.object({ sceneId: idSchema, geometry: polygonSchema }).strict();
+export const drawingMeasureSchema = z.object({
+  refusal: drawingRefusalSchema.nullable(),
+  pixelCount: z.number().int(),
+  nodataPixels: z.number().int(),
+  areaHa: z.number(),
+  spectrum: z.array(
+    z.object({
+      bandId: idSchema,
+      number: z.number().int(),
+      name: z.string(),
+      centreWavelengthUm: z.number().nullable(),
+      mean: z.number().nullable(),
+      standardDeviation: z.number().nullable(),
+      quantity: z.string(),
+    }),
+  ),
+});
+export type DrawingMeasure = z.infer<typeof drawingMeasureSchema>;
+
+export const sampleVersionSchema = z.object({
+  versionNumber: z.number().int(),
+  change: z.enum(['created', 'edited', 'deleted', 'restored']),
+  classId: idSchema,
+  geometry: polygonSchema,
+  confidence: confidenceSchema,
+  note: z.string(),
+  pixelCount: z.number().int(),
+  by: personSchema.nullable(),
+  at: instantSchema,
+});
+export type SampleVersion = z.infer<typeof sampleVersionSchema>;
+export const sampleHistorySchema = z.object({ versions: z.array(sampleVersionSchema) });
