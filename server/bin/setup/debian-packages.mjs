@@ -43,7 +43,9 @@ export function findProgram(name) {
  */
 export function listMissingPackages(packages) {
   return packages.filter((name) => {
-    const { programs = [], files = [] } = EVIDENCE[name] ?? {};
+    const evidence = EVIDENCE[name];
+    if (evidence === undefined) throw new Error(`Nothing is known that would show whether ${name} is installed.`);
+    const { programs = [], files = [] } = evidence;
     return !programs.every(findProgram) || !files.every((path) => existsSync(path));
   });
 }

@@ -1,7 +1,7 @@
 import { spawn } from 'node:child_process';
 import { existsSync, readFileSync, rmSync, writeFileSync, chownSync } from 'node:fs';
 import { connect } from 'node:net';
-import { join } from 'node:path';
+import { dirname, join } from 'node:path';
 import { readOrCreateSecret } from './data-folder.mjs';
 import { findProgram } from './debian-packages.mjs';
 import { listUserOptions, prepareMariadbFolder } from './mariadb-folder.mjs';
@@ -52,6 +52,7 @@ export async function startMariadb({ dataDir, durable = true, mayCreateDatabases
   const stop = async () => {
     await terminate(pid);
     await ended;
+    rmSync(dirname(folder.socket), { recursive: true, force: true });
   };
   try {
     await waitUntilAnswering(port, ended);
