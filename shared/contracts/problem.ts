@@ -14,6 +14,8 @@ export const problemSchema = z.object({
   errors: z.array(z.object({ path: z.string(), message: z.string() })).optional(),
   /** With 409: the version that stands on the server. */
   current: z.unknown().optional(),
+  /** With a refused drawing: the place it is about, longitude and latitude. */
+  at: z.tuple([z.number(), z.number()]).optional(),
   retryAfterSeconds: z.number().optional(),
 });
 export type Problem = z.infer<typeof problemSchema>;

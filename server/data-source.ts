@@ -1,0 +1,57 @@
+import 'reflect-metadata';
+import { DataSource } from 'typeorm';
+import type { Config } from './config.ts';
+import { AccountToken } from './entities/account-token.ts';
+import { Activity } from './entities/activity.ts';
+import { Band } from './entities/band.ts';
+import { EventEntry } from './entities/event-entry.ts';
+import { Job } from './entities/job.ts';
+import { LandClass } from './entities/land-class.ts';
+import { Membership } from './entities/membership.ts';
+import { Project } from './entities/project.ts';
+import { RateCounter } from './entities/rate-counter.ts';
+import { RunSample } from './entities/run-sample.ts';
+import { Run } from './entities/run.ts';
+import { SampleVersion } from './entities/sample-version.ts';
+import { Sample } from './entities/sample.ts';
+import { Scene } from './entities/scene.ts';
+import { Session } from './entities/session.ts';
+import { User } from './entities/user.ts';
+import { migrations } from './migrations/index.ts';
+
+export const entities = [
+  AccountToken,
+  Activity,
+  Band,
+  EventEntry,
+  Job,
+  LandClass,
+  Membership,
+  Project,
+  RateCounter,
+  Run,
+  RunSample,
+  Sample,
+  SampleVersion,
+  Scene,
+  Session,
+  User,
+];
+
+/** A MariaDB connection pool with our entities; the schema comes from migrations only. Call `initialize()`. */
+export function createDataSource(db: Config['db']): DataSource {
+  return new DataSource({
+    type: 'mariadb',
+    host: db.host,
+    port: db.port,
+    username: db.user,
+    password: db.password,
+    database: db.name,
+    charset: 'utf8mb4_unicode_ci',
+    timezone: 'Z',
+    synchronize: false,
+    entities,
+    migrations,
+    poolSize: 12,
+  });
+}

@@ -1,0 +1,65 @@
+import type { ErrorRequestHandler, RequestHandler } from 'express';
+import { MulterError } from 'multer';
+import type { Logger } from 'pino';
+import type { Problem } from '../../shared/contracts/problem.ts';
+import { AppError, InvalidInput, NotFound, TooLarge, type ErrorKind } from '../errors.ts';
+
+const STATUS: Record<ErrorKind, number> = {
+  invalid: 400,
+  'signed-out': 401,
+  forbidden: 403,
+  missing: 404,
+  conflict: 409,
+  'too-large': 413,
+  'too-many': 429,
+};
+
+/** What body parsers and multer throw, in our own terms. */
+function translate(error: unknown): unknown {
+  if (error instanceof MulterError) {
+    return error.code === 'LIMIT_FILE_SIZE'
+      ? new TooLarge('The file is larger than this server takes.', {
+          advice: 'Send a smaller file, or ask the site administrator to raise the limit.',
+        })
+      : new InvalidInput('The upload cannot be read.', { found: error.message });
+  }
+  const type = (error as { type?: string } | null)?.type;
+  if (type === 'entity.parse.failed') return new InvalidInput('The request is not JSON.', { wanted: 'a JSON body' });
+  if (type === 'entity.too.large') return new TooLarge('The request is too large.', { wanted: 'at most 8 MB of JSON' });
+  if (error instanceof URIError) return new NotFound();
+  return error;
+}
+
+export const missingRoute: RequestHandler = () => {
+  throw new NotFound('There is no such address.');
+};
+
+/** Turns every error into a problem document (RFC 9457); what is not ours is logged and shown as 500 without its text. */
+export function problemHandler(log: Logger): ErrorRequestHandler {
+  return (raw, req, res, next) => {
+    const error = translate(raw);
+    if (res.headersSent) {
+      log.error({ err: raw, url: req.url }, 'failed after the answer began');
+      return next(raw);
+    }
+    const problem: Problem =
+      error instanceof AppError
+        ? {
+            type: `urn:groundsel:problem:${error.code}`,
+            title: error.message,
+            status: STATUS[error.kind],
+            code: error.code,
+            ...error.detail,
+          }
+        : {
+            type: 'urn:groundsel:problem:internal',
+            title: 'Something went wrong on the server.',
+            status: 500,
+            code: 'internal',
+            advice: 'Try again. If it comes back, tell the site administrator when it happened.',
+          };
+    if (problem.status === 500) log.error({ err: raw, method: req.method, url: req.url }, 'request failed');
+    if (problem.retryAfterSeconds) res.setHeader('Retry-After', String(Math.ceil(problem.retryAfterSeconds)));
+    res.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
+  };
+}

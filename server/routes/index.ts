@@ -1,0 +1,17 @@
+import { accountRoutes } from './accounts/routes.ts';
+import { eventRoutes } from './events/routes.ts';
+import { memberRoutes } from './members/routes.ts';
+import { openapiRoutes } from './openapi/routes.ts';
+import { projectRoutes } from './projects/routes.ts';
+import type { Route } from './route.ts';
+import { sessionRoutes } from './session/routes.ts';
+
+/** Every route of the product, in the order the API document lists them. */
+export const routes: readonly Route[] = [
+  ...sessionRoutes,
+  ...accountRoutes,
+  ...projectRoutes,
+  ...memberRoutes,
+  ...eventRoutes,
+  ...openapiRoutes,
+];

@@ -1,0 +1,107 @@
+import { createServer, type Server } from 'node:http';
+import type { AddressInfo } from 'node:net';
+import { pino, type Logger } from 'pino';
+import { createHttpApp } from './app.ts';
+import type { App } from './app-context.ts';
+import type { Config } from './config.ts';
+import { createDataSource } from './data-source.ts';
+import { DatabaseJobQueue } from './jobs/database-job-queue.ts';
+import { EventLog } from './jobs/event-log.ts';
+import type { JobHandler } from './jobs/job-queue.ts';
+import { JobRunner } from './jobs/job-runner.ts';
+import { openWorkerPools } from './jobs/open-worker-pools.ts';
+import { createMailer } from './mail/mailer.ts';
+import { createJobHandlers } from './services/job-handlers.ts';
+import { sweepSessions } from './services/session-sweep.ts';
+import { LocalFileStore } from './storage/local-file-store.ts';
+
+export interface RunningServer {
+  app: App;
+  /** Where it listens, for programs on this machine. */
+  url: string;
+  stop(): Promise<void>;
+}
+
+function listen(server: Server, port: number, host: string): Promise<void> {
+  return new Promise((resolve, reject) => {
+    server.once('error', reject);
+    server.listen(port, host, () => {
+      server.off('error', reject);
+      resolve();
+    });
+  });
+}
+
+export function createLogger(config: Pick<Config, 'logLevel'>): Logger {
+  return pino({
+    level: config.logLevel,
+    redact: ['req.headers.cookie', 'req.headers.authorization', 'res.headers["set-cookie"]'],
+  });
+}
+
+/** Opens everything a server needs, runs pending migrations, and takes up background work; not yet listening. */
+export async function openApp(config: Config, log: Logger): Promise<{ app: App; close(): Promise<void> }> {
+  const db = createDataSource(config.db);
+  await db.initialize();
+  await db.runMigrations({ transaction: 'each' });
+  const events = new EventLog(db, log);
+  const workers = openWorkerPools(config);
+  const wake: { now: () => void; cancelled: (jobId: string) => void } = {
+    now: () => log.debug('no runner yet'),
+    cancelled: () => log.debug('no runner yet'),
+  };
+  const app: App = {
+    config,
+    db,
+    log,
+    files: new LocalFileStore(config.dataDir),
+    jobs: new DatabaseJobQueue(db, events, { now: () => wake.now(), cancelled: (id) => wake.cancelled(id) }),
+    events,
+    mail: createMailer(config, log),
+    workers,
+  };
+  const handlers: Record<'ingest' | 'run', JobHandler> = createJobHandlers(app);
+  const runner = new JobRunner(db, events, log, handlers);
+  wake.now = runner.wake;
+  wake.cancelled = runner.stopCancelled;
+  await events.start();
+  await runner.start();
+  const sweeper = sweepSessions(app);
+  return {
+    app,
+    async close() {
+      sweeper.stop();
+      await runner.stop();
+      await workers.close();
+      await events.stop();
+      await db.destroy();
+    },
+  };
+}
+
+/** Starts the whole server; `clientDir` holds the built client, null in development, where Vite serves it. */
+export async function startServer(
+  config: Config,
+  clientDir: string | null,
+  log = createLogger(config),
+): Promise<RunningServer> {
+  const { app, close } = await openApp(config, log);
+  const server = createServer(createHttpApp(app, clientDir));
+  try {
+    await listen(server, config.port, config.host);
+  } catch (error) {
+    await close();
+    throw error;
+  }
+  const { port } = server.address() as AddressInfo;
+  return {
+    app,
+    url: `http://${config.host}:${port}`,
+    async stop() {
+      const closed = new Promise<void>((resolve) => server.close(() => resolve()));
+      server.closeAllConnections();
+      await closed;
+      await close();
+    },
+  };
+}
