@@ -1,0 +1,41 @@
+import { Navigate, createBrowserRouter } from 'react-router-dom';
+import { NotFoundPage } from '../pages/not-found/not-found-page.tsx';
+import { SignInPage } from '../pages/sign-in/sign-in-page.tsx';
+import { paths } from '../lib/paths.ts';
+import { ProjectFrame } from './project-frame.tsx';
+import { RouteError } from './route-error.tsx';
+import { ShellFrame } from './shell-frame.tsx';
+import { SignedInFrame } from './signed-in-frame.tsx';
+
+/** Pages are fetched when first opened; see lazyPage. */
+export const router = createBrowserRouter([
+  {
+    errorElement: <RouteError />,
+    children: [
+      { path: '/sign-in', element: <SignInPage /> },
+      {
+        element: <SignedInFrame />,
+        children: [
+          { index: true, element: <Navigate to={paths.projects()} replace /> },
+          {
+            element: <ShellFrame />,
+            children: [{ errorElement: <RouteError />, children: [{ path: '*', element: <NotFoundPage /> }] }],
+          },
+          {
+            path: '/projects/:projectId',
+            element: <ProjectFrame />,
+            children: [
+              {
+                errorElement: <RouteError />,
+                children: [
+                  { index: true, element: <Navigate to="overview" replace /> },
+                  { path: '*', element: <NotFoundPage /> },
+                ],
+              },
+            ],
+          },
+        ],
+      },
+    ],
+  },
+]);
