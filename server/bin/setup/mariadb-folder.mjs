@@ -12,7 +12,7 @@ import {
   statSync,
 } from 'node:fs';
 import { tmpdir } from 'node:os';
-import { dirname, join } from 'node:path';
+import { basename, dirname, join } from 'node:path';
 import { findProgram } from './debian-packages.mjs';
 import { runCommand } from './run-command.mjs';
 import { SetupError, say } from './setup-error.mjs';
@@ -163,7 +163,8 @@ async function createSystemTables(folder) {
     // With the socket method no account has an empty password, not even for a moment.
     [
       '--no-defaults',
-      `--datadir=${draft}`,
+      // Its script splits a path at blanks, so it is given one without any, from the folder it runs in.
+      `--datadir=./${basename(draft)}`,
       ...listUserOptions(folder),
       '--auth-root-authentication-method=socket',
       ...(process.getuid?.() === 0 ? ['--auth-root-socket-user=root'] : []),
