@@ -1,7 +1,7 @@
 import { accountRoutes } from './accounts/routes.ts';
 import { eventRoutes } from './events/routes.ts';
 import { memberRoutes } from './members/routes.ts';
-import { openapiRoutes } from './openapi/routes.ts';
+import { createOpenApiRoutes } from './openapi/routes.ts';
 import { projectRoutes } from './projects/routes.ts';
 import type { Route } from './route.ts';
 import { sessionRoutes } from './session/routes.ts';
@@ -13,5 +13,5 @@ export const routes: readonly Route[] = [
   ...projectRoutes,
   ...memberRoutes,
   ...eventRoutes,
-  ...openapiRoutes,
+  ...createOpenApiRoutes(() => routes),
 ];

@@ -1,0 +1,114 @@
+import { cruise } from 'dependency-cruiser';
+import { execFileSync } from 'node:child_process';
+import { join } from 'node:path';
+import { beforeAll, describe, expect, it } from 'vitest';
+import { judgeImport, layerOf } from './import-rules.ts';
+
+const root = join(import.meta.dirname, '../..');
+
+interface Edge {
+  from: string;
+  to: string;
+  external: boolean;
+  found: boolean;
+}
+
+let edges: Edge[] = [];
+let circles: string[] = [];
+
+beforeAll(async () => {
+  const { output } = await cruise(
+    ['client/src', 'server', 'shared'],
+    {
+      baseDir: root,
+      doNotFollow: { path: 'node_modules' },
+      tsPreCompilationDeps: true,
+      ruleSet: { forbidden: [{ name: 'circle', severity: 'error', from: {}, to: { circular: true } }] },
+    },
+    { extensions: ['.ts', '.tsx', '.mjs', '.js'] },
+  );
+  if (typeof output === 'string') throw new Error('dependency-cruiser gave text, wanted its result object');
+  edges = output.modules.flatMap((module) =>
+    module.dependencies.map((dependency) => ({
+      from: module.source,
+      to: dependency.resolved,
+      external:
+        dependency.dependencyTypes.some((type) => type.startsWith('npm') || type === 'core') ||
+        dependency.resolved.includes('node_modules'),
+      found: !dependency.couldNotResolve,
+    })),
+  );
+  // Entities name each other in both directions, which TypeORM's lazy type functions are made for.
+  const valueCircles = output.modules.flatMap((module) =>
+    module.dependencies
+      .filter(
+        (dependency) =>
+          dependency.circular &&
+          !dependency.dependencyTypes.includes('type-only') &&
+          !module.source.startsWith('server/entities/'),
+      )
+      .map((dependency) => `${module.source} → ${dependency.resolved}`),
+  );
+  circles = valueCircles;
+});
+
+describe('imports', () => {
+  it('resolves every import of the tree, relative ones too', () => {
+    const lost = edges.filter(({ found, external, to }) => !found && !external && to.startsWith('.'));
+    expect(lost).toEqual([]);
+    expect(edges.filter(({ external }) => !external).length).toBeGreaterThan(200);
+  });
+
+  it('follows the layers: who may import whom', () => {
+    const ours = edges.filter(({ external, to, found }) => found && !external && /^(client|server|shared)\//.test(to));
+    const sources = ours.filter(({ from, to }) => /\.(ts|tsx)$/.test(from) && /\.(ts|tsx)$/.test(to));
+    expect(sources.map(({ from, to }) => judgeImport(from, to)).filter((reason) => reason !== null)).toEqual([]);
+  });
+
+  it('lets only routes and middleware see Express', () => {
+    const seeing = edges.filter(({ to }) => /node_modules\/(@types\/)?express\//.test(to)).map(({ from }) => from);
+    expect(seeing.filter((from) => !/^server\/(routes|middleware)\/|^server\/app\.ts$/.test(from))).toEqual([]);
+    expect(seeing.length).toBeGreaterThan(0);
+  });
+
+  it('keeps the numeric core pure: no node modules, no clock, no dice of its own', () => {
+    const impure = edges.filter(
+      ({ from, to }) =>
+        from.startsWith('server/analysis/') &&
+        /^(node:)?(fs|path|os|child_process|worker_threads|crypto|timers)/.test(to),
+    );
+    expect(impure).toEqual([]);
+    // git grep exits 1 when nothing matches.
+    const search = () =>
+      execFileSync(
+        'git',
+        ['grep', '-nE', 'Math\\.random|Date\\.now|new Date\\(|performance\\.now', '--', 'server/analysis'],
+        { cwd: root, encoding: 'utf8' },
+      );
+    expect(search).toThrow();
+  });
+
+  it('has no circle of value imports', () => {
+    expect(circles).toEqual([]);
+  });
+
+  it('puts every source file in a layer', () => {
+    const files = execFileSync('git', ['ls-files', 'client/src', 'server', 'shared'], { cwd: root, encoding: 'utf8' })
+      .split('\n')
+      .filter((path) => /\.(ts|tsx)$/.test(path));
+    expect(files.filter((path) => !layerOf(path))).toEqual([]);
+    expect(files.length).toBeGreaterThan(100);
+  });
+});
+
+describe('the judge itself', () => {
+  it('refuses what the layout forbids', () => {
+    expect(judgeImport('client/src/features/runs/a.ts', 'client/src/features/samples/b.ts')).toMatch(
+      /never import each other/,
+    );
+    expect(judgeImport('server/analysis/a.ts', 'server/raster/b.ts')).toMatch(/may not import/);
+    expect(judgeImport('shared/contracts/a.ts', 'server/errors.ts')).toMatch(/may not import/);
+    expect(judgeImport('server/services/a.ts', 'server/routes/b.ts')).toMatch(/may not import/);
+    expect(judgeImport('server/routes/a.ts', 'server/services/b.ts')).toBeNull();
+  });
+});
