@@ -77,7 +77,7 @@ export function createRng(seed: number, stream = 0): Rng {
     counter = (counter + 0x9e3779b9) | 0;
     return mix(mix(counter) ^ stream);
   });
-  if (words.every((word) => word === 0)) words[0] = 1;
+  if (!words.some((word) => word !== 0)) words[0] = 1;
   return createRngFromState(words[0], words[1], words[2], words[3]);
 }
 
