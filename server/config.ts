@@ -23,6 +23,8 @@ export interface Config {
   ingest: { timeoutSeconds: number; memoryMb: number };
   workerThreads: number;
   tileCacheMb: number;
+  /** Whom an empty server without a demo makes site administrator. */
+  adminEmail: string | null;
   /** Whether an empty server loads the demo project. */
   demo: boolean;
   logLevel: LogLevel;
@@ -105,6 +107,7 @@ const schema = z.object({
   GROUNDSEL_INGEST_MEMORY_MB: wholeNumber(256, 1_048_576, 'MB').prefault('2048'),
   GROUNDSEL_WORKER_THREADS: wholeNumber(1, 256, 'threads').prefault(String(availableParallelism())),
   GROUNDSEL_TILE_CACHE_MB: wholeNumber(0, 1_048_576, 'MB').prefault('256'),
+  GROUNDSEL_ADMIN_EMAIL: text('the e-mail of the first site administrator', /^[^\s@]+@[^\s@]+$/).optional(),
   GROUNDSEL_DEMO: oneOf(['on', 'off']).default('on'),
   GROUNDSEL_LOG_LEVEL: oneOf(LOG_LEVELS).default('info'),
 });
@@ -152,6 +155,7 @@ export function readConfig(env: NodeJS.ProcessEnv): Config {
     ingest: { timeoutSeconds: value.GROUNDSEL_INGEST_TIMEOUT_SECONDS, memoryMb: value.GROUNDSEL_INGEST_MEMORY_MB },
     workerThreads: value.GROUNDSEL_WORKER_THREADS,
     tileCacheMb: value.GROUNDSEL_TILE_CACHE_MB,
+    adminEmail: value.GROUNDSEL_ADMIN_EMAIL?.toLowerCase() ?? null,
     demo: value.GROUNDSEL_DEMO === 'on',
     logLevel: value.GROUNDSEL_LOG_LEVEL,
   };

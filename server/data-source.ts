@@ -16,6 +16,7 @@ import { SampleVersion } from './entities/sample-version.ts';
 import { Sample } from './entities/sample.ts';
 import { Scene } from './entities/scene.ts';
 import { Session } from './entities/session.ts';
+import { SiteSetting } from './entities/site-setting.ts';
 import { User } from './entities/user.ts';
 import { migrations } from './migrations/index.ts';
 
@@ -35,6 +36,7 @@ export const entities = [
   SampleVersion,
   Scene,
   Session,
+  SiteSetting,
   User,
 ];
 

@@ -2,6 +2,7 @@ import { existsSync } from 'node:fs';
 import { join } from 'node:path';
 import { ConfigError, readConfig } from './config.ts';
 import { loadDemoOnce } from './demo/load-demo.ts';
+import { inviteFirstAdmin } from './services/first-admin.ts';
 import { startServer } from './start-server.ts';
 
 /** The built client lies beside the built server; in development there is none and Vite serves it. */
@@ -27,7 +28,7 @@ async function main(): Promise<void> {
   };
   process.on('SIGINT', stop);
   process.on('SIGTERM', stop);
-  const lines = config.demo ? await loadDemoOnce(server.app) : [];
+  const lines = [...(await inviteFirstAdmin(server.app)), ...(config.demo ? await loadDemoOnce(server.app) : [])];
   console.log([`Groundsel is open at ${config.publicUrl}`, ...lines].join('\n'));
 }
 

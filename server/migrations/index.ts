@@ -1,4 +1,5 @@
 import { Init1796099110473 } from './1796099110473-init.ts';
+import { SiteSettings1796100000000 } from './1796100000000-site-settings.ts';
 
 /** In the order they run; a new one goes to the end. */
-export const migrations = [Init1796099110473];
+export const migrations = [Init1796099110473, SiteSettings1796100000000];
