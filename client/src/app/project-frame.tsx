@@ -1,52 +1,60 @@
-import { Link, Outlet, useOutletContext, useParams } from 'react-router-dom';
+import { useQuery } from '@tanstack/react-query';
+import { Outlet, useOutletContext, useParams } from 'react-router-dom';
 import type { Account } from '../../../shared/contracts/account.ts';
 import type { Project, Stage } from '../../../shared/contracts/project.ts';
 import { ROLE_TEXT } from '../../../shared/constants/roles.ts';
 import { AppShell } from '../components/layout/app-shell.tsx';
-import { ForbiddenState, NotFoundState } from '../components/ui/access-states.tsx';
-import { buttonClass } from '../components/ui/button.tsx';
-import { ErrorState } from '../components/ui/error-state.tsx';
 import { PendingState } from '../components/ui/pending-state.tsx';
-import { useProject } from '../features/projects/get-project.ts';
 import { ProblemError } from '../lib/problem-error.ts';
-import { paths } from '../lib/paths.ts';
+import { ProjectContext } from '../lib/project/project-context.ts';
+import { projectQuery } from '../lib/project/project-query.ts';
+import { ProjectProblem } from './project-problem.tsx';
+import { ProjectRailExtra } from './project-rail-extra.tsx';
 import { useSignOutAndLeave } from './shell-frame.tsx';
+import { useProjectEvents } from './use-project-events.ts';
 
-/** The rail with the project's stages around the project's pages. */
+/** The rail with the project's stages around the project's pages, kept fresh by the project's events. */
 export function ProjectFrame() {
   const account = useOutletContext<Account>();
   const signOut = useSignOutAndLeave();
   const { projectId = '' } = useParams();
-  const project = useProject(projectId);
-  const roles = project.data?.roles.map((role) => ROLE_TEXT[role].name).join(', ');
+  const query = useQuery(projectQuery(projectId));
+  // Someone taken out of the project keeps the last answer in the cache: the refusal that follows comes first.
+  const isRefused = query.error instanceof ProblemError && query.error.status >= 400 && query.error.status < 500;
+  const project = isRefused ? undefined : query.data;
+  const isTeam = project !== undefined && isOfTeam(project);
+  const isLive = useProjectEvents(isTeam ? projectId : null);
+  const roles = project?.roles.map((role) => ROLE_TEXT[role].name).join(', ');
   return (
     <AppShell
-      project={project.data ? { ...project.data, stages: openStages(project.data) } : null}
+      project={project ? { ...project, stages: openStages(project) } : null}
       account={{ name: account.name, note: roles || account.email, isSiteAdmin: account.siteAdmin, onSignOut: signOut }}
-      railExtra={
-        project.data && (
-          <Link
-            to={paths.members(projectId)}
-            className="block px-[18px] text-sm text-ink-soft hover:text-ink max-lg:hidden"
-          >
-            People and roles
-          </Link>
-        )
-      }
+      railExtra={isTeam && <ProjectRailExtra projectId={projectId} isLive={isLive} />}
     >
-      {project.isPending && <PendingState label="Opening the project" className="p-10" />}
-      {project.isError && (
+      {query.isPending && <PendingState label="Opening the project" className="p-10" />}
+      {project === undefined && query.error && (
         <div className="p-8">
-          <ProjectProblem error={project.error} onRetry={() => void project.refetch()} />
+          <ProjectProblem error={query.error} onRetry={() => void query.refetch()} />
         </div>
       )}
-      {project.data && <Outlet context={account} />}
+      {project && (
+        <ProjectContext value={project}>
+          <Outlet context={account} />
+        </ProjectContext>
+      )}
     </AppShell>
   );
 }
 
-/** The stages the viewer's abilities reach; the others are not shown at all. */
-function openStages({ stages, abilities }: Project): Stage[] {
+/** Clients are members who see only what was handed over; everyone else sees the scenes. */
+function isOfTeam(project: Project): boolean {
+  return project.abilities.readScenes;
+}
+
+/** The stages the viewer's abilities reach; the others are not shown at all. A client's rail has the handover alone. */
+function openStages(project: Project): Stage[] {
+  const { stages, abilities } = project;
+  if (!isOfTeam(project)) return [{ id: 'handover', state: 'empty', count: null }];
   const reach: Record<Stage['id'], boolean> = {
     overview: true,
     scenes: abilities.readScenes,
@@ -57,16 +65,4 @@ function openStages({ stages, abilities }: Project): Stage[] {
     handover: true,
   };
   return stages.filter((stage) => reach[stage.id]);
-}
-
-function ProjectProblem({ error, onRetry }: { error: Error; onRetry: () => void }) {
-  const status = error instanceof ProblemError ? error.status : 0;
-  const back = (
-    <Link to={paths.projects()} className={buttonClass('strong')}>
-      To your projects
-    </Link>
-  );
-  if (status === 403) return <ForbiddenState action={back} />;
-  if (status === 404) return <NotFoundState title="No such project for you" action={back} />;
-  return <ErrorState error={error} onRetry={onRetry} />;
 }

@@ -3,6 +3,7 @@ import { NotFoundPage } from '../pages/not-found/not-found-page.tsx';
 import { SignInPage } from '../pages/sign-in/sign-in-page.tsx';
 import { paths } from '../lib/paths.ts';
 import { ProjectFrame } from './project-frame.tsx';
+import { ProjectHome } from './project-home.tsx';
 import { RouteError } from './route-error.tsx';
 import { ShellFrame } from './shell-frame.tsx';
 import { SignedInFrame } from './signed-in-frame.tsx';
@@ -28,7 +29,7 @@ export const router = createBrowserRouter([
               {
                 errorElement: <RouteError />,
                 children: [
-                  { index: true, element: <Navigate to="overview" replace /> },
+                  { index: true, element: <ProjectHome /> },
                   { path: '*', element: <NotFoundPage /> },
                 ],
               },
