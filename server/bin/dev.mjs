@@ -21,7 +21,10 @@ async function develop() {
   const config = await readSettings();
   await checkPortFree(CLIENT_PORT, CLIENT_HOST);
   return runServices(config, 'development', (env) => [
-    { args: [findTool('tsx'), 'watch', '--clear-screen=false', 'server/main.ts'], env },
+    {
+      args: [findTool('tsx'), 'watch', '--clear-screen=false', '--tsconfig', 'server/tsconfig.json', 'server/main.ts'],
+      env,
+    },
     { args: [findTool('vite'), '--host', CLIENT_HOST, '--port', String(CLIENT_PORT), '--strictPort'], env },
   ]);
 }

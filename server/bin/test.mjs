@@ -48,6 +48,8 @@ async function runChecks(withLint) {
     say('Linting');
     exitCodes['lint'] = await runCommand(process.execPath, [findTool('eslint'), '.']);
   }
+  for (const [name, code] of Object.entries(exitCodes))
+    if (code !== 0) say(`Check failed: ${name} (exit code ${code})`);
   return countChecks(exitCodes);
 }
 
@@ -63,6 +65,7 @@ async function runVitest(dir, args) {
     const exitCode = await runCommand(process.execPath, [findTool('vitest'), 'run', ...reporters, ...args], {
       env: describeTestEnvironment(database),
     });
+    if (exitCode !== 0) say(`Check failed: tests (vitest's exit code ${exitCode})`);
     return countVitestReport(report, exitCode);
   } finally {
     await database.stop();
