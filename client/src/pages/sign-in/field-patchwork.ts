@@ -8,8 +8,9 @@ export interface FieldPatch {
 
 const HORIZON_Y = 640;
 const GROUND_Y = 1010;
-const N_ROWS = 9;
-const N_COLUMNS = 13;
+const N_ROWS = 11;
+const N_COLUMNS = 30;
+const WIDTH = 2900;
 /** Palette positions, by how often land like that turns up: pasture and arable more than rock or brick. */
 const COVER = [6, 6, 6, 7, 7, 3, 3, 6, 7, 1, 2, 5, 4, 8, 6, 7];
 
@@ -21,7 +22,7 @@ export function buildFieldPatchwork(): FieldPatch[] {
     const y = HORIZON_Y + (GROUND_Y - HORIZON_Y) * depth ** 1.7;
     const spread = 0.55 + 0.75 * depth;
     return Array.from({ length: N_COLUMNS + 1 }, (_, column) => {
-      const x = 400 + (column / N_COLUMNS - 0.5) * 1300 * spread;
+      const x = 400 + (column / N_COLUMNS - 0.5) * WIDTH * spread;
       const jitter = 8 + 34 * depth;
       const hill = 26 * Math.sin(x / 190 + 0.7) * (1 - depth) + 8 * Math.sin(x / 61);
       return { x: x + (random() - 0.5) * jitter * 1.6, y: y - hill + (random() - 0.5) * jitter * 0.5 };
@@ -36,14 +37,48 @@ export function buildFieldPatchwork(): FieldPatch[] {
         corners[row + 1]![column + 1]!,
         corners[row + 1]![column]!,
       ];
-      const cover = COVER[Math.floor(random() * COVER.length)]!;
-      patches.push({
-        d: `M${ring.map((corner) => `${corner.x.toFixed(1)} ${corner.y.toFixed(1)}`).join('L')}Z`,
-        colour: classPaletteStep(cover).colour,
-      });
+      for (const part of cutField(ring, random)) {
+        const cover = COVER[Math.floor(random() * COVER.length)]!;
+        patches.push({ d: pathOf(part), colour: classPaletteStep(cover).colour });
+      }
     }
   }
   return patches;
+}
+
+interface Corner {
+  x: number;
+  y: number;
+}
+
+/** Some fields are cut in two, up and down or across, never quite in the middle. */
+function cutField(ring: Corner[], random: () => number): Corner[][] {
+  const [a, b, c, d] = ring as [Corner, Corner, Corner, Corner];
+  const chance = random();
+  const share = 0.3 + 0.4 * random();
+  if (chance < 0.22) {
+    const [top, foot] = [between(a, b, share), between(d, c, 1 - share)];
+    return [
+      [a, top, foot, d],
+      [top, b, c, foot],
+    ];
+  }
+  if (chance < 0.36) {
+    const [left, right] = [between(a, d, share), between(b, c, 1 - share)];
+    return [
+      [a, b, right, left],
+      [left, right, c, d],
+    ];
+  }
+  return [ring];
+}
+
+function between(from: Corner, to: Corner, share: number): Corner {
+  return { x: from.x + (to.x - from.x) * share, y: from.y + (to.y - from.y) * share };
+}
+
+function pathOf(ring: Corner[]): string {
+  return `M${ring.map(({ x, y }) => `${x.toFixed(1)} ${y.toFixed(1)}`).join('L')}Z`;
 }
 
 /** mulberry32: small, even enough for a drawing. Numbers in [0, 1). */

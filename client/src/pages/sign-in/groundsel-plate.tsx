@@ -79,12 +79,12 @@ const BRANCHES = [
 ] as const;
 
 const LEAVES = [
-  { x: 402, y: 398, turn: -158, length: 84, lobes: 4 },
-  { x: 402, y: 436, turn: -18, length: 96, lobes: 4 },
-  { x: 402, y: 520, turn: 196, length: 120, lobes: 5 },
-  { x: 400, y: 560, turn: -8, length: 132, lobes: 5 },
-  { x: 398, y: 640, turn: 190, length: 158, lobes: 6 },
-  { x: 397, y: 664, turn: -12, length: 164, lobes: 6 },
+  { x: 402, y: 384, turn: -160, length: 70, lobes: 4 },
+  { x: 402, y: 424, turn: -20, length: 84, lobes: 4 },
+  { x: 402, y: 494, turn: 202, length: 92, lobes: 4 },
+  { x: 400, y: 538, turn: -14, length: 88, lobes: 4 },
+  { x: 398, y: 634, turn: 186, length: 142, lobes: 6 },
+  { x: 397, y: 656, turn: -14, length: 150, lobes: 6 },
 ];
 
 /** The plate of the sign-in page: groundsel growing out of a chosen field, its heads the stages of the work. */
@@ -93,9 +93,10 @@ export function GroundselPlate({ className }: { className?: string }) {
     <svg
       role="img"
       aria-label="Drawing: a groundsel plant growing out of an outlined field. Its seven heads, open at the top and still in bud below, are the stages from overview to handover."
-      viewBox="0 0 800 1000"
-      preserveAspectRatio="xMidYMax slice"
+      viewBox="0 70 800 930"
+      preserveAspectRatio="xMidYMax meet"
       className={className}
+      style={{ overflow: 'visible' }}
       strokeLinecap="round"
     >
       <Graticule />
@@ -111,11 +112,12 @@ export function GroundselPlate({ className }: { className?: string }) {
           />
         ))}
       </g>
+      <River />
       <ChosenField />
       <path d="M402 330C404 470 392 600 398 772" fill="none" stroke="#1f5f54" strokeWidth="7" />
       <path d="M400.500 340C402.500 470 390.500 600 396.500 770" fill="none" stroke="#3f7a5f" strokeWidth="2" />
       {LEAVES.map((leaf) => (
-        <g key={leaf.turn} transform={`translate(${leaf.x} ${leaf.y}) rotate(${leaf.turn})`}>
+        <g key={leaf.y} transform={`translate(${leaf.x} ${leaf.y}) rotate(${leaf.turn})`}>
           <path
             d={leafOutline(leaf.length, leaf.lobes)}
             fill="#3f7a5f"
@@ -170,7 +172,7 @@ function ChosenField() {
         <circle key={x} cx={x} cy={y} r="7" fill="#fffdf8" stroke="#1e2a26" strokeWidth="2.500" />
       ))}
       <path
-        d="M398 774c-16 2-30 6-44 12M398 774c14 3 24 8 40 10M398 774c-4 8-8 14-8 24"
+        d="M398 772q-9-10-15-11M398 773q-15-4-24-2M398 772q10-11 17-11M398 773q15-5 25-2"
         stroke="#1f5f54"
         strokeWidth="3"
         fill="none"
@@ -179,15 +181,29 @@ function ChosenField() {
   );
 }
 
+/** A river out of the hills, wider as it comes nearer. */
+function River() {
+  const colour = '#294483';
+  return (
+    <path
+      d="M681 652C668 658 700 660 692 676 676 708 604 716 612 752 620 790 700 800 690 858 680 930 596 940 590 1012L690 1012C700 950 766 936 764 856 762 790 660 786 652 752 646 722 706 712 711 676 714 660 680 658 687 652Z"
+      fill={colour}
+      stroke="var(--card)"
+      strokeWidth="2.500"
+      strokeLinejoin="round"
+    />
+  );
+}
+
 /** Faint meridians and parallels with their ticks, as on a map sheet. */
 function Graticule() {
   return (
     <g fill="none" stroke="var(--line)" strokeWidth="1">
-      {[80, 240, 400, 560, 720].map((x) => (
+      {[-560, -400, -240, -80, 80, 240, 400, 560, 720, 880, 1040, 1200, 1360].map((x) => (
         <path key={`x${x}`} d={`M${x} -400V720`} />
       ))}
       {[-220, -60, 100, 260, 420, 580].map((y) => (
-        <path key={`y${y}`} d={`M-600 ${y}H1400`} />
+        <path key={`y${y}`} d={`M-700 ${y}H1500`} />
       ))}
     </g>
   );

@@ -8,10 +8,11 @@ export function leafOutline(length: number, nLobes: number): string {
     const points: { valley: [number, number]; peak: [number, number] }[] = [];
     for (let lobe = 0; lobe < nLobes; lobe++) {
       const start = lobe / nLobes;
-      const fullness = Math.sin(Math.PI * (0.14 + 0.72 * (start + 0.5 / nLobes)));
+      // Narrow at the stalk, widest past the middle, running out to the tip.
+      const fullness = Math.sin(Math.PI * (0.1 + 0.86 * (start + 0.5 / nLobes)) ** 1.25);
       points.push({
-        valley: [length * (0.08 + 0.86 * start), sign * length * 0.05 * fullness],
-        peak: [length * (0.08 + 0.86 * (start + 0.85 / nLobes)), sign * length * 0.2 * fullness],
+        valley: [length * (0.08 + 0.86 * start), sign * length * 0.045 * fullness],
+        peak: [length * (0.08 + 0.86 * (start + 0.85 / nLobes)), sign * length * 0.19 * fullness],
       });
     }
     return points;

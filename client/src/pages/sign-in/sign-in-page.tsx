@@ -29,7 +29,7 @@ export function SignInPage() {
           <p className="mt-1 mb-6 text-ink-soft">To your team’s scenes, samples and maps.</p>
           <SignInForm onDone={() => void navigate(backTo, { replace: true })} />
           <p className="mt-10 border-t border-line pt-4 text-sm text-ink-soft">
-            No account yet? The lead of your project invites you by e-mail.
+            No account yet? The lead of your project sends you an invitation.
           </p>
         </div>
       </main>

@@ -1,0 +1,50 @@
+import type { BandQuantity } from '../../../../shared/constants/bands.ts';
+import type { ChartData } from './chart-frame.tsx';
+
+export interface SpectralPoint {
+  /** Centre wavelength of the band. */
+  wavelengthUm: number;
+  bandName: string;
+  mean: number;
+  /** One standard deviation; null draws no ribbon there. */
+  sd: number | null;
+  quantity: BandQuantity;
+}
+
+export interface SpectralSeries {
+  id: string;
+  /** "This sample", "Saltmarsh so far". */
+  name: string;
+  /** A class colour or a token: `var(--ink)`. */
+  colour: string;
+  line?: 'solid' | 'dashed' | 'dotted';
+  /** Heavier line with markers, for the one the page is about. */
+  isMain?: boolean;
+  points: readonly SpectralPoint[];
+}
+
+export const LINE_DASH = { solid: undefined, dashed: '6 3.5', dotted: '1.500 3.500' } as const;
+
+/** What an axis of a quantity is called. */
+export const QUANTITY_AXIS: Record<BandQuantity, string> = {
+  reflectance: 'reflectance',
+  kelvin: 'brightness temperature, K',
+  'digital number': 'digital number',
+};
+
+/** The series' figures, one row a band and series. */
+export function spectralData(series: readonly SpectralSeries[]): ChartData {
+  return {
+    columns: [
+      { name: 'Series' },
+      { name: 'Band' },
+      { name: 'Wavelength, µm', isNumber: true, decimals: 2 },
+      { name: 'Mean', isNumber: true, decimals: 4 },
+      { name: '1 σ', isNumber: true, decimals: 4 },
+      { name: 'Quantity' },
+    ],
+    rows: series.flatMap((one) =>
+      one.points.map((point) => [one.name, point.bandName, point.wavelengthUm, point.mean, point.sd, point.quantity]),
+    ),
+  };
+}
