@@ -40,6 +40,7 @@ describe('readConfig', () => {
       ingest: { timeoutSeconds: 1800, memoryMb: 2048 },
       workerThreads: availableParallelism(),
       tileCacheMb: 256,
+      adminEmail: null,
       demo: true,
       logLevel: 'info',
     });
