@@ -1,0 +1,18 @@
+/** What is used of ml-knn, which ships no types. */
+declare module 'ml-knn' {
+  /** A position, or an array-like stand-in for one: entries past the features are not read. */
+  type PointLike = ArrayLike<number>;
+
+  export default class KNN {
+    constructor(
+      dataset: number[][],
+      labels: number[],
+      options?: { k?: number; distance?: (a: PointLike, b: PointLike) => number },
+    );
+
+    kdTree: {
+      /** The nearest stored points (features, then label) with their distances, in no order. */
+      nearest(point: number[], maxNodes: number): [point: number[], distance: number][];
+    };
+  }
+}
