@@ -1,0 +1,79 @@
+import type { BandFile } from './band-file.ts';
+import { blockSize } from './band-file-format.ts';
+import type { RasterGrid } from './raster-grid.ts';
+import { readSceneWindow } from './scene-reader.ts';
+
+export interface StripRequest {
+  grid: RasterGrid;
+  bands: readonly BandFile[];
+  /** First row and number of rows. */
+  y: number;
+  height: number;
+  /** Fills classIndex[0..n) from n rows of row-major features. */
+  classify: (features: Float32Array, n: number, classIndex: Uint8Array) => void;
+  /** Class code of each class index. */
+  codes: ArrayLike<number>;
+  /** Code of pixels without data or outside. */
+  nodataCode: number;
+  /** Row-major over the strip, 0 where a pixel is outside the area to be mapped; all of it where not given. */
+  inside?: Uint8Array | null;
+}
+
+/** Whole blocks, so that each is decoded once, and few enough that memory does not grow with the scene's width. */
+const windowColumns = 8 * blockSize;
+const chunkPixels = 65_536;
+
+/**
+ * Maps full-width rows of a scene: the class code of each pixel, row-major.
+ * Features are the stored values as 32-bit floats; a pixel without data in any band gets the nodata code.
+ * @throws {RangeError} when the rows leave the scene.
+ */
+export async function classifyStrip(request: StripRequest): Promise<Uint8Array> {
+  const { grid, bands, y, height } = request;
+  const out = new Uint8Array(grid.width * height).fill(request.nodataCode);
+  const features = new Float32Array(chunkPixels * bands.length);
+  const places = new Uint32Array(chunkPixels);
+  const classIndex = new Uint8Array(chunkPixels);
+  for (let x = 0; x < grid.width; x += windowColumns) {
+    const width = Math.min(windowColumns, grid.width - x);
+    const windows = [];
+    for (const band of bands) {
+      const values = await readSceneWindow(grid, band, x, y, width, height, { keep: false });
+      windows.push({ values, nodata: band.nodata });
+    }
+    let n = 0;
+    const flush = (): void => {
+      if (n === 0) return;
+      request.classify(features, n, classIndex);
+      for (let i = 0; i < n; i++) out[places[i]] = request.codes[classIndex[i]];
+      n = 0;
+    };
+    for (let row = 0; row < height; row++) {
+      for (let column = 0; column < width; column++) {
+        const place = row * grid.width + x + column;
+        if (request.inside && request.inside[place] === 0) continue;
+        if (!takeFeatures(windows, row * width + column, features, n * bands.length)) continue;
+        places[n++] = place;
+        if (n === chunkPixels) flush();
+      }
+    }
+    flush();
+  }
+  return out;
+}
+
+interface BandWindow {
+  values: ArrayLike<number>;
+  nodata: number | null;
+}
+
+/** Copies one pixel's values; false as soon as a band has no data there. */
+function takeFeatures(windows: readonly BandWindow[], at: number, features: Float32Array, start: number): boolean {
+  for (let b = 0; b < windows.length; b++) {
+    const { values, nodata } = windows[b];
+    const value = values[at];
+    if (value === nodata || !Number.isFinite(value)) return false;
+    features[start + b] = value;
+  }
+  return true;
+}
