@@ -5,7 +5,7 @@ export class Init1796099110473 implements MigrationInterface {
 
   public async up(queryRunner: QueryRunner): Promise<void> {
     await queryRunner.query(`
-            CREATE TABLE \`users\` (
+            CREATE TABLE IF NOT EXISTS \`users\` (
                 \`id\` uuid NOT NULL,
                 \`email\` varchar(254) NOT NULL,
                 \`name\` varchar(120) NOT NULL,
@@ -18,7 +18,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`account_tokens\` (
+            CREATE TABLE IF NOT EXISTS \`account_tokens\` (
                 \`id\` uuid NOT NULL,
                 \`secretSha256\` char(64) NOT NULL,
                 \`userId\` uuid NOT NULL,
@@ -30,7 +30,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`projects\` (
+            CREATE TABLE IF NOT EXISTS \`projects\` (
                 \`id\` uuid NOT NULL,
                 \`name\` varchar(120) NOT NULL,
                 \`client\` varchar(160) NOT NULL DEFAULT '',
@@ -47,7 +47,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`activities\` (
+            CREATE TABLE IF NOT EXISTS \`activities\` (
                 \`id\` bigint NOT NULL AUTO_INCREMENT,
                 \`projectId\` uuid NOT NULL,
                 \`userId\` uuid NULL,
@@ -59,7 +59,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`scenes\` (
+            CREATE TABLE IF NOT EXISTS \`scenes\` (
                 \`id\` uuid NOT NULL,
                 \`projectId\` uuid NOT NULL,
                 \`name\` varchar(160) NOT NULL,
@@ -87,7 +87,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`bands\` (
+            CREATE TABLE IF NOT EXISTS \`bands\` (
                 \`id\` uuid NOT NULL,
                 \`sceneId\` uuid NOT NULL,
                 \`number\` int NOT NULL,
@@ -114,7 +114,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`event_entries\` (
+            CREATE TABLE IF NOT EXISTS \`event_entries\` (
                 \`id\` bigint NOT NULL AUTO_INCREMENT,
                 \`projectId\` uuid NOT NULL,
                 \`event\` json NOT NULL,
@@ -125,7 +125,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`jobs\` (
+            CREATE TABLE IF NOT EXISTS \`jobs\` (
                 \`id\` uuid NOT NULL,
                 \`kind\` varchar(16) NOT NULL,
                 \`projectId\` uuid NOT NULL,
@@ -151,7 +151,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`land_classes\` (
+            CREATE TABLE IF NOT EXISTS \`land_classes\` (
                 \`id\` uuid NOT NULL,
                 \`projectId\` uuid NOT NULL,
                 \`code\` int NOT NULL,
@@ -166,7 +166,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`memberships\` (
+            CREATE TABLE IF NOT EXISTS \`memberships\` (
                 \`id\` uuid NOT NULL,
                 \`projectId\` uuid NOT NULL,
                 \`userId\` uuid NOT NULL,
@@ -177,7 +177,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`rate_counters\` (
+            CREATE TABLE IF NOT EXISTS \`rate_counters\` (
                 \`key\` varchar(191) NOT NULL,
                 \`hits\` int UNSIGNED NOT NULL,
                 \`resetAt\` datetime(6) NOT NULL,
@@ -185,7 +185,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`runs\` (
+            CREATE TABLE IF NOT EXISTS \`runs\` (
                 \`id\` uuid NOT NULL,
                 \`projectId\` uuid NOT NULL,
                 \`number\` int NOT NULL,
@@ -205,7 +205,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`run_samples\` (
+            CREATE TABLE IF NOT EXISTS \`run_samples\` (
                 \`runId\` uuid NOT NULL,
                 \`sampleId\` uuid NOT NULL,
                 \`sampleNumber\` int NOT NULL,
@@ -218,7 +218,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`samples\` (
+            CREATE TABLE IF NOT EXISTS \`samples\` (
                 \`id\` uuid NOT NULL,
                 \`projectId\` uuid NOT NULL,
                 \`number\` int NOT NULL,
@@ -241,7 +241,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`sample_versions\` (
+            CREATE TABLE IF NOT EXISTS \`sample_versions\` (
                 \`id\` uuid NOT NULL,
                 \`sampleId\` uuid NOT NULL,
                 \`versionNumber\` int NOT NULL,
@@ -259,7 +259,7 @@ export class Init1796099110473 implements MigrationInterface {
             ) ENGINE = InnoDB
         `);
     await queryRunner.query(`
-            CREATE TABLE \`sessions\` (
+            CREATE TABLE IF NOT EXISTS \`sessions\` (
                 \`id\` varchar(128) NOT NULL,
                 \`userId\` uuid NULL,
                 \`data\` text NOT NULL,
@@ -274,87 +274,87 @@ export class Init1796099110473 implements MigrationInterface {
         `);
     await queryRunner.query(`
             ALTER TABLE \`account_tokens\`
-            ADD CONSTRAINT \`FK_c846ac09be5a5f4feeb7314469f\` FOREIGN KEY (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_c846ac09be5a5f4feeb7314469f\` FOREIGN KEY IF NOT EXISTS (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`activities\`
-            ADD CONSTRAINT \`FK_e67cee936823900fc4d5f3feb14\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_e67cee936823900fc4d5f3feb14\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`activities\`
-            ADD CONSTRAINT \`FK_5a2cfe6f705df945b20c1b22c71\` FOREIGN KEY (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE
+            ADD CONSTRAINT \`FK_5a2cfe6f705df945b20c1b22c71\` FOREIGN KEY IF NOT EXISTS (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE
             SET NULL ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`scenes\`
-            ADD CONSTRAINT \`FK_b29a6eaccc21ceb52b607e4f10e\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_b29a6eaccc21ceb52b607e4f10e\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`scenes\`
-            ADD CONSTRAINT \`FK_84bfd998fa08422ea41e52a91f9\` FOREIGN KEY (\`uploadedById\`) REFERENCES \`users\`(\`id\`) ON DELETE
+            ADD CONSTRAINT \`FK_84bfd998fa08422ea41e52a91f9\` FOREIGN KEY IF NOT EXISTS (\`uploadedById\`) REFERENCES \`users\`(\`id\`) ON DELETE
             SET NULL ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`bands\`
-            ADD CONSTRAINT \`FK_d9cd5b6bccef974a8ef6e97aaec\` FOREIGN KEY (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_d9cd5b6bccef974a8ef6e97aaec\` FOREIGN KEY IF NOT EXISTS (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`land_classes\`
-            ADD CONSTRAINT \`FK_d8cbf67ac801f743d0d99ea28be\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_d8cbf67ac801f743d0d99ea28be\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`memberships\`
-            ADD CONSTRAINT \`FK_d6a1fdafcd15c76b47bca6dec53\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_d6a1fdafcd15c76b47bca6dec53\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`memberships\`
-            ADD CONSTRAINT \`FK_187d573e43b2c2aa3960df20b78\` FOREIGN KEY (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_187d573e43b2c2aa3960df20b78\` FOREIGN KEY IF NOT EXISTS (\`userId\`) REFERENCES \`users\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`runs\`
-            ADD CONSTRAINT \`FK_7adfbd2736d6714533f8b30375f\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_7adfbd2736d6714533f8b30375f\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`runs\`
-            ADD CONSTRAINT \`FK_1ce29c071fa4dcd3e92097a81dd\` FOREIGN KEY (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_1ce29c071fa4dcd3e92097a81dd\` FOREIGN KEY IF NOT EXISTS (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`runs\`
-            ADD CONSTRAINT \`FK_fb4499f5fe8e0a93856b419ba39\` FOREIGN KEY (\`jobId\`) REFERENCES \`jobs\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_fb4499f5fe8e0a93856b419ba39\` FOREIGN KEY IF NOT EXISTS (\`jobId\`) REFERENCES \`jobs\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`runs\`
-            ADD CONSTRAINT \`FK_adc4d79960dfdeaa2573414e02f\` FOREIGN KEY (\`startedById\`) REFERENCES \`users\`(\`id\`) ON DELETE
+            ADD CONSTRAINT \`FK_adc4d79960dfdeaa2573414e02f\` FOREIGN KEY IF NOT EXISTS (\`startedById\`) REFERENCES \`users\`(\`id\`) ON DELETE
             SET NULL ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`run_samples\`
-            ADD CONSTRAINT \`FK_9bf738559173fc92432090178ee\` FOREIGN KEY (\`runId\`) REFERENCES \`runs\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_9bf738559173fc92432090178ee\` FOREIGN KEY IF NOT EXISTS (\`runId\`) REFERENCES \`runs\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`samples\`
-            ADD CONSTRAINT \`FK_86e29d8c6c2335708a77da185e1\` FOREIGN KEY (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_86e29d8c6c2335708a77da185e1\` FOREIGN KEY IF NOT EXISTS (\`projectId\`) REFERENCES \`projects\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`samples\`
-            ADD CONSTRAINT \`FK_901b1f1918681274d5274268611\` FOREIGN KEY (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_901b1f1918681274d5274268611\` FOREIGN KEY IF NOT EXISTS (\`sceneId\`) REFERENCES \`scenes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`samples\`
-            ADD CONSTRAINT \`FK_e96dfaedb9a69f2cf6dedc48631\` FOREIGN KEY (\`classId\`) REFERENCES \`land_classes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_e96dfaedb9a69f2cf6dedc48631\` FOREIGN KEY IF NOT EXISTS (\`classId\`) REFERENCES \`land_classes\`(\`id\`) ON DELETE RESTRICT ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`samples\`
-            ADD CONSTRAINT \`FK_f74a2cbd17cee09771082c3350e\` FOREIGN KEY (\`createdById\`) REFERENCES \`users\`(\`id\`) ON DELETE
+            ADD CONSTRAINT \`FK_f74a2cbd17cee09771082c3350e\` FOREIGN KEY IF NOT EXISTS (\`createdById\`) REFERENCES \`users\`(\`id\`) ON DELETE
             SET NULL ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`sample_versions\`
-            ADD CONSTRAINT \`FK_a7b9519cba48430e3423184981e\` FOREIGN KEY (\`sampleId\`) REFERENCES \`samples\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
+            ADD CONSTRAINT \`FK_a7b9519cba48430e3423184981e\` FOREIGN KEY IF NOT EXISTS (\`sampleId\`) REFERENCES \`samples\`(\`id\`) ON DELETE CASCADE ON UPDATE NO ACTION
         `);
     await queryRunner.query(`
             ALTER TABLE \`sample_versions\`
-            ADD CONSTRAINT \`FK_d60b3cf535b5bae35415fa261f3\` FOREIGN KEY (\`byId\`) REFERENCES \`users\`(\`id\`) ON DELETE
+            ADD CONSTRAINT \`FK_d60b3cf535b5bae35415fa261f3\` FOREIGN KEY IF NOT EXISTS (\`byId\`) REFERENCES \`users\`(\`id\`) ON DELETE
             SET NULL ON UPDATE NO ACTION
         `);
   }

@@ -5,7 +5,7 @@ export class SiteSettings1796100000000 implements MigrationInterface {
 
   async up(queryRunner: QueryRunner): Promise<void> {
     await queryRunner.query(
-      'CREATE TABLE `site_settings` (`name` varchar(60) NOT NULL, `value` varchar(200) NOT NULL, PRIMARY KEY (`name`)) ENGINE = InnoDB',
+      'CREATE TABLE IF NOT EXISTS `site_settings` (`name` varchar(60) NOT NULL, `value` varchar(200) NOT NULL, PRIMARY KEY (`name`)) ENGINE = InnoDB',
     );
   }
 

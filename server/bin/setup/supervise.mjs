@@ -27,7 +27,8 @@ export async function supervise(programs, stopAsked) {
     }),
   );
   const exits = children.map((child) => once(child, 'exit'));
-  await Promise.race([...exits, stopAsked.then((why) => say(`Stopping: ${why}`))]);
+  const reason = await Promise.race([stopAsked, ...exits.map((exit) => exit.then(() => null))]);
+  if (reason !== null) say(`Stopping: ${reason}`);
 
   const running = children.filter((child) => child.exitCode === null && child.signalCode === null);
   const firstDone = children.find((child) => !running.includes(child));
