@@ -11,6 +11,7 @@ import type { JobHandler } from './jobs/job-queue.ts';
 import { JobRunner } from './jobs/job-runner.ts';
 import { openWorkerPools } from './jobs/open-worker-pools.ts';
 import { createMailer } from './mail/mailer.ts';
+import { BandStore } from './raster/band-store.ts';
 import { createJobHandlers } from './services/job-handlers.ts';
 import { sweepSessions } from './services/session-sweep.ts';
 import { LocalFileStore } from './storage/local-file-store.ts';
@@ -46,6 +47,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
   await db.runMigrations({ transaction: 'each' });
   const events = new EventLog(db, log);
   const workers = openWorkerPools(config);
+  const bands = new BandStore({ cacheMb: 64, decode: 'async' });
   const wake: { now: () => void; cancelled: (jobId: string) => void } = {
     now: () => log.debug('no runner yet'),
     cancelled: () => log.debug('no runner yet'),
@@ -59,6 +61,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
     events,
     mail: createMailer(config, log),
     workers,
+    bands,
   };
   const handlers: Record<'ingest' | 'run', JobHandler> = createJobHandlers(app);
   const runner = new JobRunner(db, events, log, handlers);
@@ -73,6 +76,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
       sweeper.stop();
       await runner.stop();
       await workers.close();
+      await bands.close();
       await events.stop();
       await db.destroy();
     },

@@ -9,7 +9,7 @@ import {
   PrimaryGeneratedColumn,
   type Relation,
 } from 'typeorm';
-import type { Bounds, Polygon } from '../../shared/contracts/geometry.ts';
+import type { ArealGeometry, Bounds } from '../../shared/contracts/geometry.ts';
 import { Band } from './band.ts';
 import { geometryTransformer } from './geometry-column.ts';
 import { Project } from './project.ts';
@@ -19,8 +19,8 @@ export interface SceneFile {
   name: string;
   bytes: number;
   sha256: string;
-  /** Where the upload lies in the file store. */
-  key: string;
+  /** Where the upload lies in the file store; null once its bands are written or the ingest has failed. */
+  key: string | null;
 }
 export interface SceneFailure {
   code: string;
@@ -55,8 +55,10 @@ export class Scene {
   @Column({ type: 'int', nullable: true }) crsEpsg!: number | null;
   @Column({ type: 'varchar', length: 400, nullable: true }) crsProj4!: string | null;
   @Column({ type: 'text', nullable: true }) crsWkt!: string | null;
-  @Column({ type: 'geometry', nullable: true, transformer: geometryTransformer }) footprint!: Polygon | null;
+  @Column({ type: 'geometry', nullable: true, transformer: geometryTransformer }) footprint!: ArealGeometry | null;
   @Column({ type: 'json', nullable: true }) bounds!: Bounds | null;
+  /** Band roles were guessed from the number of bands and nobody has saved the band table since. */
+  @Column({ type: 'boolean', default: false }) guessedRoles!: boolean;
   @Column({ type: 'uuid', nullable: true }) uploadedById!: string | null;
   @ManyToOne(() => User, { onDelete: 'SET NULL', nullable: true })
   @JoinColumn({ name: 'uploadedById' })

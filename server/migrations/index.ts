@@ -1,5 +1,6 @@
 import { Init1796099110473 } from './1796099110473-init.ts';
 import { SiteSettings1796100000000 } from './1796100000000-site-settings.ts';
+import { SceneGuessedRoles1796101200000 } from './1796101200000-scene-guessed-roles.ts';
 
 /** In the order they run; a new one goes to the end. */
-export const migrations = [Init1796099110473, SiteSettings1796100000000];
+export const migrations = [Init1796099110473, SiteSettings1796100000000, SceneGuessedRoles1796101200000];

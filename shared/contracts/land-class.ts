@@ -26,7 +26,13 @@ const nameSchema = z.string().trim().min(1, 'Give the class a name.').max(80);
 const definitionSchema = z.string().trim().max(4_000);
 
 export const createLandClassSchema = z
-  .object({ code: codeSchema, name: nameSchema, colour: colourSchema, definition: definitionSchema.default('') })
+  .object({
+    /** The next free code where not given. */
+    code: codeSchema.optional(),
+    name: nameSchema,
+    colour: colourSchema,
+    definition: definitionSchema.default(''),
+  })
   .strict();
 export type CreateLandClass = z.input<typeof createLandClassSchema>;
 export const updateLandClassSchema = z

@@ -69,6 +69,7 @@ export const drawingRefusalSchema = z.object({
     'outside-scene',
     'outside-study-area',
     'no-pixel',
+    'too-large',
   ]),
   found: z.string(),
   wanted: z.string(),

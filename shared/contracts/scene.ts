@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { BAND_QUANTITIES, BAND_ROLES } from '../constants/bands.ts';
 import { daySchema, idSchema, instantSchema, personSchema } from './common.ts';
-import { boundsSchema, polygonSchema } from './geometry.ts';
+import { arealGeometrySchema, boundsSchema } from './geometry.ts';
 import { jobSchema } from './job.ts';
 
 export const histogramSchema = z.object({
@@ -64,9 +64,12 @@ export const sceneSchema = z.object({
   crsName: z.string().nullable(),
   crsEpsg: z.number().int().nullable(),
   crsProj4: z.string().nullable(),
-  footprint: polygonSchema.nullable(),
+  /** Outline; in two parts where the scene lies across the antimeridian, and then west > east in `bounds`. */
+  footprint: arealGeometrySchema.nullable(),
   bounds: boundsSchema.nullable(),
   bands: z.array(bandSchema),
+  /** Band roles were guessed from the number of bands and nobody has saved the band table since. */
+  guessedRoles: z.boolean(),
   /** Changes whenever pixels or band settings change; part of tile addresses so that they cache for long. */
   contentKey: z.string(),
   uploadedBy: personSchema.nullable(),

@@ -67,7 +67,6 @@ export async function openTestApp(overrides: Partial<Config> = {}): Promise<Test
     ingest: { timeoutSeconds: 120, memoryMb: 2048 },
     workerThreads: 2,
     tileCacheMb: 32,
-    adminEmail: null,
     demo: false,
     adminEmail: null,
     logLevel: 'silent',
