@@ -82,7 +82,8 @@ function serveClient(http: Express, clientDir: string): void {
   http.use(express.static(clientDir, { index: false, maxAge: '1h' }));
   http.get('/{*path}', (req, res, next) => {
     if (req.path.startsWith('/api/')) return next();
-    res.sendFile(join(clientDir, 'index.html'), { headers: { 'Cache-Control': 'no-cache' } }, (error) => {
+    // By its root, because a dot in the folder's own path (.build) would count as a hidden file.
+    res.sendFile('index.html', { root: clientDir, headers: { 'Cache-Control': 'no-cache' } }, (error) => {
       if (error) next(error);
     });
   });
