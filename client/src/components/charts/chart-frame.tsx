@@ -59,14 +59,14 @@ export function ChartFrame({
   };
   return (
     <figure aria-labelledby={titleId} className={classNames('min-w-0', className)}>
-      <figcaption className="mb-2 flex flex-wrap items-start gap-x-3 gap-y-1">
-        <div className="min-w-0 grow">
+      <figcaption className="mb-2 flex items-start gap-x-3">
+        <div className="min-w-0 flex-1">
           <p id={titleId} className={isTitleHidden ? 'sr-only' : 'text-lg font-semibold'}>
             {title}
           </p>
           {note && <p className="text-sm text-ink-soft">{note}</p>}
         </div>
-        <div data-print="hide" className="flex items-center gap-1">
+        <div data-print="hide" className="flex shrink-0 items-center gap-1">
           {!isTable && (
             <Segmented<View>
               label={`Show ${title} as`}

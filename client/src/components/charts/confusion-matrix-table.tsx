@@ -10,6 +10,8 @@ import { matrixBackground, matrixShade } from './matrix-shading.ts';
 export interface MatrixClass {
   id: string;
   name: string;
+  /** For the column's head, when the name is long: "broadleaf". Full names stand upright otherwise. */
+  shortName?: string;
   colour: string;
 }
 
@@ -48,6 +50,8 @@ export function ConfusionMatrixTable({
 }: ConfusionMatrixTableProps) {
   const [focus, setFocus] = useState<MatrixCell>({ mappedIndex: 0, referenceIndex: 0 });
   const bodyRef = useRef<HTMLTableSectionElement>(null);
+  // Names too long for a column's width are set upright rather than broken.
+  const isUpright = classes.some((one) => (one.shortName ?? one.name).split(' ').some((word) => word.length > 7));
   const rowTotals = matrix.map((row) => sum(row));
   const hasUnmapped = unmapped !== undefined && unmapped.some((count) => count > 0);
   const columnTotals = classes.map(
@@ -106,10 +110,17 @@ export function ConfusionMatrixTable({
                 <th
                   key={one.id}
                   scope="col"
+                  aria-label={one.name}
                   title={one.name}
-                  className="max-w-16 px-0.5 pb-1 text-center align-bottom text-2xs leading-tight font-medium text-ink-soft [overflow-wrap:anywhere] hyphens-auto"
+                  className="px-0.5 pb-1.5 text-center align-bottom text-2xs leading-tight font-medium text-ink-soft"
                 >
-                  {one.name}
+                  {isUpright ? (
+                    <span className="inline-block max-h-36 rotate-180 truncate text-left [writing-mode:vertical-rl]">
+                      {one.shortName ?? one.name}
+                    </span>
+                  ) : (
+                    (one.shortName ?? one.name)
+                  )}
                 </th>
               ))}
               <th scope="col" className="px-1 pb-1 align-bottom text-2xs font-medium text-ink-soft">
@@ -121,7 +132,7 @@ export function ConfusionMatrixTable({
             {matrix.map((row, mappedIndex) => (
               <tr key={classes[mappedIndex]?.id}>
                 <th scope="row" className="max-w-44 py-1 pr-2 text-left font-medium text-ink-soft">
-                  <span className="flex items-center gap-2">
+                  <span className="flex items-center gap-2 leading-tight">
                     <ClassSwatch size="sm" colour={classes[mappedIndex]!.colour} position={mappedIndex} />
                     {classes[mappedIndex]?.name}
                   </span>

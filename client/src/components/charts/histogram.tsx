@@ -27,6 +27,7 @@ export interface HistogramProps {
   isTitleHidden?: boolean;
 }
 
+/** Half the slider's thumb: puts its middle on the plot's edges at either end. */
 const SIDE = 8;
 
 /** How a band's values are spread, with handles for the stretch. */
@@ -115,7 +116,13 @@ export function Histogram({
           )}
           <path d={`M${SIDE} ${plotHeight}H${width - SIDE}`} stroke="var(--edge)" />
           {x.ticks(width > 380 ? 6 : 4).map((tick) => (
-            <text key={tick} x={x(tick)} y={plotHeight + 13} textAnchor="middle" fill="var(--ink-soft)">
+            <text
+              key={tick}
+              x={x(tick)}
+              y={plotHeight + 13}
+              textAnchor={anchorAt(x(tick), width)}
+              fill="var(--ink-soft)"
+            >
               {formatNumber(tick, decimals)}
             </text>
           ))}
@@ -141,6 +148,12 @@ export function Histogram({
       </div>
     </ChartFrame>
   );
+}
+
+/** The first and the last label must not run out of the drawing. */
+function anchorAt(place: number, width: number): 'start' | 'middle' | 'end' {
+  if (place < 16) return 'start';
+  return place > width - 16 ? 'end' : 'middle';
 }
 
 /** Shares of pixels outside the stretch, to the accuracy of a bin cut in proportion. */

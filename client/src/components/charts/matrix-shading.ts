@@ -4,9 +4,10 @@
  */
 export function matrixShade(share: number, isDiagonal: boolean): { alphaPercent: number; hue: string; text: string } {
   const isStrong = share >= STRONG_FROM;
+  // The square root lets a confusion of a few per cent be seen among the zeros.
   const alpha = isStrong
     ? 0.88 + (0.12 * (share - STRONG_FROM)) / (1 - STRONG_FROM)
-    : 0.07 + (0.33 * share) / STRONG_FROM;
+    : 0.05 + 0.35 * Math.sqrt(share / STRONG_FROM);
   const inverse = isDiagonal ? 'var(--on-spruce)' : 'var(--on-rust)';
   return {
     alphaPercent: Math.round(alpha * 1000) / 10,

@@ -4,7 +4,7 @@ import { area, line } from 'd3-shape';
 import type { BandQuantity } from '../../../../shared/constants/bands.ts';
 import { formatNumber } from '../../lib/format.ts';
 import { SPECTRAL_REGIONS } from './spectral-regions.ts';
-import { LINE_DASH, type SpectralPoint, type SpectralSeries } from './spectral-series.ts';
+import { LINE_DASH, lineColour, type SpectralPoint, type SpectralSeries } from './spectral-series.ts';
 
 interface SpectralPanelProps {
   series: readonly SpectralSeries[];
@@ -74,6 +74,9 @@ function valueDomain(series: readonly SpectralSeries[], quantity: BandQuantity):
   return [low - room, high + room];
 }
 
+/** About the width of a letter of the chart's text, in its units. */
+const LETTER_WIDTH = 6.2;
+
 function Regions({ x, top, height, domainUm }: { x: Scale; top: number; height: number; domainUm: [number, number] }) {
   return SPECTRAL_REGIONS.map((region, index) => {
     const from = x(Math.max(region.fromUm, domainUm[0]));
@@ -89,8 +92,9 @@ function Regions({ x, top, height, domainUm }: { x: Scale; top: number; height: 
           fill="var(--sunken)"
           opacity={index % 2 === 0 ? 1 : 0.45}
         />
-        <text x={from + 5} y={top + 12} fill="var(--ink-soft)">
-          {region.name}
+        <text x={from + 3} y={top - 4} fill="var(--ink-soft)">
+          {to - from < LETTER_WIDTH * region.name.length ? region.shortName : region.name}
+          <title>{`${region.longName}, ${region.fromUm}–${region.toUm} µm`}</title>
         </text>
       </g>
     );
@@ -129,7 +133,7 @@ function Profile({ series, x, y, decimals }: { series: SpectralSeries; x: Scale;
         <path
           d={path(series.points) ?? ''}
           fill="none"
-          stroke={series.colour}
+          stroke={lineColour(series)}
           strokeWidth={series.isMain ? 2.4 : 1.8}
           strokeDasharray={LINE_DASH[series.line ?? 'solid']}
           strokeLinejoin="round"
@@ -141,10 +145,10 @@ function Profile({ series, x, y, decimals }: { series: SpectralSeries; x: Scale;
           key={`${point.bandName}${point.wavelengthUm}`}
           cx={x(point.wavelengthUm)}
           cy={y(point.mean)}
-          r={series.isMain ? 3.2 : 2.2}
-          fill={series.isMain || series.points.length === 1 ? series.colour : 'var(--card)'}
-          stroke={series.colour}
-          strokeWidth="1.2"
+          r={series.isMain ? 3.4 : 2.4}
+          fill={lineColour(series)}
+          stroke="var(--card)"
+          strokeWidth="1"
         >
           <title>
             {`${series.name}, ${point.bandName} ${formatNumber(point.wavelengthUm, 2)} µm: ${formatNumber(point.mean, decimals)}` +

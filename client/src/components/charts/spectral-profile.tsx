@@ -4,7 +4,7 @@ import { useWidth } from '../../lib/use-width.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import { SpectralPanel, wavelengthExtent } from './spectral-panel.tsx';
 import { THERMAL_FROM_UM } from './spectral-regions.ts';
-import { LINE_DASH, QUANTITY_AXIS, type SpectralSeries, spectralData } from './spectral-series.ts';
+import { LINE_DASH, QUANTITY_AXIS, type SpectralSeries, lineColour, spectralData } from './spectral-series.ts';
 
 export interface SpectralProfileProps {
   title?: string;
@@ -16,7 +16,7 @@ export interface SpectralProfileProps {
 }
 
 const THERMAL_WIDTH = 52;
-const MARGIN = { top: 8, left: 36, right: 8, foot: 36 };
+const MARGIN = { top: 18, left: 36, right: 8, foot: 36 };
 
 /** Mean ± 1 σ by wavelength on a true axis, several series at once; thermal bands on a panel with their own axis. */
 export function SpectralProfile({
@@ -120,7 +120,7 @@ function Legend({ series }: { series: readonly SpectralSeries[] }) {
           <svg aria-hidden width="22" height="8">
             <path
               d="M1 4h20"
-              stroke={one.colour}
+              stroke={lineColour(one)}
               strokeWidth={one.isMain ? 2.4 : 1.8}
               strokeDasharray={LINE_DASH[one.line ?? 'solid']}
               strokeLinecap={one.line === 'dotted' ? 'round' : 'butt'}

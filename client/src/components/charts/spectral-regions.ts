@@ -3,10 +3,10 @@
  * books differ by about 0.1 µm at the edges).
  */
 export const SPECTRAL_REGIONS = [
-  { name: 'visible', longName: 'visible', fromUm: 0.38, toUm: 0.7 },
-  { name: 'NIR', longName: 'near infrared', fromUm: 0.7, toUm: 1.3 },
-  { name: 'SWIR', longName: 'shortwave infrared', fromUm: 1.3, toUm: 3 },
-  { name: 'TIR', longName: 'thermal infrared', fromUm: 8, toUm: 14 },
+  { name: 'visible', shortName: 'VIS', longName: 'visible', fromUm: 0.38, toUm: 0.7 },
+  { name: 'NIR', shortName: 'NIR', longName: 'near infrared', fromUm: 0.7, toUm: 1.3 },
+  { name: 'SWIR', shortName: 'SWIR', longName: 'shortwave infrared', fromUm: 1.3, toUm: 3 },
+  { name: 'TIR', shortName: 'TIR', longName: 'thermal infrared', fromUm: 8, toUm: 14 },
 ] as const;
 
 /** The region a wavelength falls in, or null between the shortwave and the thermal. */

@@ -25,6 +25,14 @@ export interface SpectralSeries {
 
 export const LINE_DASH = { solid: undefined, dashed: '6 3.5', dotted: '1.500 3.500' } as const;
 
+/** Share of a class's own colour in its line; the rest is ink, so that pale classes reach 3:1 on paper. */
+export const LINE_COLOUR_PERCENT = 50;
+
+/** The colour of a series' line: a token as it is, a class colour strengthened with ink. */
+export function lineColour({ colour }: Pick<SpectralSeries, 'colour'>): string {
+  return colour.startsWith('#') ? `color-mix(in srgb, ${colour} ${LINE_COLOUR_PERCENT}%, var(--ink))` : colour;
+}
+
 /** What an axis of a quantity is called. */
 export const QUANTITY_AXIS: Record<BandQuantity, string> = {
   reflectance: 'reflectance',

@@ -31,7 +31,7 @@ export function ClassKeys({ keys, target, selectedId, onSelect }: ClassKeysProps
     <div
       role="group"
       aria-label="Class to draw"
-      className="grid auto-cols-[minmax(86px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
+      className="grid auto-cols-[minmax(60px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
     >
       {keys.map((key) => {
         const digit = classDigit(key.position);
@@ -44,7 +44,7 @@ export function ClassKeys({ keys, target, selectedId, onSelect }: ClassKeysProps
             aria-keyshortcuts={digit ?? undefined}
             onClick={() => onSelect(key.id)}
             className={classNames(
-              'focus-inset flex flex-col px-2 pt-2 pb-2.5 text-left text-xs leading-tight',
+              'focus-inset flex flex-col px-2 pt-2 pb-2.5 text-left text-xs leading-tight max-lg:px-1 max-lg:text-2xs',
               isOn ? 'bg-groundsel-wash shadow-[inset_0_3px_0_var(--groundsel)]' : 'hover:bg-sunken',
             )}
           >

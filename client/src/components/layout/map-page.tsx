@@ -1,4 +1,5 @@
-import type { ReactNode } from 'react';
+import { type CSSProperties, type ReactNode, useEffect, useRef, useState } from 'react';
+import { classNames } from '../../lib/class-names.ts';
 
 export interface MapPageProps {
   /** A PageHeader. */
@@ -13,14 +14,31 @@ export interface MapPageProps {
 
 /** A map that takes everything right of the rail; nothing floats at its top left. */
 export function MapPage({ header, map, strip, slip }: MapPageProps) {
+  const stripRef = useRef<HTMLDivElement>(null);
+  const [stripHeight, setStripHeight] = useState(0);
+  const hasStrip = Boolean(strip);
+  useEffect(() => {
+    const element = stripRef.current;
+    if (!element || typeof ResizeObserver === 'undefined') return undefined;
+    const observer = new ResizeObserver(() => setStripHeight(element.offsetHeight));
+    observer.observe(element);
+    return () => observer.disconnect();
+  }, [hasStrip]);
+  // The map's own controls stay clear of the strip, however high it is.
+  const foot = { '--map-foot': hasStrip ? `${stripHeight + 14}px` : '0px' } as CSSProperties;
   return (
     <>
       {header}
       <div className="flex min-h-0 grow max-sm:min-h-[70dvh]">
         <div className="relative isolate min-w-0 grow bg-deep">
-          <div className="absolute inset-0">{map}</div>
+          <div className="absolute inset-0" style={foot}>
+            {map}
+          </div>
           {strip && (
-            <div className="pointer-events-none absolute inset-x-4 bottom-4 z-[1010] flex justify-start *:pointer-events-auto">
+            <div
+              ref={stripRef}
+              className="pointer-events-none absolute inset-x-4 bottom-4 z-[1010] flex justify-start *:pointer-events-auto"
+            >
               {strip}
             </div>
           )}
@@ -51,4 +69,42 @@ export function Strip({ label, tools, children }: StripProps) {
       {children}
     </section>
   );
+}
+
+export interface ToolButtonProps {
+  label: string;
+  /** Key as printed: "P", "⌃Z". */
+  shortcut?: string;
+  /** For drawing modes: sets aria-pressed. Leave out for acts such as Undo. */
+  isOn?: boolean;
+  isDisabled?: boolean;
+  onPress: () => void;
+}
+
+/** A tool in the strip's upper row with its key beside it. */
+export function ToolButton({ label, shortcut, isOn, isDisabled = false, onPress }: ToolButtonProps) {
+  return (
+    <button
+      type="button"
+      aria-pressed={isOn}
+      disabled={isDisabled}
+      onClick={onPress}
+      className={classNames(
+        'rounded-[7px] px-2 py-1 disabled:cursor-not-allowed disabled:opacity-50',
+        isOn ? 'bg-ink text-paper' : 'enabled:hover:bg-sunken',
+      )}
+    >
+      {label}
+      {shortcut && (
+        <kbd className={classNames('ml-1.5 font-sans text-2xs font-medium', isOn ? 'text-paper' : 'text-ink-soft')}>
+          {shortcut}
+        </kbd>
+      )}
+    </button>
+  );
+}
+
+/** Pushes what follows to the right end of the strip's tools. */
+export function ToolGap() {
+  return <span aria-hidden className="grow" />;
 }

@@ -1,4 +1,5 @@
-import { NavLink } from 'react-router-dom';
+import { useEffect, useRef } from 'react';
+import { NavLink, useLocation } from 'react-router-dom';
 import type { Stage } from '../../../../shared/contracts/project.ts';
 import { classNames } from '../../lib/class-names.ts';
 import { formatNumber } from '../../lib/format.ts';
@@ -18,21 +19,29 @@ export function StageStem({ projectId, stages }: StageStemProps) {
     const stage = stages.find((candidate) => candidate.id === id);
     return stage ? [{ ...stage, name }] : [];
   });
+  const navRef = useRef<HTMLElement>(null);
+  const { pathname } = useLocation();
+  // Along the top bar the open stage may lie out of sight.
+  useEffect(() => {
+    const nav = navRef.current;
+    const current = nav?.querySelector<HTMLElement>('[aria-current]');
+    if (nav && current) nav.scrollLeft = current.offsetLeft - (nav.clientWidth - current.offsetWidth) / 2;
+  }, [pathname]);
   return (
-    <nav aria-label="Stages of the project" className="max-sm:overflow-x-auto">
+    <nav ref={navRef} aria-label="Stages of the project" className="max-sm:relative max-sm:overflow-x-auto">
       <ol className="flex flex-col max-sm:flex-row max-sm:px-2">
         {shown.map((stage, index) => (
-          <li key={stage.id} className="relative">
+          <li key={stage.id} className="relative max-sm:static">
             {index > 0 && <StemPiece isGrown={stage.state !== 'empty'} />}
             <NavLink
               to={paths[stage.id](projectId)}
               title={stage.name}
               className={({ isActive }) =>
                 classNames(
-                  'relative flex items-center gap-2.5 py-2 pr-3 pl-[17px] font-medium text-ink no-underline',
+                  'relative flex items-center gap-2.5 max-sm:static py-2 pr-3 pl-[17px] font-medium text-ink no-underline',
                   'max-lg:justify-center max-lg:px-0 max-sm:gap-1.5 max-sm:px-2.5',
                   isActive
-                    ? 'mr-2.5 rounded-r-[10px] bg-card shadow-[inset_0_0_0_1px_var(--line)] max-lg:mr-1.5 max-sm:mr-0 max-sm:rounded-md'
+                    ? 'mr-2.5 rounded-r-[10px] bg-card shadow-[inset_0_0_0_1px_var(--line)] max-lg:mr-1.5 max-lg:pl-1.5 max-sm:mr-0 max-sm:rounded-md max-sm:pl-2.5'
                     : 'hover:text-spruce',
                 )
               }

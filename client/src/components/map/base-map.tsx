@@ -1,5 +1,5 @@
 import { type Map as LeafletMap, type LatLngBoundsExpression, CRS } from 'leaflet';
-import { type ReactNode, useEffect } from 'react';
+import { type ReactNode, useEffect, useRef } from 'react';
 import { MapContainer, ScaleControl, ZoomControl, useMap } from 'react-leaflet';
 import { CoordinateReadout } from './coordinate-readout.tsx';
 
@@ -97,10 +97,10 @@ function FollowSize() {
 
 function TellReady({ onReady }: { onReady: (map: LeafletMap) => void }) {
   const map = useMap();
+  // A parent's new function is no new map: only the first map is told.
+  const tell = useRef(onReady);
   useEffect(() => {
-    map.whenReady(() => onReady(map));
-    // Only the map matters: a parent's new function is no new map.
-    // eslint-disable-next-line react-hooks/exhaustive-deps
+    map.whenReady(() => tell.current(map));
   }, [map]);
   return null;
 }

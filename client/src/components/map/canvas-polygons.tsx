@@ -45,21 +45,18 @@ export function CanvasPolygons({
     const layer: GeoJsonLayer<PolygonProperties, Polygon | MultiPolygon> = geoJSON<
       PolygonProperties,
       Polygon | MultiPolygon
-    >(
-      { ...polygons, features: shown },
-      {
-        // The canvas renderer is read from each path's own options.
-        style: (feature) => ({ ...restingStyle(feature, fillOpacity), renderer }) as PathOptions,
-        onEachFeature: (feature, path) => {
-          path.on('click', (event) => {
-            event.originalEvent.stopPropagation();
-            select.current?.(feature.properties.id);
-          });
-          if (feature.properties.label)
-            path.bindTooltip(feature.properties.label, { sticky: true, className: 'map-note' });
-        },
+    >({ ...polygons, features: shown } as PolygonCollection, {
+      // The canvas renderer is read from each path's own options.
+      style: (feature) => ({ ...restingStyle(feature?.properties, fillOpacity), renderer }) as PathOptions,
+      onEachFeature: (feature, path) => {
+        path.on('click', (event) => {
+          event.originalEvent.stopPropagation();
+          select.current?.(feature.properties.id);
+        });
+        if (feature.properties.label)
+          path.bindTooltip(feature.properties.label, { sticky: true, className: 'map-note' });
       },
-    ).addTo(map);
+    }).addTo(map);
     const chosen = shown.filter((feature) => feature.properties.id === selectedId);
     const outline = chosen.map((feature) => selectionOutline(feature, renderer).addTo(map));
     return () => {
@@ -72,15 +69,15 @@ export function CanvasPolygons({
   return null;
 }
 
-function restingStyle(feature: PolygonFeature | undefined, fillOpacity: number): PathOptions {
-  const colour = feature?.properties.colour ?? '#ffffff';
+function restingStyle(properties: PolygonProperties | undefined, fillOpacity: number): PathOptions {
+  const colour = properties?.colour ?? '#ffffff';
   return {
     color: colour,
     weight: 2,
     opacity: 1,
     fillColor: colour,
     fillOpacity,
-    ...(feature?.properties.isDashed && { dashArray: '5 4' }),
+    ...(properties?.isDashed && { dashArray: '5 4' }),
   };
 }
 

@@ -23,7 +23,7 @@ export function DataTableHead<T>({ table }: { table: Table<T> }) {
                 aria-sort={sorted ? ARIA_SORT[sorted] : undefined}
                 style={{ width: column.columnDef.meta?.width }}
                 className={classNames(
-                  'sticky top-0 z-10 border-b border-edge bg-paper px-2 py-1.5 font-medium text-ink-soft',
+                  'sticky top-0 z-10 border-b border-edge bg-paper px-2 py-1.5 align-bottom font-medium text-ink-soft',
                   ALIGN[align],
                 )}
               >
@@ -32,7 +32,7 @@ export function DataTableHead<T>({ table }: { table: Table<T> }) {
                     type="button"
                     onClick={column.getToggleSortingHandler()}
                     className={classNames(
-                      'group inline-flex items-center gap-1 hover:text-ink',
+                      'group inline-flex items-center align-bottom gap-1 hover:text-ink',
                       align === 'right' && 'flex-row-reverse',
                       sorted && 'text-ink',
                     )}

@@ -4,7 +4,7 @@ import { useFieldWiring } from './field.tsx';
 
 export const INPUT_CLASS =
   'w-full min-h-9 rounded-lg border border-edge bg-card px-3 py-1.5 text-base text-ink placeholder:text-ink-soft ' +
-  'read-only:bg-sunken disabled:opacity-55 aria-invalid:border-rust aria-invalid:border-2';
+  '[&[readonly]]:bg-sunken disabled:opacity-55 aria-invalid:border-rust aria-invalid:border-2';
 
 export type TextInputProps = InputHTMLAttributes<HTMLInputElement> & { ref?: Ref<HTMLInputElement> };
 
