@@ -2,6 +2,7 @@ import { requireBlock, type TrainedModel } from './classifier.ts';
 import { ModelBytesError, packArrays, unpackArrays } from './model-bytes.ts';
 import { createThresholdRanks, type ThresholdRanks } from './threshold-ranks.ts';
 import type { FlatTree, TreePart } from './tree-part.ts';
+import { walkTree, type WalkBlock } from './walk-tree.ts';
 
 const VERSION = 1;
 /** Rows walked together: ranks and votes of a block stay in the second-level cache. */
@@ -24,12 +25,9 @@ export class FlatForest implements TrainedModel {
   readonly #nodes: FlatTree;
   readonly #roots: Int32Array;
   readonly #ranks: ThresholdRanks;
-  /** For node i: word 2i is (rank of threshold << 8) | feature, word 2i + 1 the left child; a leaf points at itself. */
+  /** The nodes as `walkTree` wants them. */
   readonly #steps: Int32Array;
-  readonly #rankBlock: Int32Array;
-  readonly #votes: Uint16Array;
-  readonly #best = new Uint16Array(BLOCK_ROWS);
-  readonly #winner = new Uint8Array(BLOCK_ROWS);
+  readonly #block: WalkBlock;
 
   constructor(
     kind: string,
@@ -49,8 +47,12 @@ export class FlatForest implements TrainedModel {
     const thresholds = collectThresholds(nodes, shape.nFeatures);
     this.#ranks = createThresholdRanks(thresholds);
     this.#steps = encodeSteps(nodes, thresholds);
-    this.#rankBlock = new Int32Array(BLOCK_ROWS * shape.nFeatures);
-    this.#votes = new Uint16Array(BLOCK_ROWS * shape.nClasses);
+    this.#block = {
+      ranks: new Int32Array(BLOCK_ROWS * shape.nFeatures),
+      votes: new Uint16Array(BLOCK_ROWS * shape.nClasses),
+      best: new Uint16Array(BLOCK_ROWS),
+      winner: new Uint8Array(BLOCK_ROWS),
+    };
   }
 
   /** Joins trees, in the order given, into a forest. */
@@ -115,63 +117,17 @@ export class FlatForest implements TrainedModel {
 
   predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
     requireBlock(this.nFeatures, features, n, classIndex, share);
+    const { ranks, votes, best, winner } = this.#block;
     for (let from = 0; from < n; from += BLOCK_ROWS) {
       const nHere = Math.min(BLOCK_ROWS, n - from);
-      this.#ranks.rankRows(features, from, nHere, this.#rankBlock);
-      this.#votes.fill(0);
-      this.#best.fill(0);
-      for (let tree = 0; tree < this.nTrees; tree++) this.#walkTree(this.#roots[tree], nHere);
-      classIndex.set(this.#winner.subarray(0, nHere), from);
-      if (share) for (let i = 0; i < nHere; i++) share[from + i] = this.#best[i] / this.nTrees;
-    }
-  }
-
-  /**
-   * Walks one tree with every row of the block and counts its votes. Four rows go down together, so that the processor waits for four
-   * memory reads at once instead of one; a step has no branch: the sign of (node's rank − row's rank) picks the child.
-   */
-  #walkTree(root: number, nRows: number): void {
-    const steps = this.#steps;
-    const ranks = this.#rankBlock;
-    const nFeatures = this.nFeatures;
-    // Rows past the end of a short block are walked too (with whatever ranks stand there) and never read.
-    for (let row = 0; row < nRows; row += 4) {
-      const r0 = row * nFeatures;
-      const r1 = r0 + nFeatures;
-      const r2 = r1 + nFeatures;
-      const r3 = r2 + nFeatures;
-      let a = root;
-      let b = root;
-      let c = root;
-      let d = root;
-      for (;;) {
-        const wa = steps[a << 1];
-        const wb = steps[b << 1];
-        const wc = steps[c << 1];
-        const wd = steps[d << 1];
-        const na = steps[(a << 1) + 1] + (((wa >> 8) - ranks[r0 + (wa & 255)]) >>> 31);
-        const nb = steps[(b << 1) + 1] + (((wb >> 8) - ranks[r1 + (wb & 255)]) >>> 31);
-        const nc = steps[(c << 1) + 1] + (((wc >> 8) - ranks[r2 + (wc & 255)]) >>> 31);
-        const nd = steps[(d << 1) + 1] + (((wd >> 8) - ranks[r3 + (wd & 255)]) >>> 31);
-        if (((na ^ a) | (nb ^ b) | (nc ^ c) | (nd ^ d)) === 0) break;
-        a = na;
-        b = nb;
-        c = nc;
-        d = nd;
+      this.#ranks.rankRows(features, from, nHere, ranks);
+      votes.fill(0);
+      best.fill(0);
+      for (const root of this.#roots) {
+        walkTree(this.#steps, this.#nodes.leafClass, root, this.#block, nHere, this.nFeatures, this.nClasses);
       }
-      this.#vote(row, a);
-      this.#vote(row + 1, b);
-      this.#vote(row + 2, c);
-      this.#vote(row + 3, d);
-    }
-  }
-
-  #vote(row: number, leaf: number): void {
-    const vote = this.#nodes.leafClass[leaf];
-    const count = ++this.#votes[row * this.nClasses + vote];
-    if (count > this.#best[row]) {
-      this.#best[row] = count;
-      this.#winner[row] = vote;
+      classIndex.set(winner.subarray(0, nHere), from);
+      if (share) for (let i = 0; i < nHere; i++) share[from + i] = best[i] / this.nTrees;
     }
   }
 }
