@@ -12,10 +12,11 @@ export interface Disagreement {
 }
 
 /**
- * Turns sample counts into estimated population proportions, p_ij = (n_ij / n_i+)(N_i / ΣN), for samples stratified by map class.
+ * Turns sample counts into estimated population proportions, p_ij = (n_ij / n_i+)(N_i / ΣN), for samples stratified by
+ * map class.
  *
- * `mappedTotals` are the mapped amounts N_i (pixels or area) of each class. Returns `null` when a class that is on the map
- * has no sample, since its row is then unknown.
+ * `mappedTotals` are the mapped amounts N_i (pixels or area) of each class. Returns `null` when a class that is on the
+ * map has no sample, since its row is then unknown.
  * Source: Pontius & Millones 2011, International Journal of Remote Sensing 32:4407–4429.
  * @throws RangeError when there is not one non-negative total for each class or all are zero.
  */

@@ -40,9 +40,9 @@ export function wilsonInterval(successes: number, trials: number, confidence = 0
 /**
  * Interval of the proportion Σhits / Σsizes when whole clusters (sample polygons) were drawn, not single pixels.
  *
- * With R = Σy/Σx over k clusters, the linearised between-cluster variance is k/(k−1) · Σ(y − R·x)² / (Σx)², without finite
- * population correction; the half-width takes Student's t with k−1 degrees of freedom, and the ends are clipped to
- * 0..1. Clusters of size 0 are left out. `null` when fewer than two clusters are left.
+ * With R = Σy/Σx over k clusters, the linearised between-cluster variance is k/(k−1) · Σ(y − R·x)² / (Σx)², without
+ * finite population correction; the half-width takes Student's t with k−1 degrees of freedom, and the ends are clipped
+ * to 0..1. Clusters of size 0 are left out. `null` when fewer than two clusters are left.
  *
  * Source: Cochran 1977, Sampling Techniques, 3rd edition: ratio estimate of a proportion in cluster sampling
  * (sec. 3.12 and ch. 6; section numbers from memory).

@@ -17,7 +17,8 @@ export interface McNemarResult {
  * Compares two maps judged on the same reference units: `onlyFirstRight` = b, `onlySecondRight` = c.
  *
  * Returns `null` when the maps never differ (b + c = 0).
- * Source: McNemar 1947; Foody 2004, PE&RS 70:627–633 (why kappas of related samples must not be compared as independent).
+ * Source: McNemar 1947; Foody 2004, PE&RS 70:627–633 (why kappas of related samples must not be compared as
+ * independent).
  * @throws RangeError when a count is not a non-negative integer.
  */
 export function compareByMcNemar(onlyFirstRight: number, onlySecondRight: number): McNemarResult | null {

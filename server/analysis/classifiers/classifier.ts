@@ -25,8 +25,8 @@ export interface TrainedModel {
    */
   readonly featureImportance: Float64Array | null;
   /**
-   * Classifies n rows of row-major features: fills classIndex[0..n) and, when given, share[0..n) with the winner's share of
-   * the votes (0..1). Rows of no data are the caller's to mask: a NaN is taken as greater than everything.
+   * Classifies n rows of row-major features: fills classIndex[0..n) and, when given, share[0..n) with the winner's
+   * share of the votes (0..1). Rows of no data are the caller's to mask: a NaN is taken as greater than everything.
    * @throws RangeError when an array is too short.
    */
   predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void;
@@ -41,13 +41,13 @@ export interface OutOfBagVotes {
   /** Rows with at least one vote. */
   nVoted: number;
   nCorrect: number;
-  /** nCorrect / nVoted; `null` when no row has a vote. Optimistic for pixels of the same polygons: see docs. */
+  /** nCorrect / nVoted; `null` when no row has a vote. Optimistic: pixels of one polygon are alike. */
   accuracy: number | null;
 }
 
 /**
- * A method of classification. Training is cut into parts (trees) that depend on the seed and their own number alone, so that they can be
- * trained in any order on any number of threads, and the assembled model is the same to the byte.
+ * A method of classification. Training is cut into parts (trees) that depend on the seed and their own number alone,
+ * so that they can be trained in any order on any number of threads, and the assembled model is the same to the byte.
  */
 export interface Classifier<P> {
   readonly kind: string;

@@ -16,8 +16,8 @@ export interface CartNode {
 /**
  * Lays a tree of ml-cart out breadth-first, with columns turned back into feature numbers.
  *
- * Thresholds become 32-bit floats that decide the same for every 32-bit value. A leaf's class is the first with the greatest
- * share, as in the library.
+ * Thresholds become 32-bit floats that decide the same for every 32-bit value. A leaf's class is the first with the
+ * greatest share, as in the library.
  */
 export function flattenCartTree(root: CartNode, usedFeatures: readonly number[]): FlatTree {
   const queue: CartNode[] = [root];

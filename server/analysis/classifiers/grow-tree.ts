@@ -17,9 +17,10 @@ export interface GrowOptions {
 /**
  * Grows a classification tree on rows of a training set (a row may come several times).
  *
- * At each node features are drawn at random without replacement until `featuresPerSplit` that vary in the node have been tried; the
- * split with the greatest decrease of Gini impurity wins, the first met on a tie. The threshold lies midway between the neighbouring
- * values; values equal to it go left. A leaf takes its most frequent class, the lowest index on a tie.
+ * At each node features are drawn at random without replacement until `featuresPerSplit` that vary in the node have
+ * been tried; the split with the greatest decrease of Gini impurity wins, the first met on a tie. The threshold lies
+ * midway between the neighbouring values; values equal to it go left. A leaf takes its most frequent class, the lowest
+ * index on a tie.
  * Source: Breiman 2001, Machine Learning 45:5–32.
  * @returns the tree and the decrease of impurity by each feature, weighted with the share of rows.
  */

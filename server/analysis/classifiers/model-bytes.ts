@@ -10,8 +10,8 @@ const HEADER_BYTES = 16;
 type NumberArray = Uint8Array | Int16Array | Uint32Array | Int32Array | Float32Array | Float64Array;
 
 /**
- * Packs arrays into one block of bytes: magic, format version, CRC-32 of the rest, length of kind, kind, then each array with its length
- * in bytes before it, each at a multiple of eight bytes.
+ * Packs arrays into one block of bytes: magic, format version, CRC-32 of the rest, length of kind, kind, then each
+ * array with its length in bytes before it, each at a multiple of eight bytes.
  */
 export function packArrays(kind: string, version: number, arrays: readonly NumberArray[]): Uint8Array {
   const kindBytes = new TextEncoder().encode(kind);

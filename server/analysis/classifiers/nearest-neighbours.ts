@@ -17,8 +17,8 @@ const VERSION = 1;
 /**
  * k nearest neighbours by Euclidean distance, searched with the k-d tree of the library ml-knn.
  *
- * Ties are decided, not left to the search: neighbours at the same distance count in the order of the training rows, and of
- * classes with as many votes the lowest index wins. Training has one part: it stores the rows.
+ * Ties are decided, not left to the search: neighbours at the same distance count in the order of the training rows,
+ * and of classes with as many votes the lowest index wins. Training has one part: it stores the rows.
  * Source: Cover & Hart 1967, IEEE Transactions on Information Theory 13:21–27.
  */
 export const nearestNeighbours: Classifier<NearestNeighboursParams> = {
@@ -127,8 +127,9 @@ class NeighbourModel implements TrainedModel {
 }
 
 /**
- * Squared Euclidean distance over the features only. With the library's own distance its search visits every point, since that
- * reads the length of the stand-in the search compares with, which has none; this one lets the search skip branches.
+ * Squared Euclidean distance over the features only. With the library's own distance its search visits every point,
+ * since that reads the length of the stand-in the search compares with, which has none; this one lets the search skip
+ * branches.
  */
 function createSquaredDistance(nFeatures: number): (a: ArrayLike<number>, b: ArrayLike<number>) => number {
   return (a, b) => {

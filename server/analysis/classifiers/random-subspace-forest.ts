@@ -35,8 +35,9 @@ const kind = 'random-subspace-forest';
 /**
  * Forest of trees on random subsets of the features, trained by the library ml-random-forest, one tree a part.
  *
- * The bootstrap sample is drawn here, not in the library: its `maxSamples` takes the first rows instead of random ones, and it does not tell
- * which rows a tree has not seen. Its trees then decide in our flat forest exactly as in the library.
+ * The bootstrap sample is drawn here, not in the library: its `maxSamples` takes the first rows instead of random
+ * ones, and it does not tell which rows a tree has not seen. Its trees then decide in our flat forest exactly as in
+ * the library.
  * Source: Ho 1998, IEEE Transactions on Pattern Analysis and Machine Intelligence 20:832–844 (random subspaces).
  */
 export const randomSubspaceForest: Classifier<RandomSubspaceForestParams> = {

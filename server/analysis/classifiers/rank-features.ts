@@ -1,6 +1,9 @@
 import type { TrainingSet } from './classifier.ts';
 
-/** A training set with every value replaced by its rank among the distinct values of its feature: exact, whatever the range. */
+/**
+ * A training set with every value replaced by its rank among the distinct values of its feature: exact, whatever the
+ * range.
+ */
 export interface RankedFeatures {
   /** For each feature the rank (0 = lowest) of each row. */
   ranks: readonly Int32Array[];
@@ -10,7 +13,9 @@ export interface RankedFeatures {
 
 const ranked = new WeakMap<TrainingSet, RankedFeatures>();
 
-/** Ranks the features of a training set; the result is kept as long as the set object lives, since every tree needs it. */
+/**
+ * Ranks the features of a training set; the result is kept as long as the set object lives, since every tree needs it.
+ */
 export function rankFeatures(set: TrainingSet): RankedFeatures {
   const known = ranked.get(set);
   if (known) return known;

@@ -1,7 +1,8 @@
 /**
  * Replaces feature values by their rank among a forest's thresholds, so that trees compare small integers.
  *
- * The rank of x is the number of thresholds t with not (x < t); "x < t_j" is then exactly "rank ≤ j". NaN ranks above all.
+ * The rank of x is the number of thresholds t with not (x < t); "x < t_j" is then exactly "rank ≤ j". NaN ranks above
+ * all.
  */
 export interface ThresholdRanks {
   /** Sorted distinct thresholds of each feature. */
@@ -43,8 +44,8 @@ export function createThresholdRanks(thresholds: readonly Float32Array[]): Thres
 }
 
 /**
- * Buckets of equal width over the thresholds: start[b]..start[b + 1] are the thresholds in bucket b. Thresholds and values go through the
- * same increasing expression, so a value's rank lies between the two whatever the rounding.
+ * Buckets of equal width over the thresholds: start[b]..start[b + 1] are the thresholds in bucket b. Thresholds and
+ * values go through the same increasing expression, so a value's rank lies between the two whatever the rounding.
  */
 function createBuckets(t: Float32Array): { low: number; scale: number; lastBucket: number; start: Int32Array } {
   const low = t.length > 0 ? t[0] : 0;

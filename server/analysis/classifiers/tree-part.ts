@@ -57,7 +57,10 @@ export function unpackTreePart(kind: string, bytes: Uint8Array): TreePart {
   return { part, tree, impurityDecrease: reader.next(Float64Array), outOfBag: reader.next(Uint8Array) };
 }
 
-/** Unpacks parts and puts them in the order of their numbers. @throws ModelBytesError when one is missing or doubled. */
+/**
+ * Unpacks parts and puts them in the order of their numbers.
+ * @throws ModelBytesError when one is missing or doubled.
+ */
 export function unpackAllTreeParts(kind: string, parts: readonly Uint8Array[], nParts: number): TreePart[] {
   const trees = parts.map((bytes) => unpackTreePart(kind, bytes)).sort((a, b) => a.part - b.part);
   if (trees.length !== nParts) throw new ModelBytesError(`${nParts} parts are wanted, got ${trees.length}.`);

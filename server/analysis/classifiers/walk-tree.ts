@@ -13,9 +13,10 @@ export interface WalkBlock {
 /**
  * Walks one tree with rows 0..nRows of a block, rounded up to eight, and counts its votes.
  *
- * steps[2i] is (rank of node i's threshold << 8) | feature, steps[2i + 1] its left child; a leaf points at itself. Eight rows go down together,
- * so that the processor waits for eight memory reads at once instead of one; a step has no branch: the sign of (node's rank − row's
- * rank) picks the child. Rows past nRows are walked with whatever ranks stand there.
+ * steps[2i] is (rank of node i's threshold << 8) | feature, steps[2i + 1] its left child; a leaf points at itself.
+ * Eight rows go down together, so that the processor waits for eight memory reads at once instead of one; a step has
+ * no branch: the sign of (node's rank − row's rank) picks the child. Rows past nRows are walked with whatever ranks
+ * stand there.
  */
 export function walkTree(
   steps: Int32Array,

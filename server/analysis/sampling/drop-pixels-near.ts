@@ -1,8 +1,9 @@
 /**
- * Leaves out the pixels whose centre is within a distance of any pixel of another set (training pixels near held-out ones).
+ * Leaves out the pixels whose centre is within a distance of any pixel of another set (training pixels near held-out
+ * ones).
  *
- * Both sets are flat indices of a grid `width` pixels wide; the distance is Euclidean, in pixels, between centres, and the
- * limit itself counts as near.
+ * Both sets are flat indices of a grid `width` pixels wide; the distance is Euclidean, in pixels, between centres, and
+ * the limit itself counts as near.
  * @returns the pixels kept, in the order given.
  * @throws RangeError when the distance is negative or not finite.
  */

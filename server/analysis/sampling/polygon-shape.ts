@@ -7,8 +7,8 @@ export type ShapeProblem =
 export type ShapeCheck = { ok: true } | { ok: false; reason: ShapeProblem; ringIndex: number; at: [number, number] };
 
 /**
- * Checks that a polygon can be used as a sample: rings closed, of at least four finite positions and some area, not touching or
- * crossing themselves or each other, and holes inside the outer ring. Rings may run either way round.
+ * Checks that a polygon can be used as a sample: rings closed, of at least four finite positions and some area, not
+ * touching or crossing themselves or each other, and holes inside the outer ring. Rings may run either way round.
  */
 export function checkPolygonShape(polygon: Polygon): ShapeCheck {
   if (polygon.length === 0) return fail('too-few-positions', 0, [0, 0]);
@@ -30,7 +30,10 @@ export function checkPolygonShape(polygon: Polygon): ShapeCheck {
   return { ok: true };
 }
 
-/** Signed area of a closed ring: positive when the ring runs counter-clockwise with y upwards. In squared coordinate units. */
+/**
+ * Signed area of a closed ring: positive when the ring runs counter-clockwise with y upwards. In squared coordinate
+ * units.
+ */
 export function signedRingArea(ring: Ring): number {
   // Relative to the first position, so that large map coordinates do not eat the digits.
   const [ox, oy] = ring[0];

@@ -4,8 +4,8 @@ import type { MultiPolygon, Polygon } from './polygon.ts';
  * Finds the pixels whose centre lies inside a polygon, by the even-odd rule along scanlines.
  *
  * Pixel (column, row) covers [column, column + 1) × [row, row + 1) in pixel coordinates, y downwards; its centre is at
- * + 0.5. Intervals are half-open (a centre on a left or upper edge is in, on a right or lower edge out), so where polygons
- * share their edge vertices every centre belongs to exactly one of them. Parts outside the grid are cut off.
+ * + 0.5. Intervals are half-open (a centre on a left or upper edge is in, on a right or lower edge out), so where
+ * polygons share their edge vertices every centre belongs to exactly one of them. Parts outside the grid are cut off.
  *
  * @returns ascending flat indices row·width + column, each once.
  * @throws RangeError when the grid is empty or too large for 32-bit indices, or a coordinate is not finite.
@@ -49,7 +49,10 @@ export function rasteriseMultiPolygon(polygons: MultiPolygon, width: number, hei
   return all.slice(0, kept);
 }
 
-/** The x of every edge on every row's centre line, sorted within the row; row r owns crossings[rowStart[r]..rowStart[r+1]). */
+/**
+ * The x of every edge on every row's centre line, sorted within the row; row r owns
+ * crossings[rowStart[r]..rowStart[r+1]).
+ */
 function collectCrossings(polygon: Polygon, height: number): { rowStart: Uint32Array; crossings: Float64Array } {
   const rowStart = new Uint32Array(height + 1);
   forEachEdge(polygon, (_x0, y0, _x1, y1) => {
@@ -71,7 +74,10 @@ function collectCrossings(polygon: Polygon, height: number): { rowStart: Uint32A
   return { rowStart, crossings };
 }
 
-/** Visits every non-horizontal edge from its upper to its lower end, so that two polygons get the same bits for a shared edge. */
+/**
+ * Visits every non-horizontal edge from its upper to its lower end, so that two polygons get the same bits for a
+ * shared edge.
+ */
 function forEachEdge(polygon: Polygon, visit: (x0: number, y0: number, x1: number, y1: number) => void): void {
   for (const ring of polygon) {
     for (let i = 0; i < ring.length; i++) {

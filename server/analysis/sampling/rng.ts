@@ -13,7 +13,8 @@ export interface Rng {
 /**
  * xoshiro128** started from four 32-bit words, not all zero.
  *
- * Source: Blackman & Vigna 2021, Scrambled linear pseudorandom number generators, ACM Transactions on Mathematical Software 47(4).
+ * Source: Blackman & Vigna 2021, Scrambled linear pseudorandom number generators, ACM Transactions on Mathematical
+ * Software 47(4).
  * @throws RangeError when all four words are zero.
  */
 export function createRngFromState(s0: number, s1: number, s2: number, s3: number): Rng {
