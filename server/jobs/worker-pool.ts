@@ -13,18 +13,22 @@ export interface WorkerPoolOptions {
   idleTimeoutMs?: number;
   /** Heap limit of each thread. */
   maxHeapMb?: number;
+  /** Told of a thread that failed while it had no task; written to standard error where not given. */
+  onError?: (error: Error) => void;
 }
 
 /**
  * A pool of worker threads that runs from the TypeScript sources and from the compiled server alike.
- * Run a task with `pool.run(task, { signal, transferList })`; an aborted task's thread is ended and replaced.
+ * Run a task with `pool.run(task, { signal, transferList })`; an aborted task's thread, with whatever it
+ * holds in memory, is ended and replaced if the task had begun.
  */
 export function createWorkerPool<Task, Result>(options: WorkerPoolOptions): Piscina<Task, Result> {
   const { entry, threads, workerData = {}, maxQueue = Infinity, idleTimeoutMs, maxHeapMb } = options;
+  const { onError = (error: Error) => console.error('worker thread failed:', error) } = options;
   const isCompiled = import.meta.url.endsWith('.js');
   const entryUrl = isCompiled ? new URL(entry.href.replace(/\.ts$/, '.js')) : entry;
   const bootUrl = new URL('./worker-boot.mjs', import.meta.url);
-  return new Piscina<Task, Result>({
+  const pool = new Piscina<Task, Result>({
     filename: fileURLToPath(isCompiled ? entryUrl : bootUrl),
     minThreads: idleTimeoutMs === undefined ? threads : 0,
     maxThreads: threads,
@@ -36,4 +40,11 @@ export function createWorkerPool<Task, Result>(options: WorkerPoolOptions): Pisc
     workerData: { ...workerData, workerEntry: entryUrl.href },
     ...(maxHeapMb === undefined ? {} : { resourceLimits: { maxOldGenerationSizeMb: maxHeapMb } }),
   });
+  // Without a listener an 'error' event would end the process.
+  pool.on('error', (error: Error) => {
+    // An aborted task may have had its answer on the way; nobody waits for it any more.
+    if (error.message.startsWith('Unexpected message from Worker')) return;
+    onError(error);
+  });
+  return pool;
 }

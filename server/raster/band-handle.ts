@@ -78,8 +78,9 @@ export class BandHandle {
       const full = openLevels[0].image;
       // The tag is text; deferred in some files, so it is loaded before it is asked for.
       await full.fileDirectory.loadValue('GDAL_NODATA');
-      const nodata = full.getGDALNoData();
-      return new BandHandle(tiff, openLevels, readDtype(full), nodata, readGrid(full), `${mtimeMs}:${size}`);
+      const dtype = readDtype(full);
+      const nodata = readNodata(full, dtype);
+      return new BandHandle(tiff, openLevels, dtype, nodata, readGrid(full), `${mtimeMs}:${size}`);
     } catch (error) {
       await tiff.close();
       throw error;
@@ -117,6 +118,12 @@ function readDtype(image: GeoTIFFImage): BandDtype {
   const dtype = `${kind}${image.getBitsPerSample()}`;
   if (!/^(u?int(8|16|32)|float(32|64))$/.test(dtype)) throw new Error(`unsupported sample type ${dtype}`);
   return dtype as BandDtype;
+}
+
+/** The declared nodata value as a sample of this type would hold it. */
+function readNodata(image: GeoTIFFImage, dtype: BandDtype): number | null {
+  const declared = image.getGDALNoData();
+  return declared !== null && dtype === 'float32' ? Math.fround(declared) : declared;
 }
 
 function readGrid(image: GeoTIFFImage): RasterGrid {

@@ -48,6 +48,7 @@ export function addOwnedCodes(
 ): number {
   const { pixels, owners } = owned;
   let i = from;
-  for (; i < pixels.length && pixels[i] < offset + codes.length; i++) counts[owners[i] * 256 + codes[pixels[i] - offset]]++;
+  for (; i < pixels.length && pixels[i] < offset + codes.length; i++)
+    counts[owners[i] * 256 + codes[pixels[i] - offset]]++;
   return i;
 }

@@ -144,6 +144,16 @@ export function runGdal(
   });
 }
 
+/** Whether the tool failed because of what is in the file it read, not because this machine ran out of something. */
+export function isFaultOfFile(error: unknown): error is GdalProcessError {
+  return (
+    error instanceof GdalProcessError &&
+    error.reason === 'failed' &&
+    error.exitCode !== null &&
+    !/memory|bad_alloc|no space left|permission denied|write/i.test(error.stderr)
+  );
+}
+
 /** Refuses anything but an absolute path on the local disk. */
 export function requireLocalPath(path: string): string {
   if (!isAbsolute(path) || /^\/vsi/i.test(path)) throw new RangeError(`expected an absolute local path, got ${path}`);

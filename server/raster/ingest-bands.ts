@@ -9,7 +9,7 @@ import { chooseCompression, listCreationOptions } from './band-file-format.ts';
 import { BandStore } from './band-store.ts';
 import { computeBandStatistics, type BandStatistics } from './band-statistics.ts';
 import type { BandDtype } from './band-dtype.ts';
-import { requireLocalPath, runGdal } from './gdal-process.ts';
+import { isFaultOfFile, requireLocalPath, runGdal } from './gdal-process.ts';
 import type { SourceBand, SourceInfo } from './inspect-source.ts';
 import { writeGeoTiffFromRaw } from './raw-to-geotiff.ts';
 import { SourceRefusal } from './source-refusal.ts';
@@ -49,7 +49,7 @@ const stepShares = { write: 0.5, overviews: 0.2, statistics: 0.3 };
 /**
  * Writes each band of an inspected source as a tiled GeoTIFF with overviews and measures it.
  * An alpha band or a mask over the whole file becomes nodata. On any failure the files written are removed.
- * @throws {SourceRefusal} `all-nodata` when no band has a single pixel with data.
+ * @throws {SourceRefusal} `all-nodata` when no band has a single pixel with data; `unreadable` when pixels can't be decoded.
  * @throws {RangeError} when a wanted band isn't in the source.
  * @throws {GdalProcessError} when GDAL fails, or a limit or the signal stops it.
  */
@@ -171,7 +171,7 @@ async function extractBand(
 ): Promise<void> {
   const isImagery = bandArgument === String(band.index);
   const nodata = isImagery && band.nodata !== null ? (Number.isNaN(band.nodata) ? 'nan' : String(band.nodata)) : 'none';
-  await runGdal(
+  const run = runGdal(
     'gdal_translate',
     [
       ...['-of', 'GTiff', '-b', bandArgument, '-mask', 'none', '-a_nodata', nodata, '-norat'],
@@ -182,6 +182,17 @@ async function extractBand(
     ],
     { origin: 'upload', timeoutMs, signal: options.signal, onProgress },
   );
+  try {
+    await run;
+  } catch (error) {
+    if (!isFaultOfFile(error)) throw error;
+    throw new SourceRefusal(
+      'unreadable',
+      `pixels of band ${band.index} that can't be decoded`,
+      'a file that can be read to its end',
+      'It may have been cut off or damaged on the way; check it and upload it again.',
+    );
+  }
 }
 
 async function writeMaskedBand(

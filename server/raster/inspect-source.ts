@@ -1,6 +1,6 @@
 import { stat } from 'node:fs/promises';
 import { readGdalType, isRepresentable, type BandDtype } from './band-dtype.ts';
-import { GdalProcessError, requireLocalPath, runGdal } from './gdal-process.ts';
+import { isFaultOfFile, requireLocalPath, runGdal } from './gdal-process.ts';
 import type { RasterGrid } from './raster-grid.ts';
 import { resolveCrs, type SourceCrs } from './resolve-crs.ts';
 import { computeSceneExtent, type Footprint, type LonLatBounds } from './scene-extent.ts';
@@ -93,7 +93,7 @@ async function readGdalInfo(path: string, timeoutMs: number, signal: AbortSignal
     // Older GDAL prints bare nan and inf, which are not JSON.
     return JSON.parse(stdout.replace(/:\s*(-?)(nan|inf)\b/gi, ': "$1$2"')) as GdalInfo;
   } catch (error) {
-    if (error instanceof GdalProcessError && error.reason === 'failed' && error.exitCode === 1) {
+    if (isFaultOfFile(error)) {
       throw notARaster('a file that none of the allowed readers recognises');
     }
     throw error;

@@ -1,5 +1,6 @@
 export type SourceRefusalCode =
   | 'not-a-raster'
+  | 'unreadable'
   | 'no-bands'
   | 'too-many-bands'
   | 'too-many-pixels'

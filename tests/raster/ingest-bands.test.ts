@@ -1,4 +1,4 @@
-import { readdirSync } from 'node:fs';
+import { readdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { BandStore } from '../../server/raster/band-store.ts';
@@ -107,6 +107,14 @@ describe('ingestBands', () => {
     await store.close();
   });
 
+  it('recognises a nodata value that 32-bit floating point only comes near', async () => {
+    const values = fillBand(new Float32Array(2400), 60, (col) => (col === 0 ? -9999.9 : col));
+    const { bands, pathOf } = await ingest({ bands: [values], dtype: 'float32', nodata: '-9999.9' });
+    expect(bands[0].nodata).toBe(Math.fround(-9999.9));
+    expect(bands[0].statistics).toMatchObject({ nValid: 2360, min: 1 });
+    expect(readWithGdal(pathOf(0), 'float32')[0]).toBe(Math.fround(-9999.9));
+  });
+
   it('treats NaN as nodata, declared or not', async () => {
     const values = fillBand(new Float32Array(2400), 60, (col) => (col === 0 ? NaN : col));
     for (const nodata of [undefined, 'nan']) {
@@ -157,6 +165,24 @@ describe('ingestBands', () => {
     expect(readdirSync(join(folder, `scene-${count - 1}`))).toEqual([]);
     const half = await ingest({ bands: [empty, new Uint16Array(2400).fill(8)], dtype: 'uint16', nodata: '9' });
     expect(half.bands.map((band) => band.statistics?.nValid ?? null)).toEqual([null, 2400]);
+  });
+
+  it('refuses a file that was cut off, and leaves no file', async () => {
+    const grid = makeGrid({ width: 300, height: 300 });
+    const random = createRandom(5);
+    const values = fillBand(new Uint16Array(90000), 300, () => random() * 60000);
+    const { path, outDir } = await ingest({
+      bands: [values],
+      dtype: 'uint16',
+      grid,
+      args: ['-co', 'COMPRESS=DEFLATE'],
+    });
+    const whole = readFileSync(path);
+    const cutPath = join(folder, 'cut-off.tif');
+    writeFileSync(cutPath, whole.subarray(0, whole.length * 0.6));
+    const run = ingestBands(cutPath, await inspectSource(cutPath), join(outDir, 'cut'));
+    await expect(run).rejects.toMatchObject({ name: 'SourceRefusal', code: 'unreadable' });
+    expect(readdirSync(join(outDir, 'cut'))).toEqual([]);
   });
 
   it('reports rising progress to 1, and stops when aborted', async () => {

@@ -10,6 +10,7 @@ import {
   type BandArray,
   type BandDtype,
 } from '../../server/raster/band-dtype.ts';
+import type { LonLatBounds } from '../../server/raster/scene-extent.ts';
 import type { RasterGrid } from '../../server/raster/raster-grid.ts';
 
 /** A temporary folder that is removed after the file's tests. */
@@ -91,4 +92,16 @@ export function readWithGdal(path: string, dtype: BandDtype): BandArray {
   runTool('gdal_translate', ['-q', '-of', 'ENVI', '-b', '1', path, rawPath]);
   const bytes = readFileSync(rawPath);
   return viewBandArray(dtype, bytes.buffer.slice(bytes.byteOffset, bytes.byteOffset + bytes.byteLength));
+}
+
+/** The Web Mercator tile that holds the middle of WGS84 bounds, which may lie across the antimeridian. */
+export function middleTile({ west, south, east, north }: LonLatBounds, z: number): { z: number; x: number; y: number } {
+  const n = 2 ** z;
+  const lon = (west + (east < west ? east + 360 : east)) / 2;
+  const phi = (((south + north) / 2) * Math.PI) / 180;
+  return {
+    z,
+    x: Math.floor(((lon + 180) / 360) * n) % n,
+    y: Math.floor(((1 - Math.asinh(Math.tan(phi)) / Math.PI) / 2) * n),
+  };
 }
