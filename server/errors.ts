@@ -11,7 +11,8 @@ export interface ErrorDetail {
   retryAfterSeconds?: number;
 }
 
-export type ErrorKind = 'invalid' | 'signed-out' | 'forbidden' | 'missing' | 'conflict' | 'too-large' | 'too-many';
+export type ErrorKind =
+  'invalid' | 'signed-out' | 'forbidden' | 'missing' | 'conflict' | 'too-large' | 'too-many' | 'no-room';
 
 /** An error a caller can do something about. Its code is stable; middleware/problem.ts maps its kind to an HTTP status. */
 export abstract class AppError extends Error {
@@ -72,6 +73,11 @@ export class Conflict extends AppError {
 export class TooLarge extends AppError {
   readonly code = 'too-large';
   readonly kind = 'too-large';
+}
+/** The disk has no room for what was sent. */
+export class NoRoom extends AppError {
+  readonly code = 'no-room';
+  readonly kind = 'no-room';
 }
 export class TooManyRequests extends AppError {
   readonly code = 'too-many-requests';

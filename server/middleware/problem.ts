@@ -12,6 +12,7 @@ const STATUS: Record<ErrorKind, number> = {
   conflict: 409,
   'too-large': 413,
   'too-many': 429,
+  'no-room': 507,
 };
 
 /** What body parsers and multer throw, in our own terms. */
