@@ -53,7 +53,8 @@ export function useProjectEvents(projectId: string | null): boolean {
       if (open && wasBroken.current) void queryClient.invalidateQueries({ queryKey: ['project', projectId] });
       wasBroken.current = !open;
     },
-    onFault: (error) => console.error('An event of the project could not be read', error),
+    // An event this page cannot read (it is older than the server) may be about anything: everything is asked again.
+    onFault: () => void queryClient.invalidateQueries({ queryKey: ['project', projectId] }),
   });
   return isOpen;
 }

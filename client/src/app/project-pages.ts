@@ -1,0 +1,22 @@
+import type { RouteObject } from 'react-router-dom';
+import { lazyPage } from './lazy-page.ts';
+
+/** The pages of a project, each fetched when first opened; paths are within `/projects/:projectId`. */
+export const projectPages: RouteObject[] = [
+  {
+    path: 'overview',
+    lazy: lazyPage(() => import('../pages/overview/overview-page.tsx'), 'OverviewPage'),
+  },
+  {
+    path: 'classes',
+    lazy: lazyPage(() => import('../pages/classes/classes-page.tsx'), 'ClassesPage'),
+  },
+  {
+    path: 'handover',
+    lazy: lazyPage(() => import('../pages/handover/handover-page.tsx'), 'HandoverPage'),
+  },
+  {
+    path: 'members',
+    lazy: lazyPage(() => import('../pages/members/members-page.tsx'), 'MembersPage'),
+  },
+];
