@@ -21,8 +21,8 @@ const { nodes, weights } = gaussLegendre(8);
  * Area of a polygon of longitudes and latitudes (degrees, WGS 84) on the ellipsoid, in m²; holes are taken off.
  *
  * Rings are closed and may run either way, cross the antimeridian, or go round a pole (then the cap on the side of the
- * nearer pole is meant). Relative accuracy is better than 1e-9 for both kinds of edge (1e-6 for a single pixel, where doubles of
- * degrees run out of digits).
+ * nearer pole is meant). Relative accuracy is better than 1e-9 for both kinds of edge (1e-6 for a single pixel, where
+ * doubles of degrees run out of digits).
  * Source: Snyder 1987, USGS PP 1395, eq. 3-12 (authalic q); Karney 2013, Journal of Geodesy 87:43–55, for geodesic
  * edges: area under the edge as a spherical excess and a smooth remainder, here integrated by Gauss–Legendre
  * quadrature.
@@ -39,7 +39,7 @@ export function ellipsoidalMultiPolygonAreaM2(polygons: MultiPolygon, edges: Edg
 
 /**
  * True area in m² of a pixel of a projected grid, from its four corners in longitude and latitude (degrees, in ring
- * order). A 10 m pixel of a UTM grid is not 100 m²: the difference is the square of the projection's scale factor.
+ * order). A 10 m pixel of a UTM grid is not 100 m²: the two differ by the square of the scale factor.
  */
 export function truePixelAreaM2(corners: readonly (readonly [number, number])[]): number {
   return ringAreaM2([...corners, corners[0]], 'geodesic');

@@ -1,0 +1,143 @@
+import { describe, expect, it } from 'vitest';
+import {
+  addToConfusionMatrix,
+  confusionMatrixFromRows,
+  createConfusionMatrix,
+} from '../../server/analysis/accuracy/confusion-matrix.ts';
+import { computeDisagreement, toPopulationMatrix } from '../../server/analysis/accuracy/disagreement.ts';
+import { allocateProportionally, planSampleSize } from '../../server/analysis/accuracy/plan-sample-size.ts';
+import { estimateStratified, type StratumSample } from '../../server/analysis/accuracy/stratified-estimate.ts';
+import { checkValues } from '../fixtures/check-values.ts';
+
+/** Strata equal to the map classes: stratum h holds row h of the matrix. */
+function strataOfMapClasses(rows: number[][], sizes: number[]): StratumSample[] {
+  return rows.map((row, h) => ({
+    size: sizes[h],
+    counts: confusionMatrixFromRows(rows.map((_, i) => (i === h ? row : row.map(() => 0)))),
+  }));
+}
+
+describe('Olofsson et al. 2014, Remote Sensing of Environment 148:42–57, Tables 8 and 9', () => {
+  const { counts, mappedPixels, totalHa, expected, printed } = checkValues.olofsson2014;
+  const result = estimateStratified(strataOfMapClasses(counts, mappedPixels))!;
+
+  it('has the estimated proportions, accuracies, area shares and standard errors', () => {
+    expected.p.flat().forEach((p, i) => expect(result.proportions.counts[i]).toBeCloseTo(p, 12));
+    expect(result.overall.value).toBeCloseTo(expected.overall, 12);
+    expect(result.overall.standardError).toBeCloseTo(expected.seOverall, 12);
+    result.perClass.forEach(({ users, producers, areaShare }, k) => {
+      expect(users!.value).toBeCloseTo(expected.user[k], 12);
+      expect(users!.standardError).toBeCloseTo(expected.seUser[k], 12);
+      expect(producers!.value).toBeCloseTo(expected.producer[k], 12);
+      expect(producers!.standardError).toBeCloseTo(expected.seProducer[k], 12);
+      expect(areaShare.value).toBeCloseTo(expected.areaProp[k], 12);
+      expect(areaShare.standardError).toBeCloseTo(expected.seAreaProp[k], 12);
+    });
+  });
+
+  it('has the printed areas and half-widths in hectares (the paper uses 1.96)', () => {
+    result.perClass.forEach(({ areaShare }, k) => {
+      expect(Math.abs(areaShare.value * totalHa - printed.areaHa[k])).toBeLessThan(1);
+      expect(Math.abs(1.96 * areaShare.standardError! * totalHa - printed.areaHalfWidthHa[k])).toBeLessThan(1.5);
+    });
+  });
+
+  it("has the printed half-widths of producer's accuracy but for the two that are misprints", () => {
+    result.perClass.forEach(({ producers }, k) => {
+      const gap = Math.abs(1.96 * producers!.standardError! - printed.producerHW[k]);
+      if (printed.producerHW_misprinted[k]) expect(gap).toBeGreaterThan(0.005);
+      else expect(gap).toBeLessThan(0.005);
+    });
+  });
+
+  it('is not what the counts say without their weights (587/640)', () => {
+    expect(Math.abs(result.overall.value - 587 / 640)).toBeGreaterThan(0.02);
+  });
+
+  it('has the same proportions as the matrix that quantity and allocation disagreement are taken from', () => {
+    const population = toPopulationMatrix(confusionMatrixFromRows(counts), mappedPixels)!;
+    population.counts.forEach((p, i) => expect(result.proportions.counts[i]).toBeCloseTo(p, 14));
+    expect(computeDisagreement(population)!.agreement).toBeCloseTo(result.overall.value, 12);
+  });
+});
+
+describe('Stehman 2014, International Journal of Remote Sensing 35:4923–4939: strata that are not the map classes', () => {
+  const { stratum, map, reference, Nh, expected } = checkValues.stehman2014;
+  const names = Object.keys(Nh);
+  const strata = names.map((name): StratumSample => {
+    const counts = createConfusionMatrix(4);
+    [...stratum].forEach((s, i) => {
+      if (s === name) addToConfusionMatrix(counts, names.indexOf(map[i]), names.indexOf(reference[i]));
+    });
+    return { size: Nh[name], counts };
+  });
+  const result = estimateStratified(strata, true)!;
+
+  it('has the area shares, accuracies and matrix, with finite population correction', () => {
+    expect(result.overall.value).toBeCloseTo(expected.overall, 12);
+    expect(result.overall.standardError).toBeCloseTo(expected.seOverall, 9);
+    expected.matrix.flat().forEach((p, i) => expect(result.proportions.counts[i]).toBeCloseTo(p, 12));
+    names.forEach((name, k) => {
+      expect(result.perClass[k].areaShare.value).toBeCloseTo(expected.areaProp[name], 12);
+      expect(result.perClass[k].areaShare.standardError).toBeCloseTo(expected.seAreaProp[name], 9);
+    });
+  });
+
+  it.each([
+    ['A', 0.741935, 0.164542, 0.657143, 0.14771],
+    ['B', 0.574468, 0.124782, 0.794118, 0.116548],
+    ['C', 0.5, 0.215112, 0.3, 0.150411],
+    ['D', 0.7, 0.152676, 0.636364, 0.16228],
+  ])("has user's and producer's accuracy of class %s", (name, users, seUsers, producers, seProducers) => {
+    const one = result.perClass[names.indexOf(name)];
+    expect(one.users!.value).toBeCloseTo(users, 6);
+    expect(one.users!.standardError).toBeCloseTo(seUsers, 6);
+    expect(one.producers!.value).toBeCloseTo(producers, 6);
+    expect(one.producers!.standardError).toBeCloseTo(seProducers, 6);
+  });
+});
+
+describe('what cannot be estimated', () => {
+  const rows = [[9, 1], [0, 0]]; // prettier-ignore
+
+  it('is null: a stratum without units, a class never mapped, a variance from one unit', () => {
+    expect(estimateStratified(strataOfMapClasses(rows, [100, 50]))).toBeNull();
+    const result = estimateStratified(strataOfMapClasses(rows, [100, 0]))!;
+    expect(result.perClass[1].users).toBeNull();
+    expect(result.perClass[1].producers).toEqual({ value: 0, standardError: 0 });
+    const single = estimateStratified(strataOfMapClasses([[9, 1], [0, 1]], [100, 50]))!; // prettier-ignore
+    expect(single.overall.standardError).toBeNull();
+    expect(single.perClass[0].producers!.standardError).toBeNull();
+    expect(single.perClass[0].users!.standardError).toBeCloseTo(0.1, 12);
+  });
+
+  it('refuses more units than a stratum holds and strata without size', () => {
+    expect(() => estimateStratified(strataOfMapClasses(rows, [5, 0]))).toThrow(/size 5 has 10 units/);
+    expect(() => estimateStratified([])).toThrow(RangeError);
+  });
+});
+
+describe('sample size and allocation (Olofsson et al. 2014, section 5.1, eq. 13)', () => {
+  const { W, U, seTarget, n, proportional } = checkValues.sampleSize;
+  const strata = W.map((areaShare, i) => ({ areaShare, expectedUsers: U[i] }));
+
+  it('needs 641 units for a standard error of .01, and fewer for larger ones', () => {
+    expect(planSampleSize(strata, seTarget)).toBe(n);
+    expect([0.005, 0.015, 0.02].map((se) => planSampleSize(strata, se))).toEqual([2563, 285, 161]);
+  });
+
+  it('shares them out in proportion as printed, and keeps a least number in each class', () => {
+    expect(allocateProportionally(W, n)).toEqual(proportional);
+    const kept = allocateProportionally(W, n, 75);
+    expect(kept.slice(0, 2)).toEqual([75, 75]);
+    // The rest, 491, in proportion .320 to .645 by hand: 162.8 and 328.2.
+    expect(kept.slice(2)).toEqual([163, 328]);
+    expect(allocateProportionally([0.5, 0.5], 7)).toEqual([4, 3]);
+    expect(allocateProportionally([0, 1], 10, 5)).toEqual([5, 5]);
+    expect(() => allocateProportionally(W, 100, 75)).toThrow(/100 units/);
+  });
+
+  it('refuses shares that do not sum to 1', () => {
+    expect(() => planSampleSize(strata.slice(1), 0.01)).toThrow(/sum to 1/);
+  });
+});
