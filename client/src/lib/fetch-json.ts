@@ -72,7 +72,7 @@ async function request(path: string, options: FetchJsonOptions): Promise<Respons
       signal: options.signal ?? null,
     });
   } catch (error) {
-    if (error instanceof DOMException && error.name === 'AbortError') throw error;
+    if (options.signal?.aborted) throw error;
     throw new ProblemError({
       status: 0,
       code: 'no-answer',

@@ -38,7 +38,6 @@ export function svgText(chart: SVGSVGElement): string {
   background.setAttribute('height', '100%');
   background.setAttribute('fill', getComputedStyle(document.documentElement).backgroundColor || '#ffffff');
   copy.insertBefore(background, copy.firstChild);
-  copy.setAttribute('xmlns', 'http://www.w3.org/2000/svg');
   copy.setAttribute('width', String(width));
   copy.setAttribute('height', String(height));
   return `<?xml version="1.0" encoding="UTF-8"?>\n${new XMLSerializer().serializeToString(copy)}\n`;

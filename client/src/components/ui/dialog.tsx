@@ -2,7 +2,7 @@ import { X } from 'lucide-react';
 import { Dialog as Base } from 'radix-ui';
 import type { ReactNode } from 'react';
 import { classNames } from '../../lib/class-names.ts';
-import { IconButton } from './icon-button.tsx';
+import { Button } from './button.tsx';
 
 export interface DialogProps {
   isOpen: boolean;
@@ -31,21 +31,24 @@ export function Dialog({ isOpen, onOpenChange, title, description, footer, size 
             WIDTH[size],
           )}
         >
-          <header className="flex items-start gap-4 px-5 pt-4 pb-3">
+          <header className="flex items-start gap-4 px-5 pt-4 pr-14 pb-3">
             <div className="min-w-0 grow">
               <Base.Title className="text-xl font-semibold tracking-tight">{title}</Base.Title>
               {description && (
                 <Base.Description className="mt-1 text-base text-ink-soft">{description}</Base.Description>
               )}
             </div>
-            <Base.Close asChild>
-              <IconButton label="Close" size="sm" icon={<X />} />
-            </Base.Close>
           </header>
           {children && <div className="min-h-0 grow overflow-y-auto px-5 pt-1 pb-4">{children}</div>}
           {footer && (
             <footer className="flex flex-wrap justify-end gap-2 border-t border-line px-5 py-3.5">{footer}</footer>
           )}
+          {/* Last in the order, so that the first field and not the cross has the focus when the dialog opens. */}
+          <Base.Close asChild>
+            <Button kind="ghost" size="sm" aria-label="Close" className="absolute top-3.5 right-3.5 w-7 px-0!">
+              <X aria-hidden />
+            </Button>
+          </Base.Close>
         </Base.Content>
       </Base.Portal>
     </Base.Root>
