@@ -19,6 +19,7 @@ export default tseslint.config(
     },
   },
   { files: ['**/*.mjs', 'server/**/*.ts', 'tests/**/*.ts'], languageOptions: { globals: globals.node } },
+  { files: ['client/public/**/*.js'], languageOptions: { globals: globals.browser } },
   {
     files: ['client/**/*.{ts,tsx}'],
     ...jsxA11y.flatConfigs.recommended,
