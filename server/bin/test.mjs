@@ -9,7 +9,10 @@ import { checkNodeVersion, ensureNodeModules } from './setup/node-modules.mjs';
 import { findTool } from './setup/paths.mjs';
 import { runCommand } from './setup/run-command.mjs';
 import { describeFailure, say } from './setup/setup-error.mjs';
+import { waitForStop } from './setup/supervise.mjs';
 import { addCounts, countChecks, countVitestReport, describeCounts } from './setup/test-counts.mjs';
+
+const stopAsked = new AbortController();
 
 /** `npm test`: type check, lint, build, and every test against a MariaDB of their own. Arguments go to vitest. */
 async function test() {
@@ -17,6 +20,11 @@ async function test() {
   await ensureDebianPackages([...serverPackages, ...testPackages]);
   await ensureNodeModules();
 
+  // From here on a Ctrl+C ends the program that runs, and what was started is still taken down again.
+  void waitForStop().then((reason) => {
+    say(`Stopping: ${reason}`);
+    stopAsked.abort();
+  });
   const vitestArgs = process.argv.slice(2);
   const checks = await runChecks(vitestArgs.length === 0);
   const dir = mkdtempSync(join(tmpdir(), 'groundsel-test-'));
@@ -46,7 +54,7 @@ async function runChecks(withLint) {
   }
   if (withLint) {
     say('Linting');
-    exitCodes['lint'] = await runCommand(process.execPath, [findTool('eslint'), '.']);
+    exitCodes['lint'] = await runCommand(process.execPath, [findTool('eslint'), '.'], { signal: stopAsked.signal });
   }
   for (const [name, code] of Object.entries(exitCodes))
     if (code !== 0) say(`Check failed: ${name} (exit code ${code})`);
@@ -64,6 +72,7 @@ async function runVitest(dir, args) {
     const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${report}`];
     const exitCode = await runCommand(process.execPath, [findTool('vitest'), 'run', ...reporters, ...args], {
       env: describeTestEnvironment(database),
+      signal: stopAsked.signal,
     });
     if (exitCode !== 0) say(`Check failed: tests (vitest's exit code ${exitCode})`);
     return countVitestReport(report, exitCode);
