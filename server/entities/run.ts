@@ -9,7 +9,9 @@ import {
   Unique,
   type Relation,
 } from 'typeorm';
+import type { ArealGeometry } from '../../shared/contracts/geometry.ts';
 import type { Recipe } from '../../shared/contracts/run.ts';
+import { geometryTransformer } from './geometry-column.ts';
 import { Job } from './job.ts';
 import { Project } from './project.ts';
 import { Scene } from './scene.ts';
@@ -58,7 +60,11 @@ export class Run {
   @Column({ type: 'json' }) recipe!: Recipe;
   /** The class scheme as it stood at the start, in recipe order. */
   @Column({ type: 'json' }) classes!: RunClass[];
-  /** SHA-256 over sample ids, versions, geometry and the scene's band digests. */
+  /** The study area as it stood at the start; null is the whole scene. */
+  @Column({ type: 'geometry', nullable: true, transformer: geometryTransformer }) studyArea!: ArealGeometry | null;
+  /** What the check of the recipe warned of. */
+  @Column({ type: 'json' }) warnings!: string[];
+  /** SHA-256 over samples, classes, study area and the scene's band digests. */
   @Column({ type: 'char', length: 64 }) inputSha256!: string;
   @Column({ type: 'uuid' }) jobId!: string;
   @OneToOne(() => Job, { onDelete: 'RESTRICT' })

@@ -1,78 +1,13 @@
-import { randomUUID } from 'node:crypto';
-import { mkdtemp, rm } from 'node:fs/promises';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
 import type { App } from '../../server/app-context.ts';
-import { Job } from '../../server/entities/job.ts';
 import type { LandClass } from '../../server/entities/land-class.ts';
 import type { Project } from '../../server/entities/project.ts';
-import { Sample } from '../../server/entities/sample.ts';
-import { Scene } from '../../server/entities/scene.ts';
-import { getCrsTransform } from '../../server/raster/crs-transform.ts';
-import { ingestScene } from '../../server/services/ingest-scene.ts';
-import type { Polygon } from '../../shared/contracts/geometry.ts';
+import type { Sample } from '../../server/entities/sample.ts';
+import type { Scene } from '../../server/entities/scene.ts';
 import type { Recipe } from '../../shared/contracts/run.ts';
 import { makeClass } from './make-class.ts';
-import { makeRaster, type RasterSpec } from './make-raster.ts';
-
-/** A scene that has been through the ingest, without the queue. */
-export async function ingestRaster(app: App, project: Project, overrides: Partial<RasterSpec> = {}): Promise<Scene> {
-  const dir = await mkdtemp(join(tmpdir(), 'groundsel-ground-'));
-  try {
-    const path = join(dir, 'scene.tif');
-    await makeRaster(path, overrides);
-    const scenes = app.db.getRepository(Scene);
-    const key = `incoming/${randomUUID()}/scene.tif`;
-    await app.files.adopt(key, path);
-    const files = [{ name: 'scene.tif', bytes: 1, sha256: '0'.repeat(64), key }];
-    const { id } = await scenes.save(scenes.create({ projectId: project.id, name: 'Late summer', files, failure: null }));
-    const job = app.db.getRepository(Job).create({ kind: 'ingest', projectId: project.id, sceneId: id });
-    await ingestScene(app, { job, signal: new AbortController().signal, report: () => undefined });
-    return await scenes.findOneOrFail({ where: { id }, relations: { bands: true }, order: { bands: { number: 'ASC' } } });
-  } finally {
-    await rm(dir, { recursive: true, force: true });
-  }
-}
-
-/** A rectangle of whole scene pixels: columns x0 to x1 − 1, rows y0 to y1 − 1, as longitudes and latitudes. */
-export function pixelBox(scene: Scene, x0: number, y0: number, x1: number, y1: number): Polygon {
-  const transform = getCrsTransform(scene.crsProj4!);
-  const corner = (column: number, row: number) =>
-    transform.toLonLat(scene.originX! + column * scene.pixelWidth!, scene.originY! - row * scene.pixelHeight!);
-  const ring = [corner(x0, y0), corner(x0, y1), corner(x1, y1), corner(x1, y0), corner(x0, y0)];
-  return { type: 'Polygon', coordinates: [ring] };
-}
-
-let drawn = 0;
-
-export async function drawSample(
-  app: App,
-  scene: Scene,
-  landClass: LandClass,
-  geometry: Polygon,
-  overrides: Partial<Sample> = {},
-): Promise<Sample> {
-  drawn++;
-  const samples = app.db.getRepository(Sample);
-  return samples.save(
-    samples.create({
-      id: randomUUID(),
-      projectId: scene.projectId,
-      number: drawn,
-      sceneId: scene.id,
-      classId: landClass.id,
-      geometry,
-      confidence: 'high',
-      note: '',
-      pixelCount: 1,
-      areaHa: 1,
-      createdById: null,
-      updatedAt: new Date(),
-      deletedAt: null,
-      ...overrides,
-    }),
-  );
-}
+import type { RasterSpec } from './make-raster.ts';
+import { makeSample } from './make-sample.ts';
+import { makeScene } from './make-scene.ts';
 
 /** Random-looking, the same everywhere: 0 to `range` − 1. */
 function speckle(column: number, row: number, band: number, range: number): number {
@@ -94,7 +29,17 @@ export interface RunGround {
   scene: Scene;
   classes: LandClass[];
   samples: Sample[];
+  /** Upper left pixel of each sample's 6 × 6 pixels. */
+  places: Map<string, { column: number; row: number }>;
   recipe: Recipe;
+}
+
+let grounds = 0;
+
+/** Ids decide which samples are held out, so they are the same in each run of a test file. */
+function fixedId(kind: 'class' | 'sample', ground: number, index: number): string {
+  const digits = String(ground * 10_000 + index).padStart(12, '0');
+  return `${kind === 'class' ? 'c1a55000' : '5a3b1e00'}-0000-4000-8000-${digits}`;
 }
 
 /**
@@ -106,30 +51,38 @@ export async function makeRunGround(
   project: Project,
   { width = 96, height = 96, polygonsPerClass = 8, trees = 15 } = {},
 ): Promise<RunGround> {
-  const scene = await ingestRaster(app, project, {
-    width,
-    height,
-    bandNames: ['Blue', 'Green', 'Red', 'Near infrared'],
-    value: overlappingCovers(width),
-  });
+  grounds++;
+  const ground = grounds;
+  const bandNames = ['Blue', 'Green', 'Red', 'Near infrared'];
+  const scene = await makeScene(app, project, {}, { width, height, bandNames, value: overlappingCovers(width) });
   const classes = [
-    await makeClass(app, project, { name: 'Open water', code: 3, colour: '#2266aa' }),
-    await makeClass(app, project, { name: 'Heath & moor', code: 7, colour: '#aa66cc' }),
-    await makeClass(app, project, { name: '=Arable', code: 21, colour: '#ccbb44' }),
+    await makeClass(app, project, { id: fixedId('class', ground, 0), name: 'Open water', code: 3, colour: '#2266aa' }),
+    await makeClass(app, project, {
+      id: fixedId('class', ground, 1),
+      name: 'Heath & moor',
+      code: 7,
+      colour: '#aa66cc',
+    }),
+    await makeClass(app, project, { id: fixedId('class', ground, 2), name: '=Arable', code: 21, colour: '#ccbb44' }),
   ];
   const third = width / 3;
   const samples: Sample[] = [];
+  const places: RunGround['places'] = new Map();
   for (const [cover, landClass] of classes.entries()) {
     for (let i = 0; i < polygonsPerClass; i++) {
-      const x = Math.floor(cover * third + 3 + (i % 2) * (third / 2));
-      const y = Math.floor(2 + i * ((height - 9) / polygonsPerClass));
-      samples.push(await drawSample(app, scene, landClass, pixelBox(scene, x, y, x + 6, y + 6)));
+      const column = Math.floor(cover * third + 3 + (i % 2) * (third / 2));
+      const row = Math.floor(2 + i * ((height - 9) / polygonsPerClass));
+      const id = fixedId('sample', ground, samples.length);
+      const sample = await makeSample(app, scene, landClass, { column, row, width: 6, height: 6 }, { id });
+      samples.push(sample);
+      places.set(sample.id, { column, row });
     }
   }
   return {
     scene,
     classes,
     samples,
+    places,
     recipe: {
       sceneId: scene.id,
       bandIds: scene.bands.map(({ id }) => id),

@@ -1,0 +1,70 @@
+import { readFile } from 'node:fs/promises';
+import { deflateRawSync } from 'node:zlib';
+import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
+import type { TrainedModel } from '../analysis/classifiers/classifier.ts';
+import { loadModel } from '../analysis/classifiers/registry.ts';
+import type { BandFile } from '../raster/band-file.ts';
+import { BandStore } from '../raster/band-store.ts';
+import { classifyStrip } from '../raster/classify-strip.ts';
+import { prepareClassifier } from './compute/classifier-of-recipe.ts';
+import { finishMap } from './compute/finish-map.ts';
+import { readTraining } from './compute/read-training.ts';
+import { maskStrip } from './compute/study-area-mask.ts';
+import type { ComputeResult, ComputeTask, ComputeTasks } from './compute/tasks.ts';
+
+const store = new BandStore({ cacheMb: 32, decode: 'blocking' });
+/** The last model used: a thread maps many strips with the same one. */
+let loaded: { path: string; model: TrainedModel } | null = null;
+
+function openBands(paths: readonly string[]): Promise<BandFile[]> {
+  return Promise.all(paths.map((path) => store.open(path)));
+}
+
+/** A file as bytes of its own: a Buffer's slices would be views of Node's shared pool. */
+async function readBytes(path: string): Promise<Uint8Array> {
+  return new Uint8Array(await readFile(path));
+}
+
+async function openModel(path: string): Promise<TrainedModel> {
+  if (loaded?.path !== path) loaded = { path, model: loadModel(await readBytes(path)) };
+  return loaded.model;
+}
+
+async function assembleModel(input: ComputeTasks['assemble-model']['input']): Promise<Uint8Array> {
+  const parts: Uint8Array[] = [];
+  for (const path of input.partPaths) parts.push(await readBytes(path));
+  return prepareClassifier(input.classifier, input.shape.nFeatures).assemble(input.shape, parts).serialise();
+}
+
+async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint8Array> {
+  const { scene, y, height, codes } = input;
+  const model = await openModel(input.modelPath);
+  const strip = await classifyStrip({
+    grid: scene.grid,
+    bands: await openBands(scene.bandPaths),
+    y,
+    height,
+    codes,
+    nodataCode: NODATA_CODE,
+    inside: maskStrip(scene.studyArea, scene.grid.width, y, height),
+    classify: (features, n, classIndex) => model.predictBlock(features, n, classIndex),
+  });
+  // Copied out of Node's shared buffer pool.
+  return new Uint8Array(deflateRawSync(strip, { level: 1 }));
+}
+
+/** Worker entry: the heavy steps of a run. */
+export default async function compute(task: ComputeTask): Promise<ComputeResult> {
+  switch (task.kind) {
+    case 'read-training':
+      return readTraining(task, await openBands(task.scene.bandPaths));
+    case 'train-part':
+      return prepareClassifier(task.classifier, task.set.nFeatures).trainPart(task.set, task.seed, task.part);
+    case 'assemble-model':
+      return assembleModel(task);
+    case 'map-strip':
+      return mapStrip(task);
+    case 'finish-map':
+      return finishMap(task);
+  }
+}

@@ -1,0 +1,94 @@
+import type { ClassifierRecipe } from '../../../shared/contracts/run.ts';
+import type { TrainingSet } from '../../analysis/classifiers/classifier.ts';
+import type { MultiPolygon, Polygon } from '../../analysis/sampling/polygon.ts';
+import type { RasterGrid } from '../../raster/raster-grid.ts';
+
+/** The pixels a run reads: band files in the recipe's order, on the scene's grid. */
+export interface SceneInput {
+  grid: RasterGrid;
+  bandPaths: readonly string[];
+  /** Pixel coordinates; pixels whose centre is outside are neither learned from nor mapped. Null is the whole scene. */
+  studyArea: MultiPolygon | null;
+}
+
+export interface RunPolygon {
+  id: string;
+  classIndex: number;
+  /** Pixel coordinates of the scene. */
+  polygon: Polygon;
+}
+
+export interface TrainingData {
+  /** In shared memory, so that every thread reads the same copy. */
+  set: TrainingSet;
+  perClass: { available: number; drawn: number }[];
+  /** Training pixels left out because a held-out polygon holds them too. */
+  nHeldOutToo: number;
+  /** Training pixels left out because polygons of different classes hold them. */
+  nConflicting: number;
+  /** Training pixels left out because a band has no data there or they lie outside the study area. */
+  nWithoutData: number;
+}
+
+export interface FinishedMap {
+  /** Over the raw class codes, row-major, one byte a pixel. */
+  sha256: string;
+  pixelsByCode: Record<string, number>;
+  areaM2ByCode: Record<string, number>;
+  /** In the order of the held-out polygons: their pixels by code. */
+  heldOutCodes: Record<string, number>[];
+  nRepeated: number;
+  nConflicting: number;
+}
+
+/** One count in shared memory, written by the thread and looked at from outside. */
+export type SharedProgress = Int32Array;
+
+/** What the compute threads do: what each kind of task is given and gives back. */
+export interface ComputeTasks {
+  'read-training': {
+    input: {
+      scene: SceneInput;
+      training: readonly RunPolygon[];
+      heldOut: readonly RunPolygon[];
+      nClasses: number;
+      maxPixelsPerClass: number;
+      seed: number;
+      progress: SharedProgress;
+    };
+    result: TrainingData;
+  };
+  'train-part': {
+    input: { set: TrainingSet; classifier: ClassifierRecipe; seed: number; part: number };
+    result: Uint8Array;
+  };
+  'assemble-model': {
+    input: {
+      shape: { nFeatures: number; nClasses: number };
+      classifier: ClassifierRecipe;
+      partPaths: readonly string[];
+    };
+    result: Uint8Array;
+  };
+  /** The result is the strip's class codes, deflated without a header. */
+  'map-strip': {
+    input: { scene: SceneInput; modelPath: string; y: number; height: number; codes: readonly number[] };
+    result: Uint8Array;
+  };
+  /** Joins the strips into one raw file at `rawPath` and counts what is on the map. */
+  'finish-map': {
+    input: {
+      grid: RasterGrid;
+      stripPaths: readonly string[];
+      rawPath: string;
+      rowAreaM2: Float64Array;
+      heldOut: readonly RunPolygon[];
+      progress: SharedProgress;
+    };
+    result: FinishedMap;
+  };
+}
+
+export type ComputeKind = keyof ComputeTasks;
+export type ComputeTask = { [K in ComputeKind]: { kind: K } & ComputeTasks[K]['input'] }[ComputeKind];
+export type ComputeResult = ComputeTasks[ComputeKind]['result'];

@@ -1,0 +1,64 @@
+import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
+import type { Run as RunContract } from '../../shared/contracts/run.ts';
+import type { z } from 'zod';
+import type { classAreaSchema } from '../../shared/contracts/run.ts';
+import type { Run } from '../entities/run.ts';
+import { presentJob } from '../jobs/job-event.ts';
+import { can } from '../policies/policy-table.ts';
+import type { Viewer } from '../policies/viewer.ts';
+
+type ClassArea = z.infer<typeof classAreaSchema>;
+
+const NODATA_COLOUR = '#000000';
+
+/** Area of each class of a finished run, in the recipe's order, then what the map leaves out. */
+export function listClassAreas(run: Run): ClassArea[] | null {
+  const { result } = run;
+  if (!result) return null;
+  const amounts = (code: number) => ({
+    pixels: result.pixelsByCode[code] ?? 0,
+    areaHa: result.areaHaByCode[code] ?? 0,
+  });
+  const areas: ClassArea[] = run.classes.map(({ id, code, name, colour }) => ({
+    ...{ classId: id, code, name, colour },
+    ...amounts(code),
+  }));
+  const left = amounts(NODATA_CODE);
+  if (left.pixels > 0) {
+    areas.push({
+      ...{ classId: null, code: NODATA_CODE, name: 'No data or outside the study area', colour: NODATA_COLOUR },
+      ...left,
+    });
+  }
+  return areas;
+}
+
+/** Accuracy is shown only to those who may read it. */
+export function presentRun(run: Run, viewer: Viewer): RunContract {
+  const { result, job } = run;
+  const isUnderWay = job.state === 'queued' || job.state === 'running';
+  const mayStop = can('run.stop', viewer.roles, run.startedById === viewer.userId);
+  return {
+    id: run.id,
+    projectId: run.projectId,
+    number: run.number,
+    name: run.name,
+    note: run.note,
+    recipe: run.recipe,
+    classes: run.classes,
+    sceneName: run.scene.name,
+    job: presentJob(job),
+    startedBy: run.startedBy ? { id: run.startedBy.id, name: run.startedBy.name } : null,
+    createdAt: run.createdAt.toISOString(),
+    trainingPixels: result?.trainingPixels ?? null,
+    trainingPolygons: result?.trainingPolygons ?? null,
+    heldOutPolygons: result?.heldOutPolygons ?? null,
+    classMapSha256: result?.classMapSha256 ?? null,
+    inputSha256: run.inputSha256,
+    areas: listClassAreas(run),
+    overallAccuracy: can('accuracy.read', viewer.roles) ? (result?.overallAccuracy ?? null) : null,
+    bounds: run.scene.bounds,
+    notes: [...run.warnings, ...(result?.notes ?? [])],
+    abilities: { cancel: mayStop && isUnderWay, delete: mayStop && !isUnderWay },
+  };
+}

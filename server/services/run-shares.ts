@@ -1,0 +1,51 @@
+import type { ClassifierRecipe } from '../../shared/contracts/run.ts';
+
+/** Where each stage of a run begins, as a share 0..1 of the whole. */
+export interface RunShares {
+  training: number;
+  mapping: number;
+  finishing: number;
+}
+
+/** Reading the training pixels, before it is known how many there are. */
+export const READING_SHARE = 0.03;
+const FINISHING_SHARE = 0.05;
+
+/** Seconds of one thread for each step of work, from tests/bench/run-shares.ts; only their ratio matters. */
+const SECONDS = {
+  treeRowLevel: 1.6e-7,
+  pixelTreeLevel: 3.5e-9,
+  subspaceTree: 0.35,
+  neighbourPixel: 6e-5,
+};
+
+/** Shares out the time between training and mapping by what each is expected to take. */
+export function planShares(classifier: ClassifierRecipe, nRows: number, nFeatures: number, nPixels: number): RunShares {
+  const { training, mapping } = estimateSeconds(classifier, Math.max(2, nRows), nFeatures, nPixels);
+  const split = training / (training + mapping);
+  const between = 1 - READING_SHARE - FINISHING_SHARE;
+  return {
+    training: READING_SHARE,
+    mapping: READING_SHARE + between * Math.min(0.98, Math.max(0.02, split)),
+    finishing: 1 - FINISHING_SHARE,
+  };
+}
+
+function estimateSeconds(
+  classifier: ClassifierRecipe,
+  nRows: number,
+  nFeatures: number,
+  nPixels: number,
+): { training: number; mapping: number } {
+  if (classifier.kind === 'nearest-neighbours') {
+    return { training: 1e-3, mapping: nPixels * SECONDS.neighbourPixel };
+  }
+  const levels = Math.min(classifier.maxDepth, Math.log2(nRows));
+  const tried = classifier.featuresPerTree ?? Math.sqrt(nFeatures);
+  return {
+    training:
+      classifier.trees *
+      (classifier.kind === 'random-forest' ? nRows * levels * tried * SECONDS.treeRowLevel : SECONDS.subspaceTree),
+    mapping: nPixels * classifier.trees * levels * SECONDS.pixelTreeLevel,
+  };
+}
