@@ -7,6 +7,7 @@ export const paths = {
   projects: () => '/projects',
   account: () => '/account',
   siteAccounts: () => '/site/accounts',
+  project: (projectId: string) => `/projects/${projectId}`,
   overview: (projectId: string) => `/projects/${projectId}/overview`,
   scenes: (projectId: string) => `/projects/${projectId}/scenes`,
   scene: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}`,

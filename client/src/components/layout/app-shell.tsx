@@ -33,7 +33,7 @@ export function AppShell({ project = null, account, railExtra, children }: AppSh
         Skip to the page
       </a>
       <div className="grid h-dvh grid-cols-[184px_minmax(0,1fr)] max-lg:grid-cols-[60px_minmax(0,1fr)] max-sm:h-auto max-sm:min-h-dvh max-sm:grid-cols-1 max-sm:grid-rows-[auto_1fr]">
-        <div
+        <header
           data-print="hide"
           className="flex min-h-0 flex-col overflow-y-auto border-r border-line bg-paper pt-4 pb-2.5 max-sm:sticky max-sm:top-0 max-sm:z-[1050] max-sm:flex-row max-sm:flex-wrap max-sm:items-center max-sm:border-r-0 max-sm:border-b max-sm:pt-1.5 max-sm:pb-1"
         >
@@ -65,7 +65,7 @@ export function AppShell({ project = null, account, railExtra, children }: AppSh
           <div className="mt-auto border-t border-line px-2 pt-2 max-lg:flex max-lg:justify-center max-lg:px-0 max-sm:mt-0 max-sm:ml-auto max-sm:border-0 max-sm:p-0 max-sm:pr-2">
             <AccountMenu {...account} />
           </div>
-        </div>
+        </header>
         <main id="page" tabIndex={-1} className="flex min-h-0 min-w-0 flex-col">
           {children}
         </main>

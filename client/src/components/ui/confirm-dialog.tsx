@@ -17,6 +17,8 @@ export interface ConfirmDialogProps {
   keeps?: ReactNode;
   /** What the button does: "Delete class". */
   confirmLabel: string;
+  /** The way out; says what stays as it is. */
+  cancelLabel?: string;
   isPending?: boolean;
   error?: ProblemError | null;
   /** A word to type before the button works, for what cannot be undone by anyone. */
@@ -46,6 +48,7 @@ function ConfirmBody({
   loses = [],
   keeps,
   confirmLabel,
+  cancelLabel = 'Keep it',
   isPending = false,
   error,
   typeToConfirm,
@@ -82,7 +85,7 @@ function ConfirmBody({
       {error && <ErrorState className="mt-4" error={error} isInline />}
       <div className="mt-5 flex justify-end gap-2">
         <Base.Cancel asChild>
-          <Button>Keep it</Button>
+          <Button>{cancelLabel}</Button>
         </Base.Cancel>
         <Button kind={isDanger ? 'danger' : 'strong'} isPending={isPending} disabled={isLocked} onClick={onConfirm}>
           {confirmLabel}

@@ -45,6 +45,7 @@ export function DeviceList({ onSignedOut }: { onSignedOut: () => void }) {
         title="Sign out everywhere?"
         keeps="Every browser signed in to your account is signed out, this one too. Nothing you saved is lost; work under way on the server goes on."
         confirmLabel="Sign out everywhere"
+        cancelLabel="Stay signed in"
         isPending={signOut.isPending}
         error={signOut.error ? asProblem(signOut.error) : null}
         onConfirm={() => signOut.mutate(undefined, { onSuccess: onSignedOut })}

@@ -29,6 +29,7 @@ export function RemoveMemberDialog({ projectId, member, isSelf, onClose, onRemov
       title={isSelf ? 'Leave this project?' : `Remove ${name}?`}
       loses={[isSelf ? 'You no longer see or open this project' : `${name} no longer sees or opens this project`]}
       keeps={isSelf ? stays.replace('Their', 'Your').replace('They have', 'You have') : stays}
+      cancelLabel={isSelf ? 'Stay' : 'Keep in project'}
       confirmLabel={isSelf ? 'Leave project' : 'Remove from project'}
       isPending={remove.isPending}
       error={remove.error ? asProblem(remove.error) : null}

@@ -10,6 +10,7 @@ const FIRST_LINES = 8;
 /** Who did what, latest first. */
 export function ActivityList({ projectId, activity }: { projectId: string; activity: Overview['activity'] }) {
   const [isWhole, setIsWhole] = useState(false);
+  if (activity.length === 0) return <p className="text-sm text-ink-soft">Nothing has happened yet.</p>;
   const shown = isWhole ? activity : activity.slice(0, FIRST_LINES);
   return (
     <>

@@ -25,12 +25,7 @@ export function DeleteProjectDialog({ project, figures, isOpen, onOpenChange, on
         onOpenChange(next);
       }}
       title={`Delete ${project.name}?`}
-      loses={[
-        `${formatCount(figures.sceneCount, 'scene')} with their files`,
-        `${formatCount(figures.samplesPerClass.length, 'class', 'classes')} and ${formatCount(figures.sampleCount, 'sample')} with their history`,
-        `${formatCount(runCount, 'run')} with their class maps and accuracy`,
-        'The project’s activity, and everyone’s place in it',
-      ]}
+      loses={listLosses(figures, runCount)}
       keeps="People keep their accounts. Nobody can bring the project back."
       confirmLabel="Delete project"
       typeToConfirm={project.name}
@@ -46,4 +41,17 @@ export function DeleteProjectDialog({ project, figures, isOpen, onOpenChange, on
       }
     />
   );
+}
+
+function listLosses(figures: Overview['figures'], runCount: number): string[] {
+  const losses: string[] = [];
+  if (figures.sceneCount > 0) losses.push(`${formatCount(figures.sceneCount, 'scene')}, files included`);
+  if (figures.samplesPerClass.length > 0) {
+    losses.push(
+      `${formatCount(figures.samplesPerClass.length, 'class', 'classes')} and ${formatCount(figures.sampleCount, 'sample')}, history included`,
+    );
+  }
+  if (runCount > 0) losses.push(`${formatCount(runCount, 'run')}, class maps and accuracy included`);
+  losses.push('The record of who did what, and everyone’s place in it');
+  return losses;
 }

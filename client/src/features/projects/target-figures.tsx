@@ -49,7 +49,7 @@ export function TargetFigures({ project, figures }: TargetFiguresProps) {
       <TargetRow
         figure={
           samplesPerClass.length === 0 ? (
-            <NoFigure label="classes with enough samples: no class yet" />
+            <NoFigure label="classes with a sample: no class yet" />
           ) : (
             <Figure
               size="lg"

@@ -34,6 +34,7 @@ export function AccountActDialog({ act, account, onClose }: AccountActDialogProp
       loses={text.loses}
       keeps={text.keeps}
       confirmLabel={text.confirmLabel}
+      cancelLabel="Leave as it is"
       isDanger={act === 'close'}
       isPending={update.isPending}
       error={update.error ? asProblem(update.error) : null}

@@ -20,14 +20,16 @@ interface OverviewBodyProps {
 /** The sentence the project comes to, what waits, figures against targets, and what happened. */
 export function OverviewBody({ project, overview, onEditDetails }: OverviewBodyProps) {
   const { figures, waiting, activity } = overview;
+  const runCount = project.stages.find(({ id }) => id === 'runs')?.count ?? 0;
   const standing = describeStanding(figures, project);
   return (
     <>
       <Statement
         above={
           <>
-            {project.name} · begun {formatDate(project.createdAt)} · {formatCount(figures.sceneCount, 'scene')},{' '}
-            {formatCount(figures.sampleCount, 'sample')}
+            Begun {formatDate(project.createdAt)} · {formatCount(figures.sceneCount, 'scene')},{' '}
+            {formatCount(figures.samplesPerClass.length, 'class', 'classes')},{' '}
+            {formatCount(figures.sampleCount, 'sample')}, {formatCount(runCount, 'run')}
           </>
         }
         below={project.description && <p className="whitespace-pre-line">{project.description}</p>}

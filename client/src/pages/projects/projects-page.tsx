@@ -11,7 +11,6 @@ import { CreateProjectDialog } from '../../features/projects/create-project-dial
 import { FirstProject } from '../../features/projects/first-project.tsx';
 import { useProjects } from '../../features/projects/list-projects.ts';
 import { ProjectCard } from '../../features/projects/project-card.tsx';
-import { formatCount } from '../../lib/format.ts';
 import { paths } from '../../lib/paths.ts';
 
 /** From this many on, a filter helps more than it stands in the way. */
@@ -32,15 +31,7 @@ export function ProjectsPage() {
     </Button>
   );
   return (
-    <ReadingPage
-      header={
-        <PageHeader
-          title="Projects"
-          crumb={projects.data && projects.data.length > 0 ? formatCount(projects.data.length, 'project') : undefined}
-          action={projects.data?.length === 0 ? undefined : newButton}
-        />
-      }
-    >
+    <ReadingPage header={<PageHeader title="Projects" action={projects.data?.length === 0 ? undefined : newButton} />}>
       {projects.isPending && <PendingCards />}
       {projects.isError && <ErrorState error={projects.error} onRetry={() => void projects.refetch()} />}
       {projects.data?.length === 0 && <FirstProject action={newButton} />}
@@ -55,7 +46,7 @@ export function ProjectsPage() {
         />
       )}
       {shown.length > 0 && (
-        <ul className="grid gap-5 md:grid-cols-2 xl:grid-cols-3">
+        <ul className="grid gap-6 lg:grid-cols-2">
           {shown.map((project) => (
             <li key={project.id} className="*:h-full">
               <ProjectCard project={project} />
@@ -79,10 +70,10 @@ export function ProjectsPage() {
 
 function PendingCards() {
   return (
-    <div role="status" className="grid gap-5 md:grid-cols-2 xl:grid-cols-3">
+    <div role="status" className="grid gap-6 lg:grid-cols-2">
       <span className="sr-only">Loading projects…</span>
       {[0, 1, 2].map((card) => (
-        <Skeleton key={card} className="h-40 w-full rounded-xl" />
+        <Skeleton key={card} className="h-52 w-full rounded-xl" />
       ))}
     </div>
   );
