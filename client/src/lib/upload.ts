@@ -65,7 +65,7 @@ function readAnswer<T>(request: XMLHttpRequest, schema: ZodType<T>): T {
     if (request.status === 401) window.dispatchEvent(new CustomEvent(SIGNED_OUT_EVENT));
     throw parseProblem(request.responseText, request.status);
   }
-  const parsed = schema.safeParse(request.responseText ? JSON.parse(request.responseText) : null);
+  const parsed = schema.safeParse(parseJson(request.responseText));
   if (parsed.success) return parsed.data;
   throw new ProblemError({
     status: request.status,
@@ -73,6 +73,15 @@ function readAnswer<T>(request: XMLHttpRequest, schema: ZodType<T>): T {
     title: 'The server answered in a form this page does not know',
     detail: parsed.error.issues[0]?.message,
   });
+}
+
+/** undefined for what is no JSON: no contract takes that. */
+function parseJson(text: string): unknown {
+  try {
+    return JSON.parse(text) as unknown;
+  } catch {
+    return undefined;
+  }
 }
 
 function connectionLost(): ProblemError {
