@@ -37,6 +37,7 @@ export function listClassAreas(run: Run): ClassArea[] | null {
 export function presentRun(run: Run, viewer: Viewer): RunContract {
   const { result, job } = run;
   const isUnderWay = job.state === 'queued' || job.state === 'running';
+  const shown = can('accuracy.read', viewer.roles) ? result : null;
   const mayStop = can('run.stop', viewer.roles, run.startedById === viewer.userId);
   return {
     id: run.id,
@@ -56,7 +57,9 @@ export function presentRun(run: Run, viewer: Viewer): RunContract {
     classMapSha256: result?.classMapSha256 ?? null,
     inputSha256: run.inputSha256,
     areas: listClassAreas(run),
-    overallAccuracy: can('accuracy.read', viewer.roles) ? (result?.overallAccuracy ?? null) : null,
+    overallAccuracy: shown?.overallAccuracy ?? null,
+    overallLow: shown?.overallLow ?? null,
+    overallHigh: shown?.overallHigh ?? null,
     bounds: run.scene.bounds,
     notes: [...run.warnings, ...(result?.notes ?? [])],
     abilities: { cancel: mayStop && isUnderWay, delete: mayStop && !isUnderWay },

@@ -89,6 +89,9 @@ export const runSchema = z.object({
   inputSha256: z.string().nullable(),
   areas: z.array(classAreaSchema).nullable(),
   overallAccuracy: z.number().nullable(),
+  /** 95 % interval of it; null where undefined. */
+  overallLow: z.number().nullable(),
+  overallHigh: z.number().nullable(),
   bounds: boundsSchema.nullable(),
   notes: z.array(z.string()),
   abilities: z.object({ cancel: z.boolean(), delete: z.boolean() }),
