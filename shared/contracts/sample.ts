@@ -29,7 +29,7 @@ export const sampleListSchema = z.object({ samples: z.array(sampleSchema) });
 export const sampleListQuerySchema = z.object({
   bbox: z
     .string()
-    .regex(/^-?[\d.]+(,-?[\d.]+){3}$/, 'bbox is west,south,east,north in degrees.')
+    .regex(/^-?\d+(\.\d+)?(e-?\d+)?(,-?\d+(\.\d+)?(e-?\d+)?){3}$/i, 'bbox is west,south,east,north in degrees.')
     .optional(),
 });
 
