@@ -4,14 +4,13 @@ import { mkdir, rename, rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { pipeline } from 'node:stream/promises';
 import { addOverviews } from './add-overviews.ts';
-import { chooseMaskedType, writeMaskedRaw } from './apply-mask.ts';
-import { chooseCompression, listCreationOptions } from './band-file-format.ts';
+import { chooseCompression } from './band-file-format.ts';
 import { BandStore } from './band-store.ts';
 import { computeBandStatistics, type BandStatistics } from './band-statistics.ts';
 import type { BandDtype } from './band-dtype.ts';
-import { isFaultOfFile, requireLocalPath, runGdal } from './gdal-process.ts';
+import { extractBand, type BandExtraction } from './extract-band.ts';
+import { requireLocalPath } from './gdal-process.ts';
 import type { SourceBand, SourceInfo } from './inspect-source.ts';
-import { writeGeoTiffFromRaw } from './raw-to-geotiff.ts';
 import { SourceRefusal } from './source-refusal.ts';
 
 /** A band as it was written to the scene's folder. */
@@ -40,6 +39,8 @@ export interface IngestOptions {
   signal?: AbortSignal;
   /** Called with a rising fraction 0–1. */
   onProgress?: (fraction: number) => void;
+  /** Bands worked on at once; each takes one GDAL process at a time. */
+  concurrentBands?: number;
   /** Limit for each GDAL step on a band. */
   timeoutMs?: number;
 }
@@ -63,28 +64,61 @@ export async function ingestBands(
   requireLocalPath(outDir);
   const wanted = pickBands(info, options.bands);
   await mkdir(outDir, { recursive: true });
-  const workDir = join(outDir, 'ingest-work');
-  await mkdir(workDir, { recursive: true });
-  const store = new BandStore({ cacheMb: 16, decode: 'async' });
-  const ingested: IngestedBand[] = [];
+  const firstNumber = options.firstFileNumber ?? 1;
+  // Named after the first file, so that a run that takes up after a crash clears what the crash left.
+  const workDir = join(outDir, `ingest-${firstNumber}`);
+  await rm(workDir, { recursive: true, force: true });
+  await mkdir(workDir);
+  const store = new BandStore({ cacheMb: 0, decode: 'async' });
+  const stop = new AbortController();
+  const signal = options.signal === undefined ? stop.signal : AbortSignal.any([options.signal, stop.signal]);
+  const fractions = new Float64Array(wanted.length);
+  const jobs = wanted.map((band, position): BandJob => {
+    const onProgress = (fraction: number): void => {
+      fractions[position] = fraction;
+      options.onProgress?.(fractions.reduce((sum, one) => sum + one, 0) / wanted.length);
+    };
+    const fileName = `band-${String(firstNumber + position).padStart(2, '0')}.tif`;
+    const timeoutMs = options.timeoutMs ?? 1_800_000;
+    return { sourcePath, info, band, outDir, workDir, fileName, store, timeoutMs, signal, onProgress };
+  });
   let isDone = false;
   try {
-    for (const [position, band] of wanted.entries()) {
-      const number = (options.firstFileNumber ?? 1) + position;
-      const fileName = `band-${String(number).padStart(2, '0')}.tif`;
-      const onProgress = (fraction: number): void => options.onProgress?.((position + fraction) / wanted.length);
-      ingested.push(
-        await ingestBand({ sourcePath, info, band, outDir, workDir, fileName, store, options, onProgress }),
-      );
-    }
+    const ingested = await runInLanes(jobs, options.concurrentBands ?? 2, ingestBand, stop);
     if (ingested.every((band) => band.statistics === null)) throw refuseAllNodata(wanted);
     isDone = true;
     return ingested;
   } finally {
     await store.close();
     await rm(workDir, { recursive: true, force: true });
-    if (!isDone) await Promise.all(ingested.map(({ fileName }) => rm(join(outDir, fileName), { force: true })));
+    if (!isDone) await Promise.all(jobs.map(({ fileName }) => rm(join(outDir, fileName), { force: true })));
   }
+}
+
+/** Runs a step for each item, so many at once; the first failure stops the others and is thrown once they have ended. */
+async function runInLanes<Item, Result>(
+  items: readonly Item[],
+  nLanes: number,
+  step: (item: Item) => Promise<Result>,
+  stop: AbortController,
+): Promise<Result[]> {
+  const results: Result[] = [];
+  const failures: unknown[] = [];
+  const waiting = [...items.entries()];
+  const runLane = async (): Promise<void> => {
+    for (let next = waiting.shift(); next !== undefined && failures.length === 0; next = waiting.shift()) {
+      const [position, item] = next;
+      try {
+        results[position] = await step(item);
+      } catch (error) {
+        failures.push(error);
+        stop.abort();
+      }
+    }
+  };
+  await Promise.all(Array.from({ length: nLanes }, runLane));
+  if (failures.length > 0) throw failures[0];
+  return results;
 }
 
 function pickBands(info: SourceInfo, wanted: readonly number[] | undefined): SourceBand[] {
@@ -110,33 +144,22 @@ function refuseAllNodata(bands: readonly SourceBand[]): SourceRefusal {
   );
 }
 
-interface BandJob {
-  sourcePath: string;
-  info: SourceInfo;
-  band: SourceBand;
+interface BandJob extends Omit<BandExtraction, 'outPath'> {
   outDir: string;
-  workDir: string;
   fileName: string;
   store: BandStore;
-  options: IngestOptions;
-  onProgress: (fraction: number) => void;
 }
 
 async function ingestBand(job: BandJob): Promise<IngestedBand> {
-  const { info, band, outDir, workDir, fileName, store, options, onProgress } = job;
-  const { signal, timeoutMs = 1_800_000 } = options;
+  const { info, band, outDir, workDir, fileName, store, timeoutMs, signal, onProgress } = job;
   // Written aside and moved at the end, so that a file under its final name is always whole.
   const draftPath = join(workDir, fileName);
-  let { dtype } = band;
-  let overviewMethod = chooseOverviewMethod(dtype);
-  const onWrite = (fraction: number): void => onProgress(fraction * stepShares.write);
-  if (info.maskKind === 'none') {
-    await extractBand(job, String(band.index), draftPath, dtype, timeoutMs, onWrite);
-  } else {
-    dtype = await writeMaskedBand(job, draftPath, timeoutMs, onWrite);
-    overviewMethod = chooseOverviewMethod(dtype);
-  }
-  await addOverviews(draftPath, info, overviewMethod, {
+  const dtype = await extractBand({
+    ...job,
+    outPath: draftPath,
+    onProgress: (fraction) => onProgress(fraction * stepShares.write),
+  });
+  await addOverviews(draftPath, info, chooseOverviewMethod(dtype), {
     compression: chooseCompression(dtype),
     signal,
     timeoutMs,
@@ -152,6 +175,7 @@ async function ingestBand(job: BandJob): Promise<IngestedBand> {
   await store.forget(draftPath);
   const sha256 = await hashFile(draftPath, signal);
   await rename(draftPath, join(outDir, fileName));
+  onProgress(1);
   const { description, scale, offset, index: sourceIndex } = band;
   return { sourceIndex, fileName, dtype, nodata, description, scale, offset, sha256, statistics };
 }
@@ -159,70 +183,6 @@ async function ingestBand(job: BandJob): Promise<IngestedBand> {
 /** GDAL before 3.7 averages int8 as if it were uint8, so those overviews take the nearest pixel. */
 function chooseOverviewMethod(dtype: BandDtype): 'average' | 'nearest' {
   return dtype === 'int8' ? 'nearest' : 'average';
-}
-
-async function extractBand(
-  { sourcePath, info, band, options }: BandJob,
-  bandArgument: string,
-  outPath: string,
-  dtype: BandDtype,
-  timeoutMs: number,
-  onProgress: (fraction: number) => void,
-): Promise<void> {
-  const isImagery = bandArgument === String(band.index);
-  const nodata = isImagery && band.nodata !== null ? (Number.isNaN(band.nodata) ? 'nan' : String(band.nodata)) : 'none';
-  const run = runGdal(
-    'gdal_translate',
-    [
-      ...['-of', 'GTiff', '-b', bandArgument, '-mask', 'none', '-a_nodata', nodata, '-norat'],
-      // A palette's colours would change what an average of its codes means.
-      ...['-colorinterp', 'gray', '-a_srs', info.crs.wkt],
-      ...listCreationOptions(dtype),
-      ...[sourcePath, outPath],
-    ],
-    { origin: 'upload', timeoutMs, signal: options.signal, onProgress },
-  );
-  try {
-    await run;
-  } catch (error) {
-    if (!isFaultOfFile(error)) throw error;
-    throw new SourceRefusal(
-      'unreadable',
-      `pixels of band ${band.index} that can't be decoded`,
-      'a file that can be read to its end',
-      'It may have been cut off or damaged on the way; check it and upload it again.',
-    );
-  }
-}
-
-async function writeMaskedBand(
-  job: BandJob,
-  outPath: string,
-  timeoutMs: number,
-  onProgress: (fraction: number) => void,
-): Promise<BandDtype> {
-  const { info, band, workDir, store, options } = job;
-  const imagePath = join(workDir, 'image.tif');
-  const maskPath = join(workDir, 'mask.tif');
-  const rawPath = join(workDir, 'masked.raw');
-  try {
-    await extractBand(job, String(band.index), imagePath, band.dtype, timeoutMs, (f) => onProgress(f * 0.4));
-    await extractBand(job, `mask,${band.index}`, maskPath, 'uint8', timeoutMs, (f) => onProgress(0.4 + f * 0.2));
-    const image = await store.open(imagePath);
-    const mask = await store.open(maskPath);
-    const masked = await chooseMaskedType(image, mask, options.signal);
-    await writeMaskedRaw(image, mask, masked, rawPath, options.signal);
-    await writeGeoTiffFromRaw({ rawPath, ...masked, grid: image.grid, wkt: info.crs.wkt }, outPath, {
-      overviews: 'none',
-      signal: options.signal,
-      onProgress: (fraction) => onProgress(0.7 + fraction * 0.3),
-    });
-    return masked.dtype;
-  } finally {
-    await store.forget(imagePath);
-    await store.forget(maskPath);
-    await Promise.all([imagePath, maskPath, rawPath].map((path) => rm(path, { force: true })));
-  }
 }
 
 /** Lowercase hexadecimal SHA-256 of a file, read as a stream. */
