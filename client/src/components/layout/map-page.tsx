@@ -62,7 +62,7 @@ export function Strip({ label, tools, children }: StripProps) {
   return (
     <section aria-label={label} className="w-full overflow-hidden rounded-xl bg-card shadow-lift">
       {tools && (
-        <div className="flex items-center gap-0.5 overflow-x-auto border-b border-line px-2.5 py-1.5 text-sm whitespace-nowrap last:border-b-0">
+        <div className="flex items-center gap-0.5 overflow-x-auto border-b border-line px-2.5 py-1.5 max-lg:flex-wrap text-sm whitespace-nowrap last:border-b-0">
           {tools}
         </div>
       )}

@@ -32,7 +32,7 @@ export function Segmented<V extends string>({ value, onChange, options, label, c
           key={option.value}
           value={option.value}
           disabled={option.isDisabled ?? false}
-          className="min-h-7 border-r border-line px-2.5 py-1 whitespace-nowrap first:rounded-l-[7px] last:rounded-r-[7px] last:border-r-0 enabled:hover:bg-sunken data-[state=on]:bg-ink data-[state=on]:text-paper disabled:cursor-not-allowed disabled:text-ink-soft"
+          className="min-h-7 border-r border-line px-2.5 py-1 whitespace-nowrap first:rounded-l-[7px] last:rounded-r-[7px] last:border-r-0 enabled:data-[state=off]:hover:bg-sunken data-[state=on]:bg-ink data-[state=on]:text-paper disabled:cursor-not-allowed disabled:text-ink-soft"
         >
           {option.label}
         </ToggleGroup.Item>

@@ -21,7 +21,11 @@ export function Sprig({ className }: { className?: string }) {
         strokeWidth="1.8"
         fill="var(--card)"
       />
-      <path d="M17 5.500 20 2l3 3.500" stroke="var(--groundsel-deep)" strokeWidth="1.8" />
+      <path
+        d="M15.5 22c-1-4 .5-8 4.500-12M24.500 22c1-4-.5-8-4.500-12"
+        stroke="var(--groundsel-deep)"
+        strokeWidth="1.2"
+      />
     </svg>
   );
 }
