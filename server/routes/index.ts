@@ -1,9 +1,14 @@
 import { accountRoutes } from './accounts/routes.ts';
+import { accuracyRoutes } from './accuracy/routes.ts';
+import { classRoutes } from './classes/routes.ts';
 import { eventRoutes } from './events/routes.ts';
 import { memberRoutes } from './members/routes.ts';
 import { createOpenApiRoutes } from './openapi/routes.ts';
 import { projectRoutes } from './projects/routes.ts';
 import type { Route } from './route.ts';
+import { runRoutes } from './runs/routes.ts';
+import { sampleRoutes } from './samples/routes.ts';
+import { sceneRoutes } from './scenes/routes.ts';
 import { sessionRoutes } from './session/routes.ts';
 
 /** Every route of the product, in the order the API document lists them. */
@@ -12,6 +17,11 @@ export const routes: readonly Route[] = [
   ...accountRoutes,
   ...projectRoutes,
   ...memberRoutes,
+  ...sceneRoutes,
+  ...classRoutes,
+  ...sampleRoutes,
+  ...runRoutes,
+  ...accuracyRoutes,
   ...eventRoutes,
   ...createOpenApiRoutes(() => routes),
 ];

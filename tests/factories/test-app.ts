@@ -43,8 +43,10 @@ function readDatabaseServer() {
   };
 }
 
-/** Opens a server for one test file; call `close()` in afterAll. */
-export async function openTestApp(overrides: Partial<Config> = {}): Promise<TestApp> {
+/** Settings with a database and a data folder of their own; `dispose()` removes both. */
+export async function makeTestConfig(
+  overrides: Partial<Config> = {},
+): Promise<{ config: Config; dispose(): Promise<void> }> {
   const server = readDatabaseServer();
   const name = `test_${randomBytes(8).toString('hex')}`;
   const admin = await createConnection(server);
@@ -72,6 +74,20 @@ export async function openTestApp(overrides: Partial<Config> = {}): Promise<Test
     logLevel: 'silent',
     ...overrides,
   };
+  return {
+    config,
+    async dispose() {
+      await admin.query(`DROP DATABASE ${name}`);
+      await admin.end();
+      await rm(dataDir, { recursive: true, force: true });
+    },
+  };
+}
+
+/** Opens a server for one test file; call `close()` in afterAll. */
+export async function openTestApp(overrides: Partial<Config> = {}): Promise<TestApp> {
+  const { config, dispose } = await makeTestConfig(overrides);
+  const { dataDir } = config;
   const log = pino({ level: process.env['GROUNDSEL_TEST_LOG'] ?? config.logLevel });
   const { app, close: closeApp } = await openApp(config, log);
   const http = createServer(createHttpApp(app, null));
@@ -92,9 +108,7 @@ export async function openTestApp(overrides: Partial<Config> = {}): Promise<Test
       http.closeAllConnections();
       await closed;
       await closeApp();
-      await admin.query(`DROP DATABASE ${name}`);
-      await admin.end();
-      await rm(dataDir, { recursive: true, force: true });
+      await dispose();
     },
   };
 }

@@ -1,0 +1,86 @@
+import { pipeline } from 'node:stream/promises';
+import { runProbeSchema } from '../../../shared/contracts/run.ts';
+import { probeQuerySchema, tileParamsSchema } from '../../../shared/contracts/scene.ts';
+import { listClassAreas } from '../../presenters/present-run.ts';
+import { requireResult } from '../../services/accuracy.ts';
+import { nameDownload, packClassMap } from '../../services/class-map-package.ts';
+import { probeClassMap, planClassTile } from '../../services/class-map-view.ts';
+import { findProject } from '../../services/projects.ts';
+import { route } from '../route.ts';
+import { sendTile } from '../send-tile.ts';
+import { findRunTarget, runParams } from './find-run.ts';
+
+const read = { kind: 'project', action: 'run.read', find: findRunTarget } as const;
+
+/** A browser that hangs up in the middle of a download is no failure of the server. */
+function isHangUp(error: unknown): boolean {
+  return (error as NodeJS.ErrnoException).code === 'ERR_STREAM_PREMATURE_CLOSE';
+}
+
+export const classMapRoutes = [
+  route({
+    id: 'runs.tile',
+    method: 'get',
+    path: '/runs/:runId/tiles/:z/:x/:y.webp',
+    summary: 'A Web Mercator tile of the class map in its class colours',
+    access: read,
+    params: runParams.extend(tileParamsSchema.shape),
+    answer: { mediaType: 'image/webp' },
+    handle: ({ app, params: { z, x, y }, target, req, res }) =>
+      sendTile(req, res, planClassTile(app, target.run, { z, x, y })),
+  }),
+  route({
+    id: 'runs.probe',
+    method: 'get',
+    path: '/runs/:runId/probe',
+    summary: 'The mapped class at a position',
+    access: read,
+    params: runParams,
+    query: probeQuerySchema,
+    answer: runProbeSchema,
+    handle: ({ app, target, query }) => probeClassMap(app, target.run, query.lon, query.lat),
+  }),
+  route({
+    id: 'runs.class-map',
+    method: 'get',
+    path: '/runs/:runId/class-map.tif',
+    summary: 'The class map as a GeoTIFF with colour table and class names',
+    access: read,
+    params: runParams,
+    answer: { mediaType: 'image/tiff' },
+    async handle({ app, target, res }) {
+      const { mapKey } = requireResult(target.run);
+      const stream = await app.files.stream(mapKey);
+      res.attachment(`${nameDownload(target.run, 'class-map')}.tif`);
+      res.type('image/tiff');
+      res.setHeader('Content-Length', await app.files.sizeBytes(mapKey));
+      res.setHeader('Cache-Control', 'private, no-cache');
+      await pipeline(stream, res).catch((error: unknown) => {
+        if (!isHangUp(error)) throw error;
+      });
+      return undefined;
+    },
+  }),
+  route({
+    id: 'runs.class-map-package',
+    method: 'get',
+    path: '/runs/:runId/class-map.zip',
+    summary: 'The class map with its class names, areas, and what to know before relying on it',
+    access: read,
+    params: runParams,
+    answer: { mediaType: 'application/zip' },
+    async handle({ app, target, res }) {
+      const { run, projectId } = target;
+      requireResult(run);
+      const project = await findProject(app, projectId);
+      const stream = await packClassMap(app, run, project?.name ?? '', listClassAreas(run) ?? []);
+      res.attachment(`${nameDownload(run, 'class-map')}.zip`);
+      res.type('application/zip');
+      res.setHeader('Cache-Control', 'private, no-cache');
+      await pipeline(stream, res).catch((error: unknown) => {
+        if (!isHangUp(error)) throw error;
+      });
+      return undefined;
+    },
+  }),
+];
