@@ -48,7 +48,7 @@ export const LAYERS: readonly Layer[] = [
   // Config, errors, the app's context: what every server layer stands on. It names the layers' types only.
   { name: 'ground', prefix: 'server/config.ts', may: [] },
   { name: 'ground', prefix: 'server/errors.ts', may: [] },
-  { name: 'ground', prefix: 'server/app-context.ts', may: ['jobs', 'mail', 'storage'] },
+  { name: 'ground', prefix: 'server/app-context.ts', may: ['jobs', 'mail', 'raster', 'storage'] },
   {
     name: 'start',
     prefix: 'server/',
@@ -59,6 +59,7 @@ export const LAYERS: readonly Layer[] = [
       'jobs',
       'storage',
       'mail',
+      'raster',
       'entities',
       'migrations',
       'demo',
