@@ -3,7 +3,7 @@ import { mkdtemp, rename, rm, stat, writeFile } from 'node:fs/promises';
 import { basename, dirname, join } from 'node:path';
 import { pipeline } from 'node:stream/promises';
 import { requireLocalPath } from './gdal-process.ts';
-import { hashFile } from './ingest-bands.ts';
+import { hashFile } from './hash-file.ts';
 import type { RasterGrid } from './raster-grid.ts';
 import { escapeXml, writeGeoTiffFromRaw, type Rgba } from './raw-to-geotiff.ts';
 

@@ -9,6 +9,9 @@ import type { SourceBand, SourceInfo } from './inspect-source.ts';
 import { writeGeoTiffFromRaw } from './raw-to-geotiff.ts';
 import { SourceRefusal } from './source-refusal.ts';
 
+// A JPEG 2000 image without tiles is decoded whole, at four bytes a sample.
+const decodeMemoryBytes = 3 * 1024 ** 3;
+
 /** One band to be taken out of an inspected source. */
 export interface BandExtraction {
   sourcePath: string;
@@ -53,7 +56,7 @@ async function translateBand(
       ...listCreationOptions(dtype),
       ...[sourcePath, outPath],
     ],
-    { origin: 'upload', timeoutMs, signal, onProgress },
+    { origin: 'upload', timeoutMs, memoryBytes: decodeMemoryBytes, signal, onProgress },
   );
   try {
     await run;

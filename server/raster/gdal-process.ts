@@ -42,7 +42,7 @@ export interface GdalRunOptions {
 }
 
 /** The only drivers that may open an upload; GTiff also reads COG. */
-export const uploadDrivers = ['GTiff', 'JP2OpenJPEG'] as const;
+const uploadDrivers = ['GTiff', 'JP2OpenJPEG'] as const;
 
 const toolsWithInputFormat: readonly GdalTool[] = ['gdalinfo', 'gdal_translate'];
 const stderrTailBytes = 4000;

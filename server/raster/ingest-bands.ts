@@ -1,8 +1,5 @@
-import { createHash } from 'node:crypto';
-import { createReadStream } from 'node:fs';
 import { mkdir, rename, rm } from 'node:fs/promises';
 import { join } from 'node:path';
-import { pipeline } from 'node:stream/promises';
 import { addOverviews } from './add-overviews.ts';
 import { chooseCompression } from './band-file-format.ts';
 import { BandStore } from './band-store.ts';
@@ -10,6 +7,7 @@ import { computeBandStatistics, type BandStatistics } from './band-statistics.ts
 import type { BandDtype } from './band-dtype.ts';
 import { extractBand, type BandExtraction } from './extract-band.ts';
 import { requireLocalPath } from './gdal-process.ts';
+import { hashFile } from './hash-file.ts';
 import type { SourceBand, SourceInfo } from './inspect-source.ts';
 import { SourceRefusal } from './source-refusal.ts';
 
@@ -183,11 +181,4 @@ async function ingestBand(job: BandJob): Promise<IngestedBand> {
 /** GDAL before 3.7 averages int8 as if it were uint8, so those overviews take the nearest pixel. */
 function chooseOverviewMethod(dtype: BandDtype): 'average' | 'nearest' {
   return dtype === 'int8' ? 'nearest' : 'average';
-}
-
-/** Lowercase hexadecimal SHA-256 of a file, read as a stream. */
-export async function hashFile(path: string, signal?: AbortSignal): Promise<string> {
-  const hash = createHash('sha256');
-  await pipeline(createReadStream(path), hash, { signal });
-  return hash.digest('hex');
 }

@@ -3,7 +3,7 @@ import { runGdal } from './gdal-process.ts';
 import { pixelToMap, type RasterGrid } from './raster-grid.ts';
 import { SourceRefusal } from './source-refusal.ts';
 
-export type CrsUnit = 'metre' | 'degree' | 'foot' | 'us-survey-foot' | 'other';
+type CrsUnit = 'metre' | 'degree' | 'foot' | 'us-survey-foot' | 'other';
 
 export interface SourceCrs {
   /** WKT 2 as GDAL prints it. */

@@ -1,7 +1,7 @@
 import { getCrsTransform, wrapLongitude } from './crs-transform.ts';
 import { pixelToMap, type RasterGrid } from './raster-grid.ts';
 
-export type Position = [number, number];
+type Position = [number, number];
 
 /** GeoJSON outline in WGS84 (RFC 7946); a scene across the antimeridian is cut there into a MultiPolygon. */
 export type Footprint =

@@ -4,7 +4,7 @@ import { join } from 'node:path';
 import type { App } from '../../server/app-context.ts';
 import type { Project } from '../../server/entities/project.ts';
 import type { Scene } from '../../server/entities/scene.ts';
-import { hashFile } from '../../server/raster/ingest-bands.ts';
+import { hashFile } from '../../server/raster/hash-file.ts';
 import { createScene } from '../../server/services/create-scene.ts';
 import { findScene } from '../../server/services/scenes.ts';
 import { makeRaster, type RasterSpec } from './make-raster.ts';
