@@ -2,7 +2,7 @@ import { Link } from 'react-router-dom';
 import { GatePage } from '../../components/layout/gate-page.tsx';
 import { ForgottenForm } from '../../features/account/forgotten-form.tsx';
 import { paths } from '../../lib/paths.ts';
-import { GroundselPlate } from '../sign-in/groundsel-plate.tsx';
+import { GroundselPlate } from '../../components/plate/groundsel-plate.tsx';
 
 /** For someone who cannot sign in any more. */
 export function ForgottenPage() {

@@ -4,7 +4,7 @@ import { useSession } from '../../features/session/get-session.ts';
 import { SignInForm } from '../../features/session/sign-in-form.tsx';
 import { safeReturnPath } from '../../lib/paths.ts';
 import { useTitle } from '../../lib/use-title.ts';
-import { GroundselPlate } from './groundsel-plate.tsx';
+import { GroundselPlate } from '../../components/plate/groundsel-plate.tsx';
 
 /** The way in. Afterwards the reader is back where the sign-in interrupted them. */
 export function SignInPage() {

@@ -6,7 +6,7 @@ import { useWelcome } from '../../features/account/get-welcome.ts';
 import { WelcomeForm } from '../../features/account/welcome-form.tsx';
 import { paths } from '../../lib/paths.ts';
 import { ProblemError } from '../../lib/problem-error.ts';
-import { GroundselPlate } from '../sign-in/groundsel-plate.tsx';
+import { GroundselPlate } from '../../components/plate/groundsel-plate.tsx';
 
 /** Where a welcome or reset link leads. */
 export function WelcomePage() {
