@@ -246,14 +246,15 @@ interface RawSample extends Omit<SampleListRow, 'geometry' | 'createdBy'> {
  * geometry in binary: ten thousand samples are a matter of a few tenths of a second.
  */
 export async function listSamples(app: App, projectId: string, bounds: Bounds | null): Promise<SampleListRow[]> {
+  const boxes = bounds ? boxesAsWkt(bounds) : [];
   const rows = await app.db.query<RawSample[]>(
     `SELECT s.id, s.projectId, s.number, s.sceneId, s.classId, s.geometry, s.confidence, s.note, s.pixelCount, s.areaHa,
        s.version, s.createdById, s.createdAt, s.updatedAt, u.name AS createdByName
      FROM samples s LEFT JOIN users u ON u.id = s.createdById
      WHERE s.projectId = ? AND s.deletedAt IS NULL
-       ${bounds ? 'AND MBRIntersects(s.geometry, ST_GeomFromText(?))' : ''}
+       ${boxes.length ? `AND (${boxes.map(() => 'MBRIntersects(s.geometry, ST_GeomFromText(?))').join(' OR ')})` : ''}
      ORDER BY s.number`,
-    bounds ? [projectId, boundsAsWkt(bounds)] : [projectId],
+    [projectId, ...boxes],
   );
   return rows.map(({ geometry, createdByName, ...row }) => ({
     ...row,
@@ -265,9 +266,9 @@ export async function listSamples(app: App, projectId: string, bounds: Bounds | 
   }));
 }
 
-function boundsAsWkt([west, south, east, north]: Bounds): string {
+function boxesAsWkt([west, south, east, north]: Bounds): string[] {
   const box = (from: number, to: number) =>
-    `((${from} ${south}, ${to} ${south}, ${to} ${north}, ${from} ${north}, ${from} ${south}))`;
-  // West of the east edge means across the antimeridian (RFC 7946, section 5.2).
-  return west <= east ? `POLYGON${box(west, east)}` : `MULTIPOLYGON(${box(west, 180)}, ${box(-180, east)})`;
+    `POLYGON((${from} ${south}, ${to} ${south}, ${to} ${north}, ${from} ${north}, ${from} ${south}))`;
+  // A west beyond the east means across the antimeridian (RFC 7946, section 5.2).
+  return west <= east ? [box(west, east)] : [box(west, 180), box(-180, east)];
 }
