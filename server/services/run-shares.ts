@@ -13,10 +13,10 @@ const FINISHING_SHARE = 0.05;
 
 /** Seconds of one thread for each step of work, from tests/bench/run-shares.ts; only their ratio matters. */
 const SECONDS = {
-  treeRowLevel: 1.6e-7,
-  pixelTreeLevel: 3.5e-9,
-  subspaceTree: 0.35,
-  neighbourPixel: 6e-5,
+  treeRowLevel: 1e-7,
+  pixelTreeLevel: 4e-9,
+  subspaceTree: 0.15,
+  neighbourPixel: 1.5e-4,
 };
 
 /** Shares out the time between training and mapping by what each is expected to take. */
