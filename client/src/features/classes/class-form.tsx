@@ -62,7 +62,10 @@ export function ClassForm(props: ClassFormProps) {
           }}
         />
       )}
-      <div className="grid grid-cols-[6rem_1fr] gap-4">
+      <div className="grid grid-cols-[1fr_6rem] gap-4">
+        <Field label="Name" error={formState.errors.name?.message}>
+          <TextInput autoComplete="off" {...register('name')} />
+        </Field>
         <Controller
           control={control}
           name="code"
@@ -72,9 +75,6 @@ export function ClassForm(props: ClassFormProps) {
             </Field>
           )}
         />
-        <Field label="Name" error={formState.errors.name?.message}>
-          <TextInput autoComplete="off" {...register('name')} />
-        </Field>
       </div>
       <p className="-mt-3 text-xs text-ink-soft">
         The code is the pixel value in the class map, 1 to 254; 0 is unclassified and 255 is nodata.

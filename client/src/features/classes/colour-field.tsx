@@ -28,7 +28,7 @@ export function ColourField({ value, onChange, error, takenBy }: ColourFieldProp
             <label
               key={step.colour}
               title={taken ? `${step.name}, used by ${taken}` : step.name}
-              className="flex cursor-pointer items-center gap-2 rounded-md border border-line px-2 py-1.5 text-xs hover:bg-sunken has-checked:border-ink has-checked:bg-groundsel-wash has-focus-visible:outline-2 has-focus-visible:outline-offset-1 has-focus-visible:outline-ink"
+              className="flex cursor-pointer items-center gap-1.5 rounded-md border border-line px-1.5 py-1.5 text-xs hover:bg-sunken has-checked:border-ink has-checked:bg-groundsel-wash has-focus-visible:outline-2 has-focus-visible:outline-offset-1 has-focus-visible:outline-ink"
             >
               <input
                 type="radio"
@@ -37,7 +37,7 @@ export function ColourField({ value, onChange, error, takenBy }: ColourFieldProp
                 checked={value.toLowerCase() === step.colour.toLowerCase()}
                 onChange={() => onChange(step.colour)}
               />
-              <ClassSwatch colour={step.colour} pattern={null} />
+              <ClassSwatch colour={step.colour} pattern={null} size="sm" />
               <span className={classNames('truncate', taken && 'text-ink-soft')}>{step.name}</span>
               {taken && <span className="sr-only">, used by {taken}</span>}
             </label>
@@ -45,7 +45,7 @@ export function ColourField({ value, onChange, error, takenBy }: ColourFieldProp
         })}
       </div>
       <div className="mt-2 flex items-center gap-2">
-        <label htmlFor={`${id}-any`} className="text-sm text-ink-soft">
+        <label htmlFor={`${id}-any`} className="text-sm whitespace-nowrap text-ink-soft">
           Or any colour
         </label>
         <input
@@ -65,12 +65,12 @@ export function ColourField({ value, onChange, error, takenBy }: ColourFieldProp
           onChange={(event) => onChange(event.target.value.trim())}
           className={classNames(INPUT_CLASS, 'w-28!')}
         />
-        {sharer && (
-          <span role="status" className="text-xs">
-            {sharer} has this colour too; the two are hard to tell apart on a map.
-          </span>
-        )}
       </div>
+      <p role="status" className="text-xs text-ink-soft">
+        {sharer && (
+          <span className="mt-1.5 block">{sharer} has this colour too; the two are hard to tell apart on a map.</span>
+        )}
+      </p>
       {error && (
         <p id={`${id}-error`} role="alert" className="mt-1 text-xs font-medium text-rust">
           {error}

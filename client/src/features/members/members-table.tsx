@@ -26,7 +26,7 @@ export function MembersTable({ members, viewerId, canManage, onEditRoles, onRemo
           <th scope="col" className="w-20 text-right">
             Samples
           </th>
-          <th scope="col" className="w-32">
+          <th scope="col" className="w-36 pl-6">
             In since
           </th>
           {canManage && (
@@ -49,7 +49,7 @@ export function MembersTable({ members, viewerId, canManage, onEditRoles, onRemo
             </th>
             <td>{member.roles.map((role) => ROLE_TEXT[role].name).join(', ')}</td>
             <td className="text-right">{formatNumber(member.sampleCount)}</td>
-            <td className="whitespace-nowrap text-ink-soft">{formatDate(member.addedAt)}</td>
+            <td className="pl-6 whitespace-nowrap text-ink-soft">{formatDate(member.addedAt)}</td>
             {canManage && (
               <td className="pr-0!">
                 <Menu

@@ -29,6 +29,7 @@ export function AccountsTable({ accounts, viewerId, onAct }: AccountsTableProps)
       {
         header: 'Name',
         accessorKey: 'name',
+        sortingFn: 'text',
         cell: ({ row: { original } }) => (
           <>
             <span className="font-medium">{original.name}</span>
@@ -36,7 +37,7 @@ export function AccountsTable({ accounts, viewerId, onAct }: AccountsTableProps)
           </>
         ),
       },
-      { header: 'E-mail', accessorKey: 'email' },
+      { header: 'E-mail', accessorKey: 'email', sortingFn: 'text' },
       {
         header: 'State',
         accessorKey: 'state',
@@ -60,7 +61,7 @@ export function AccountsTable({ accounts, viewerId, onAct }: AccountsTableProps)
       {
         header: 'Since',
         accessorKey: 'createdAt',
-        meta: { width: '8rem' },
+        meta: { align: 'right', width: '8rem' },
         cell: ({ row: { original } }) => (
           <span className="whitespace-nowrap text-ink-soft">{formatDate(original.createdAt)}</span>
         ),

@@ -5,12 +5,12 @@ import { PageHeader } from '../../components/layout/page-header.tsx';
 import { ReadingPage } from '../../components/layout/reading-page.tsx';
 import { ForbiddenState } from '../../components/ui/access-states.tsx';
 import { Button } from '../../components/ui/button.tsx';
-import { EmptyState } from '../../components/ui/empty-state.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
 import { sayProblem } from '../../components/ui/toaster.tsx';
 import { ClassDialog } from '../../features/classes/class-dialog.tsx';
 import { DeleteClassDialog } from '../../features/classes/delete-class-dialog.tsx';
+import { FirstClass } from '../../features/classes/first-class.tsx';
 import { useOrderClasses } from '../../features/classes/order-classes.ts';
 import { SchemeTable } from '../../features/classes/scheme-table.tsx';
 import { formatCount } from '../../lib/format.ts';
@@ -56,13 +56,7 @@ function Scheme() {
     >
       {classes.isPending && <PendingState label="Loading the class scheme" shape="table" rows={8} />}
       {classes.isError && !classes.data && <ErrorState error={classes.error} onRetry={() => void classes.refetch()} />}
-      {classes.data && list.length === 0 && (
-        <EmptyState title="No class yet" action={canManage && addButton('Add the first class')}>
-          {canManage
-            ? 'The class scheme is what you and the client agree to map: for each class a code, a name, a colour, and a definition that two people would draw alike. A run needs at least two.'
-            : 'The project lead defines the class scheme. Samples can be drawn once there is one.'}
-        </EmptyState>
-      )}
+      {classes.data && list.length === 0 && <FirstClass action={canManage && addButton('Add the first class')} />}
       {list.length > 0 && (
         <>
           <p className="mb-4 max-w-3xl text-sm text-ink-soft">
