@@ -7,6 +7,7 @@ import type { RasterGrid } from './raster-grid.ts';
 interface HandleSource {
   readonly cache: BlockCache;
   acquire(path: string): Promise<BandHandle>;
+  forget(path: string): Promise<void>;
 }
 
 /** One band of a scene, or a class map, on disk: full resolution and its overviews, read by blocks. */
@@ -57,7 +58,11 @@ export class BandFile {
     let handle = await this.source.acquire(this.path);
     // Between the promise and this line the store may have closed it to open another file.
     while (handle.isClosed) handle = await this.source.acquire(this.path);
-    if (handle.version !== this.#version) throw new Error(`${this.path} changed while it was being read`);
+    if (handle.version !== this.#version) {
+      // What is known here no longer fits the file; the next one to open it starts afresh.
+      await this.source.forget(this.path);
+      throw new Error(`${this.path} changed while it was being read`);
+    }
     const block = await handle.decodeBlock(level, blockCol, blockRow);
     if (keep) this.source.cache.set(key, block);
     return block;

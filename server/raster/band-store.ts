@@ -60,7 +60,7 @@ export class BandStore {
     return handle;
   }
 
-  /** Forgets a file that was replaced or is about to be deleted. */
+  /** Forgets a file that was replaced or is about to be deleted; one still held open would go on giving what it held. */
   async forget(path: string): Promise<void> {
     this.#files.delete(path);
     const handle = this.#handles.get(path);

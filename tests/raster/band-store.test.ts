@@ -1,5 +1,5 @@
 import { join } from 'node:path';
-import { readdirSync } from 'node:fs';
+import { copyFileSync, readdirSync } from 'node:fs';
 import { afterAll, describe, expect, it } from 'vitest';
 import { BandStore } from '../../server/raster/band-store.ts';
 import { BlockCache } from '../../server/raster/block-cache.ts';
@@ -94,6 +94,23 @@ describe('BandStore', () => {
     expect(countOpenFiles() - before).toBeLessThanOrEqual(2);
     await tight.close();
     expect(countOpenFiles()).toBe(before);
+  });
+
+  it('never mixes a replaced file with what it knew of the old one', async () => {
+    const tight = new BandStore({ cacheMb: 4, maxOpenFiles: 1 });
+    const [old, replacement, other] = [
+      await makeBand('old', makeGrid(), [new Uint16Array(2400).fill(1)]),
+      await makeBand('replacement', makeGrid({ width: 50, height: 48 }), [new Uint16Array(2400).fill(2)]),
+      await makeBand('other', makeGrid(), [new Uint16Array(2400).fill(3)]),
+    ];
+    const held = await tight.open(old);
+    copyFileSync(replacement, old);
+    await tight.open(other);
+    await expect(held.readWindow(0, 0, 0, 60, 1)).rejects.toThrow(/changed/);
+    const fresh = await tight.open(old);
+    expect(fresh.grid.width).toBe(50);
+    expect((await fresh.readWindow(0, 0, 0, 1, 1))[0]).toBe(2);
+    await tight.close();
   });
 
   it('says so when a file is missing or is no band file', async () => {
