@@ -4,7 +4,7 @@ import { Button } from '../../components/ui/button.tsx';
 import { Dialog } from '../../components/ui/dialog.tsx';
 import { sayDone } from '../../components/ui/toaster.tsx';
 import { ProblemError } from '../../lib/problem-error.ts';
-import { ClassForm, type ClassValues } from './class-form.tsx';
+import { ClassForm, type ClassValues, valuesOf } from './class-form.tsx';
 import { useCreateClass } from './create-class.ts';
 import { nextFreeCode, nextFreeColour } from './next-class.ts';
 import { useUpdateClass } from './update-class.ts';
@@ -116,7 +116,7 @@ function EditDialog({ projectId, classes, landClass, onClose }: ClassDialogProps
     >
       <ClassForm
         formId={FORM_ID}
-        initial={landClass}
+        initial={valuesOf(landClass)}
         others={classes.filter(({ id }) => id !== landClass.id)}
         error={update.error}
         isPending={update.isPending}

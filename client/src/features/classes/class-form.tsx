@@ -18,6 +18,11 @@ const classFormSchema = createLandClassSchema.extend({
 });
 export type ClassValues = z.output<typeof classFormSchema>;
 
+/** The fields of a class the form edits, without what the server adds. */
+export function valuesOf({ code, name, colour, definition }: LandClass): ClassValues {
+  return { code, name, colour, definition };
+}
+
 interface ClassFormProps {
   formId: string;
   initial: ClassValues;
@@ -57,7 +62,7 @@ export function ClassForm(props: ClassFormProps) {
           isPending={props.isPending}
           onKeepMine={() => props.onKeepMine(schema.parse(getValues()))}
           onTakeTheirs={() => {
-            reset(conflict);
+            reset(valuesOf(conflict));
             props.onTakeTheirs();
           }}
         />
