@@ -12,11 +12,13 @@ function findClientDir(): string | null {
 }
 
 let stopping = false;
+const closing = new AbortController();
 
 /** Closes once the start is through: tables half brought up to date would have to be mended by hand. */
 async function stopAfter(starting: Promise<RunningServer>): Promise<void> {
   if (stopping) return;
   stopping = true;
+  closing.abort();
   try {
     await (await starting).stop();
     process.exit(0);
@@ -32,7 +34,10 @@ async function main(): Promise<void> {
   for (const signal of ['SIGINT', 'SIGTERM'] as const) process.on(signal, () => void stopAfter(starting));
   const server = await starting;
   if (stopping) return;
-  const lines = [...(await inviteFirstAdmin(server.app)), ...(config.demo ? await loadDemoOnce(server.app) : [])];
+  const lines = [
+    ...(await inviteFirstAdmin(server.app)),
+    ...(config.demo ? await loadDemoOnce(server.app, console.log, closing.signal) : []),
+  ];
   console.log([`Groundsel is open at ${config.publicUrl}`, ...lines].join('\n'));
 }
 

@@ -90,6 +90,11 @@ export async function deleteProject(app: App, id: string, confirmName: string): 
       errors: [{ path: 'confirmName', message: 'Type the project’s name exactly.' }],
     });
   }
+  await deleteProjectWhole(app, id);
+}
+
+/** Removes a project, stops its jobs and removes its files. */
+export async function deleteProjectWhole(app: App, id: string): Promise<void> {
   const jobs = await app.db.getRepository(Job).findBy({ projectId: id, state: In(['queued', 'running']) });
   for (const job of jobs) await app.jobs.cancel(job.id);
   const { sceneIds, runIds } = await app.db.transaction((manager) => deleteRows(manager, id));
