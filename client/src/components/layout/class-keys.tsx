@@ -18,6 +18,8 @@ export interface ClassKeysProps {
   target: number | null;
   selectedId: string | null;
   onSelect: (id: string) => void;
+  /** What pressing a key does: "Class to draw". */
+  label?: string;
 }
 
 /** The digit of a class by its place: 1–9, then 0; null from the eleventh on. */
@@ -26,11 +28,11 @@ export function classDigit(position: number): string | null {
 }
 
 /** The classes as keys: digit, swatch, name and tally against the target. Bind the digits with useKeys and classDigit. */
-export function ClassKeys({ keys, target, selectedId, onSelect }: ClassKeysProps) {
+export function ClassKeys({ keys, target, selectedId, onSelect, label = 'Class to draw' }: ClassKeysProps) {
   return (
     <div
       role="group"
-      aria-label="Class to draw"
+      aria-label={label}
       className="grid auto-cols-[minmax(60px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
     >
       {keys.map((key) => {

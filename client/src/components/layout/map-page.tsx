@@ -8,12 +8,14 @@ export interface MapPageProps {
   map: ReactNode;
   /** The one strip of tools at the bottom edge. */
   strip?: ReactNode;
+  /** A list beside the map, between the rail and it. */
+  list?: ReactNode;
   /** What is selected: a Slip. null closes it. */
   slip?: ReactNode;
 }
 
 /** A map that takes everything right of the rail; nothing floats at its top left. */
-export function MapPage({ header, map, strip, slip }: MapPageProps) {
+export function MapPage({ header, map, strip, list, slip }: MapPageProps) {
   const stripRef = useRef<HTMLDivElement>(null);
   const [stripHeight, setStripHeight] = useState(0);
   const hasStrip = Boolean(strip);
@@ -30,6 +32,7 @@ export function MapPage({ header, map, strip, slip }: MapPageProps) {
     <>
       {header}
       <div className="flex min-h-0 grow max-sm:min-h-[70dvh]">
+        {list}
         <div className="relative isolate min-w-0 grow bg-deep">
           <div className="absolute inset-0" style={foot}>
             {map}

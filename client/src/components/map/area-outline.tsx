@@ -1,23 +1,35 @@
-import { geoJSON } from 'leaflet';
+import { type PathOptions, geoJSON, svg } from 'leaflet';
 import { useEffect } from 'react';
 import { useMap } from 'react-leaflet';
 import type { ArealGeometry } from '../../../../shared/contracts/geometry.ts';
 
-/** A dotted outline that takes no presses: the study area, a footprint. */
-export function AreaOutline({ geometry, label }: { geometry: ArealGeometry | null; label?: string }) {
+export interface AreaOutlineProps {
+  geometry: ArealGeometry | null;
+  /** Stands at the outline for as long as it is there. */
+  label?: string;
+}
+
+/** A dotted outline that takes no presses: the study area, a footprint, an earlier version. */
+export function AreaOutline({ geometry, label }: AreaOutlineProps) {
   const map = useMap();
   useEffect(() => {
     if (!geometry) return undefined;
-    const ground = { interactive: false, fill: false } as const;
+    // Of SVG: a second canvas would lie over the polygons' and take their presses.
+    const renderer = svg();
+    const line = (style: PathOptions) =>
+      geoJSON(geometry, {
+        interactive: false,
+        style: { fill: false, renderer, ...style } as PathOptions,
+      });
     // Dark below light: it is seen on snow as well as on water.
-    const dark = geoJSON(geometry, { style: { ...ground, color: '#1e2a26', weight: 4, opacity: 0.45 } });
-    const light = geoJSON(geometry, { style: { ...ground, color: '#fffdf8', weight: 2, dashArray: '2 6' } });
-    if (label) light.bindTooltip(label, { className: 'map-note' });
-    dark.addTo(map);
+    const dark = line({ color: '#1e2a26', weight: 4, opacity: 0.45 }).addTo(map);
+    const light = line({ color: '#fffdf8', weight: 2, dashArray: '2 6' });
+    if (label) light.bindTooltip(label, { permanent: true, direction: 'center', className: 'map-note' });
     light.addTo(map);
     return () => {
       dark.remove();
       light.remove();
+      renderer.remove();
     };
   }, [geometry, label, map]);
   return null;

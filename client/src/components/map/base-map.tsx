@@ -29,7 +29,6 @@ export function BaseMap({ label, bounds, readoutNote, maxZoom = 18, onReady, chi
       minZoom={3}
       zoomControl={false}
       attributionControl={false}
-      preferCanvas
       keyboard
       // Leaflet's zoom steps would blur pixels between levels; a still map is also what reduced motion asks for.
       zoomAnimation={false}

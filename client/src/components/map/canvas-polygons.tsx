@@ -1,5 +1,5 @@
 import type { Feature, FeatureCollection, MultiPolygon, Polygon } from 'geojson';
-import { type GeoJSON as GeoJsonLayer, type Path, type PathOptions, canvas, geoJSON } from 'leaflet';
+import { type Canvas, type GeoJSON as GeoJsonLayer, type PathOptions, canvas, geoJSON } from 'leaflet';
 import { useEffect, useRef } from 'react';
 import { useMap } from 'react-leaflet';
 
@@ -19,36 +19,46 @@ type PolygonFeature = Feature<Polygon | MultiPolygon, PolygonProperties>;
 export interface CanvasPolygonsProps {
   polygons: PolygonCollection;
   selectedId?: string | null;
+  /** Marked as the selected one is: several at once. */
+  highlightedIds?: readonly string[];
   /** Drawn by somebody else for now (the one being edited). */
   hiddenId?: string | null;
-  onSelect?: (id: string) => void;
+  /** Without it the polygons are still: presses and the pointer go to what lies below. */
+  onSelect?: ((id: string) => void) | undefined;
   fillOpacity?: number;
 }
+
+const NONE: readonly string[] = [];
 
 /** Read-only polygons on one canvas, thousands of them; the selected one is gold over ink. */
 export function CanvasPolygons({
   polygons,
   selectedId = null,
+  highlightedIds = NONE,
   hiddenId = null,
   onSelect,
   fillOpacity = 0.28,
 }: CanvasPolygonsProps) {
   const map = useMap();
   const select = useRef(onSelect);
+  const renderer = useRef<Canvas>(undefined);
+  const isStill = !onSelect;
   useEffect(() => {
     select.current = onSelect;
   });
 
   useEffect(() => {
-    const renderer = canvas({ padding: 0.3, tolerance: 3 });
-    const shown = polygons.features.filter((feature) => feature.properties.id !== hiddenId);
+    const drawn = canvas({ padding: 0.3, tolerance: 3 });
+    renderer.current = drawn;
     const layer: GeoJsonLayer<PolygonProperties, Polygon | MultiPolygon> = geoJSON<
       PolygonProperties,
       Polygon | MultiPolygon
-    >({ ...polygons, features: shown } as PolygonCollection, {
+    >(visible(polygons, hiddenId), {
+      interactive: !isStill,
       // The canvas renderer is read from each path's own options.
-      style: (feature) => ({ ...restingStyle(feature?.properties, fillOpacity), renderer }) as PathOptions,
+      style: (feature) => ({ ...restingStyle(feature?.properties, fillOpacity), renderer: drawn }) as PathOptions,
       onEachFeature: (feature, path) => {
+        if (isStill) return;
         path.on('click', (event) => {
           event.originalEvent.stopPropagation();
           select.current?.(feature.properties.id);
@@ -57,16 +67,34 @@ export function CanvasPolygons({
           path.bindTooltip(feature.properties.label, { sticky: true, className: 'map-note' });
       },
     }).addTo(map);
-    const chosen = shown.filter((feature) => feature.properties.id === selectedId);
-    const outline = chosen.map((feature) => selectionOutline(feature, renderer).addTo(map));
+    // The canvas itself would otherwise still be what the pointer meets.
+    const ground = drawn.getPane()?.lastElementChild;
+    if (isStill && ground instanceof HTMLCanvasElement) ground.style.pointerEvents = 'none';
     return () => {
-      for (const part of outline) part.remove();
       layer.remove();
-      renderer.remove();
+      drawn.remove();
+      renderer.current = undefined;
     };
-  }, [polygons, hiddenId, selectedId, fillOpacity, map]);
+  }, [polygons, hiddenId, fillOpacity, isStill, map]);
+
+  const marked = [...highlightedIds, selectedId].filter((id) => id !== null).join(' ');
+  useEffect(() => {
+    const ids = new Set(marked.split(' '));
+    const outlines = visible(polygons, hiddenId)
+      .features.filter((feature) => ids.has(feature.properties.id))
+      .map((feature) => selectionOutline(feature, renderer.current).addTo(map));
+    return () => {
+      for (const outline of outlines) outline.remove();
+    };
+    // Drawn again whenever the polygons are, to stay above them.
+  }, [marked, polygons, hiddenId, fillOpacity, isStill, map]);
 
   return null;
+}
+
+function visible(polygons: PolygonCollection, hiddenId: string | null): PolygonCollection {
+  if (hiddenId === null) return polygons;
+  return { ...polygons, features: polygons.features.filter((feature) => feature.properties.id !== hiddenId) };
 }
 
 function restingStyle(properties: PolygonProperties | undefined, fillOpacity: number): PathOptions {
@@ -82,7 +110,7 @@ function restingStyle(properties: PolygonProperties | undefined, fillOpacity: nu
 }
 
 /** Ink below, gold above, the class's colour stronger inside: not by colour alone, the line is also twice as wide. */
-function selectionOutline(feature: PolygonFeature, renderer: Path['options']['renderer']): GeoJsonLayer {
+function selectionOutline(feature: PolygonFeature, renderer: Canvas | undefined): GeoJsonLayer {
   const group = geoJSON(feature, {
     interactive: false,
     style: {

@@ -1,0 +1,16 @@
+import type { DrawTool } from '../../components/map/drawing-modes.ts';
+
+export type DeskTool = 'select' | 'inspect' | DrawTool;
+
+/** The tool when it draws, else null. */
+export function drawToolOf(tool: DeskTool): DrawTool | null {
+  return tool === 'select' || tool === 'inspect' ? null : tool;
+}
+
+export const DESK_TOOLS: readonly { tool: DeskTool; label: string; key: string; draws: boolean }[] = [
+  { tool: 'polygon', label: 'Polygon', key: 'P', draws: true },
+  { tool: 'rectangle', label: 'Rectangle', key: 'R', draws: true },
+  { tool: 'circle', label: 'Circle', key: 'C', draws: true },
+  { tool: 'select', label: 'Select', key: 'V', draws: false },
+  { tool: 'inspect', label: 'Inspect pixel', key: 'I', draws: false },
+];

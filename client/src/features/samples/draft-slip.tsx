@@ -1,0 +1,128 @@
+import type { LandClass } from '../../../../shared/contracts/land-class.ts';
+import { confidenceSchema } from '../../../../shared/contracts/sample.ts';
+import { Facts, Slip } from '../../components/layout/slip.tsx';
+import { Button } from '../../components/ui/button.tsx';
+import { Callout } from '../../components/ui/callout.tsx';
+import { ClassSwatch } from '../../components/ui/class-swatch.tsx';
+import { ErrorState } from '../../components/ui/error-state.tsx';
+import { Field } from '../../components/ui/field.tsx';
+import { Kbd } from '../../components/ui/kbd.tsx';
+import { Segmented } from '../../components/ui/segmented.tsx';
+import { Select } from '../../components/ui/select.tsx';
+import { TextArea } from '../../components/ui/text-input.tsx';
+import { formatSince } from '../../lib/format-date.ts';
+import { formatHectares, formatNumber } from '../../lib/format.ts';
+import type { ProblemError } from '../../lib/problem-error.ts';
+import { CONFIDENCE_TEXT } from './confidence-text.ts';
+import { type Draft, isUnchanged } from './draft.ts';
+import type { useMeasure } from './measure-query.ts';
+import { RefusalNote } from './refusal-note.tsx';
+import { SpectrumBlock } from './spectrum-block.tsx';
+
+export interface DraftSlipProps {
+  draft: Draft;
+  classes: readonly LandClass[];
+  measure: ReturnType<typeof useMeasure>;
+  /** The drawing comes from before a reload. */
+  isFromBefore: boolean;
+  isSaving: boolean;
+  error: ProblemError | null;
+  onChange: (draft: Draft) => void;
+  onSave: () => void;
+  onDiscard: () => void;
+}
+
+/** A drawing not saved yet: what is inside, its class, confidence and note. */
+export function DraftSlip(props: DraftSlipProps) {
+  const { draft, classes, measure, isFromBefore, isSaving, error, onChange, onSave, onDiscard } = props;
+  const landClass = classes.find((one) => one.id === draft.classId);
+  const refusal = measure.data?.refusal ?? null;
+  const isSame = isUnchanged(draft);
+  return (
+    <Slip
+      title={draft.base ? `Sample ${draft.base.number}, changing` : 'New sample'}
+      mark={landClass && <ClassSwatch colour={landClass.colour} position={landClass.position} />}
+      note={`Not saved yet · begun ${formatSince(draft.startedAt)}`}
+      footer={
+        <>
+          <Button onClick={onDiscard}>
+            {draft.base ? 'Leave as it was' : 'Discard'} <Kbd>Esc</Kbd>
+          </Button>
+          <Button
+            kind="strong"
+            onClick={onSave}
+            isPending={isSaving}
+            pendingLabel="Saving…"
+            disabled={refusal !== null}
+            aria-keyshortcuts="Enter"
+          >
+            {draft.base ? 'Save changes' : 'Save sample'} ↵
+          </Button>
+        </>
+      }
+    >
+      {isFromBefore && (
+        <Callout tone="beware" title="Kept from before.">
+          This drawing was not saved when the page was left. Save it or discard it.
+        </Callout>
+      )}
+      <SpectrumBlock measure={measure} name="This drawing" colour={landClass?.colour ?? 'var(--ink)'} />
+      {refusal && <RefusalNote refusal={refusal} />}
+      {error && <ErrorState error={error} isInline />}
+      {measure.data && <MeasureFacts measure={measure.data} isOld={measure.isPlaceholderData} />}
+      <div className="space-y-3 border-t border-line pt-3">
+        <Field label="Class">
+          <Select
+            value={draft.classId}
+            onChange={(classId) => onChange({ ...draft, classId })}
+            options={classes.map((one) => ({
+              value: one.id,
+              label: one.name,
+              mark: <ClassSwatch colour={one.colour} position={one.position} />,
+            }))}
+          />
+        </Field>
+        <div>
+          <p className="mb-1 text-sm font-medium">Confidence</p>
+          <Segmented
+            label="Confidence"
+            value={draft.confidence}
+            onChange={(confidence) => onChange({ ...draft, confidence })}
+            options={confidenceSchema.options.map((value) => ({ value, label: CONFIDENCE_TEXT[value] }))}
+          />
+        </div>
+        <Field label="Note" isOptional>
+          <TextArea
+            rows={2}
+            maxLength={2_000}
+            value={draft.note}
+            placeholder="What was seen, and how it is known"
+            onChange={(event) => onChange({ ...draft, note: event.target.value })}
+            onKeyDown={(event) => {
+              if (event.key === 'Enter' && (event.ctrlKey || event.metaKey)) onSave();
+            }}
+          />
+        </Field>
+      </div>
+      {draft.base && isSame && <p className="text-xs text-ink-soft">Nothing is changed yet.</p>}
+    </Slip>
+  );
+}
+
+/** How much an outline holds. */
+function MeasureFacts({ measure, isOld }: { measure: MeasureData; isOld: boolean }) {
+  const facts = [
+    { name: 'Pixels (centre inside)', value: formatNumber(measure.pixelCount) },
+    ...(measure.nodataPixels > 0
+      ? [{ name: 'Without data, left out', value: formatNumber(measure.nodataPixels) }]
+      : []),
+    { name: 'Area', value: formatHectares(measure.areaHa) },
+  ];
+  return (
+    <div aria-busy={isOld} className={isOld ? 'opacity-60' : undefined}>
+      <Facts facts={facts} />
+    </div>
+  );
+}
+
+type MeasureData = NonNullable<ReturnType<typeof useMeasure>['data']>;

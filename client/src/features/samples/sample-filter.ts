@@ -1,0 +1,40 @@
+import type { LandClass } from '../../../../shared/contracts/land-class.ts';
+import type { Confidence, Sample } from '../../../../shared/contracts/sample.ts';
+
+export interface SampleFilter {
+  text: string;
+  classId: string | null;
+  authorId: string | null;
+  confidence: Confidence | null;
+}
+
+export const NO_FILTER: SampleFilter = { text: '', classId: null, authorId: null, confidence: null };
+
+export function isFiltering(filter: SampleFilter): boolean {
+  return filter.text.trim() !== '' || Boolean(filter.classId ?? filter.authorId ?? filter.confidence);
+}
+
+/** The samples a filter lets through. The text is looked for in the number, the class's name, the author and the note. */
+export function filterSamples(
+  samples: readonly Sample[],
+  filter: SampleFilter,
+  classes: ReadonlyMap<string, LandClass>,
+): Sample[] {
+  const words = filter.text.trim().toLowerCase().split(/\s+/).filter(Boolean);
+  return samples.filter((sample) => {
+    if (filter.classId && sample.classId !== filter.classId) return false;
+    if (filter.authorId && sample.createdBy?.id !== filter.authorId) return false;
+    if (filter.confidence && sample.confidence !== filter.confidence) return false;
+    if (words.length === 0) return true;
+    const className = classes.get(sample.classId)?.name ?? '';
+    const text = `${sample.number} ${className} ${sample.createdBy?.name ?? ''} ${sample.note}`.toLowerCase();
+    return words.every((word) => text.includes(word));
+  });
+}
+
+/** Who drew the samples, once each, by name. */
+export function sampleAuthors(samples: readonly Sample[]): { id: string; name: string }[] {
+  const authors = new Map<string, { id: string; name: string }>();
+  for (const { createdBy } of samples) if (createdBy) authors.set(createdBy.id, createdBy);
+  return [...authors.values()].sort((first, second) => first.name.localeCompare(second.name));
+}

@@ -1,0 +1,81 @@
+import { classDigit } from '../../components/layout/class-keys.tsx';
+import { isOnControl } from '../../components/map/crosshair.tsx';
+import { type KeyMap, useKeys } from '../../lib/keys.ts';
+import { drawToolOf } from './desk-tool.ts';
+import type { Desk } from './use-desk.ts';
+
+/** The desk's shortcuts; KeyList prints them. */
+export function useDeskKeys(desk: Desk, canSave: boolean): void {
+  const { editor, draft, selected, canDraw } = desk;
+  const isDrawing = () => editor.current?.isDrawing() ?? false;
+
+  const undo = () => {
+    if (!editor.current?.undoCorner()) desk.undo();
+  };
+  const redo = () => {
+    if (!editor.current?.redoCorner()) desk.redo();
+  };
+  const escape = () => {
+    if (isDrawing()) editor.current?.leave();
+    else if (draft) desk.discard();
+    else if (desk.probe) desk.setProbe(null);
+    else if (desk.version) desk.setVersion(null);
+    else if (desk.selected || desk.highlightedIds.length > 0) desk.select(null);
+    else desk.chooseTool('select');
+  };
+  const enter = (event: KeyboardEvent) => {
+    if (isOnControl(event)) return false;
+    if (isDrawing()) editor.current?.close();
+    else if (draft && canSave) void desk.save(draft);
+    else return false;
+    return true;
+  };
+  const erase = () => {
+    if (isDrawing()) editor.current?.undoCorner();
+    else if (draft?.base === null) desk.discard();
+    else if (selected?.abilities.edit) void desk.erase(selected);
+  };
+
+  const classKeys: KeyMap = {};
+  for (const { id, position } of desk.classes) {
+    const digit = classDigit(position);
+    if (digit) classKeys[digit] = () => desk.chooseClass(id);
+  }
+  const drawKeys: KeyMap = {
+    p: () => desk.chooseTool('polygon'),
+    r: () => desk.chooseTool('rectangle'),
+    c: () => desk.chooseTool('circle'),
+    e: () => selected?.abilities.edit && desk.edit(selected),
+    Enter: enter,
+    Delete: erase,
+    Backspace: () => editor.current?.undoCorner(),
+    'mod+z': undo,
+    'mod+shift+z': redo,
+    'mod+y': redo,
+  };
+  useKeys({
+    ...classKeys,
+    ...(canDraw && drawKeys),
+    v: () => desk.chooseTool('select'),
+    i: () => desk.chooseTool('inspect'),
+    m: () => desk.setIsListOpen(!desk.isListOpen),
+    Escape: escape,
+    '?': () => desk.setIsKeyListOpen(true),
+  });
+}
+
+/** What the map's line of help says for the tool in hand; null when there is nothing to add. */
+export function toolHelp(desk: Pick<Desk, 'tool' | 'draft' | 'canDraw'>): string | null {
+  if (desk.draft)
+    return 'Drag corners or the whole outline · a small gold point adds a corner · right press takes one out';
+  switch (drawToolOf(desk.tool)) {
+    case 'polygon':
+      return 'Press for each corner · Enter or a press on the first corner closes';
+    case 'rectangle':
+      return 'Press at one corner, then at the one across';
+    case 'circle':
+      return 'Press in the middle, then at the edge';
+    default:
+      return desk.tool === 'inspect' ? 'Press a pixel for its values in every band' : null;
+  }
+}

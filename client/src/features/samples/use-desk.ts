@@ -1,0 +1,170 @@
+import { useMemo, useRef, useState } from 'react';
+import { useSearchParams } from 'react-router-dom';
+import type { Polygon } from '../../../../shared/contracts/geometry.ts';
+import type { LandClass } from '../../../../shared/contracts/land-class.ts';
+import type { Project } from '../../../../shared/contracts/project.ts';
+import type { Confidence, Sample, SampleVersion } from '../../../../shared/contracts/sample.ts';
+import type { Scene } from '../../../../shared/contracts/scene.ts';
+import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
+import type { ZoomTarget } from '../../components/map/zoom-to.tsx';
+import type { Place } from '../../lib/project/probe-query.ts';
+import type { DeskTool } from './desk-tool.ts';
+import { type Draft, draftOfSample, isSameOutline, newDraft } from './draft.ts';
+import { polygonBounds } from './polygon-bounds.ts';
+import { NO_FILTER, filterSamples } from './sample-filter.ts';
+import { useDeskActs } from './use-desk-acts.ts';
+import { useStoredDraft } from './use-stored-draft.ts';
+
+export interface DeskInput {
+  project: Project;
+  viewerId: string;
+  scenes: readonly Scene[];
+  classes: readonly LandClass[];
+  samples: readonly Sample[];
+}
+
+/** All that is open on the sampling desk, and what can be done with it. */
+export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInput) {
+  const [search, setSearch] = useSearchParams();
+  const canDraw = project.abilities.drawSamples;
+  const { draft, setDraft, isFromBefore } = useStoredDraft(
+    project.id,
+    viewerId,
+    ({ sceneId, classId }) =>
+      canDraw && scenes.some(({ id }) => id === sceneId) && classes.some(({ id }) => id === classId),
+  );
+  const linked = useRef(search.get('sample') ?? search.get('samples'));
+  const linkedIds = linked.current?.split(',') ?? [];
+  const [sceneId, setSceneId] = useState(
+    draft?.sceneId ?? samples.find(({ id }) => id === linkedIds[0])?.sceneId ?? scenes[0]!.id,
+  );
+  const [tool, setTool] = useState<DeskTool>('select');
+  const [classId, setClassId] = useState(draft?.classId ?? classes[0]!.id);
+  const [confidence, setConfidence] = useState<Confidence>('medium');
+  const [probe, setProbe] = useState<Place | null>(null);
+  const [filter, setFilter] = useState(NO_FILTER);
+  const [isListOpen, setIsListOpen] = useState(false);
+  const [isKeyListOpen, setIsKeyListOpen] = useState(false);
+  const [version, setVersion] = useState<SampleVersion | null>(null);
+  const [zoom, setZoom] = useState<ZoomTarget | null>(() => {
+    const places = draft
+      ? [draft.geometry]
+      : samples.filter(({ id }) => linkedIds.includes(id)).map(({ geometry }) => geometry);
+    return zoomTarget(places, 'fit');
+  });
+  const editor = useRef<ShapeEditorHandle>(null);
+
+  const byId = useMemo(() => new Map(classes.map((one) => [one.id, one])), [classes]);
+  const sceneSamples = useMemo(() => samples.filter((one) => one.sceneId === sceneId), [samples, sceneId]);
+  const shown = useMemo(() => filterSamples(sceneSamples, filter, byId), [sceneSamples, filter, byId]);
+  const selectedId = search.get('sample');
+  const selected = samples.find(({ id }) => id === selectedId) ?? null;
+  const highlighted = search.get('samples');
+  const highlightedIds = useMemo(() => highlighted?.split(',') ?? [], [highlighted]);
+
+  const select = (id: string | null) => {
+    setVersion(null);
+    setProbe(null);
+    setSearch(
+      (before) => {
+        const next = new URLSearchParams(before);
+        if (id) next.set('sample', id);
+        else next.delete('sample');
+        if (!id) next.delete('samples');
+        return next;
+      },
+      { replace: true },
+    );
+  };
+  const acts = useDeskActs({ projectId: project.id, draft, setDraft, onSelect: select });
+  const openDraft = (next: Draft) => {
+    setProbe(null);
+    setVersion(null);
+    setDraft(next);
+  };
+  const showPlace = (geometry: Polygon) => setZoom(zoomTarget([geometry], 'show'));
+
+  return {
+    ...acts,
+    project,
+    canDraw,
+    scene: scenes.find(({ id }) => id === sceneId) ?? scenes[0]!,
+    classes,
+    byId,
+    tool,
+    classId: draft?.classId ?? classId,
+    draft,
+    isFromBefore,
+    selected: draft ? null : selected,
+    highlightedIds,
+    probe,
+    version,
+    zoom,
+    filter,
+    shown,
+    sceneSamples,
+    isListOpen,
+    isKeyListOpen,
+    editor,
+    select,
+    setFilter,
+    setIsListOpen,
+    setIsKeyListOpen,
+    setProbe,
+    setVersion: (next: SampleVersion | null) => {
+      setVersion(next);
+      if (next) showPlace(next.geometry);
+    },
+    chooseScene: (id: string) => {
+      if (draft) return;
+      select(null);
+      setSceneId(id);
+    },
+    chooseTool: (next: DeskTool) => {
+      editor.current?.leave();
+      setTool(next);
+      if (next !== 'inspect') setProbe(null);
+    },
+    chooseClass: (id: string) => {
+      setClassId(id);
+      if (draft) setDraft({ ...draft, classId: id });
+    },
+    changeDraft: (next: Draft) => {
+      setClassId(next.classId);
+      if (draft && next.confidence !== draft.confidence) setConfidence(next.confidence);
+      acts.clearError();
+      setDraft(next);
+    },
+    drawn: (shape: Polygon) => {
+      const next = newDraft(sceneId, classId, shape, confidence);
+      openDraft(next);
+      acts.noteDrawn(next);
+      showPlace(shape);
+    },
+    shaped: (shape: Polygon) => {
+      if (!draft || isSameOutline(draft.geometry, shape)) return;
+      acts.noteShaped(draft.geometry, shape);
+      acts.clearError();
+      setDraft({ ...draft, geometry: shape });
+    },
+    edit: (sample: Sample) => {
+      openDraft(draftOfSample(sample));
+      setClassId(sample.classId);
+      showPlace(sample.geometry);
+    },
+    goTo: (sample: Sample) => {
+      if (draft) return;
+      select(sample.id);
+      setZoom(zoomTarget([sample.geometry], 'fit'));
+    },
+  };
+}
+
+export type Desk = ReturnType<typeof useDesk>;
+
+let turns = 0;
+function zoomTarget(outlines: readonly Polygon[], kind: ZoomTarget['kind']): ZoomTarget | null {
+  const bounds = polygonBounds(outlines);
+  turns += 1;
+  return bounds && { bounds, kind, turn: turns };
+}

@@ -1,0 +1,136 @@
+import { List, PenTool } from 'lucide-react';
+import type { LandClass } from '../../../../shared/contracts/land-class.ts';
+import type { Sample } from '../../../../shared/contracts/sample.ts';
+import type { Scene } from '../../../../shared/contracts/scene.ts';
+import { MapPage } from '../../components/layout/map-page.tsx';
+import { PageHeader } from '../../components/layout/page-header.tsx';
+import { CompositeControl } from '../../components/map/composite-control.tsx';
+import { SceneChoice } from '../../components/map/scene-choice.tsx';
+import { StretchControl } from '../../components/map/stretch-control.tsx';
+import { Button } from '../../components/ui/button.tsx';
+import { ConflictDialog } from '../../features/samples/conflict-dialog.tsx';
+import { DeskMap } from '../../features/samples/desk-map.tsx';
+import { DeskSlip } from '../../features/samples/desk-slip.tsx';
+import { DeskStrip } from '../../features/samples/desk-strip.tsx';
+import { drawToolOf } from '../../features/samples/desk-tool.ts';
+import { KeyList } from '../../features/samples/key-list.tsx';
+import { useDraftMeasure } from '../../features/samples/measure-query.ts';
+import { SampleList } from '../../features/samples/sample-list.tsx';
+import { useDesk } from '../../features/samples/use-desk.ts';
+import { useDeskKeys } from '../../features/samples/use-desk-keys.ts';
+import { useProject } from '../../lib/project/project-context.ts';
+import { useSceneView } from '../../lib/use-scene-view.ts';
+
+export interface SamplingDeskProps {
+  viewerId: string;
+  /** Ready ones, at least one. */
+  scenes: readonly Scene[];
+  /** At least one. */
+  classes: readonly LandClass[];
+  samples: readonly Sample[];
+}
+
+/** The map with its samples, the key strip, the list and the slip. */
+export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDeskProps) {
+  const project = useProject();
+  const desk = useDesk({ project, viewerId, scenes, classes, samples });
+  const [view, setView] = useSceneView(project.id);
+  const measure = useDraftMeasure(project.id, desk.scene, desk.draft?.geometry ?? null);
+  const refusal = desk.draft ? (measure.data?.refusal ?? null) : null;
+  useDeskKeys(desk, refusal === null);
+  const focusMap = () => document.querySelector<HTMLElement>('.leaflet-container')?.focus({ preventScroll: true });
+  const isDrawing = drawToolOf(desk.tool) !== null;
+  return (
+    <>
+      <MapPage
+        header={
+          <PageHeader
+            title="Sampling desk"
+            action={
+              <>
+                <Button
+                  size="sm"
+                  kind={desk.isListOpen ? 'strong' : 'secondary'}
+                  aria-pressed={desk.isListOpen}
+                  aria-keyshortcuts="M"
+                  icon={<List aria-hidden />}
+                  onClick={() => desk.setIsListOpen(!desk.isListOpen)}
+                >
+                  List
+                </Button>
+                {desk.canDraw && (
+                  <Button
+                    kind="primary"
+                    icon={<PenTool aria-hidden />}
+                    disabled={desk.draft !== null}
+                    aria-keyshortcuts="P"
+                    onClick={() => {
+                      desk.chooseTool(isDrawing ? 'select' : 'polygon');
+                      focusMap();
+                    }}
+                  >
+                    {isDrawing ? 'Stop drawing' : 'Draw sample'}
+                  </Button>
+                )}
+              </>
+            }
+          >
+            <CompositeControl bands={desk.scene.bands} view={view} onChange={setView} />
+            <SceneChoice scenes={scenes} value={desk.scene.id} onChange={desk.chooseScene} />
+            <StretchControl stretch={view.stretch} onChange={(stretch) => setView({ ...view, stretch })} />
+          </PageHeader>
+        }
+        list={
+          desk.isListOpen && (
+            <SampleList
+              samples={desk.sceneSamples}
+              shown={desk.shown}
+              classes={classes}
+              filter={desk.filter}
+              onFilter={desk.setFilter}
+              selectedId={desk.selected?.id ?? null}
+              onSelect={desk.goTo}
+              onClose={() => desk.setIsListOpen(false)}
+            />
+          )
+        }
+        map={<DeskMap desk={desk} view={view} refusal={refusal} />}
+        strip={
+          <DeskStrip
+            canDraw={desk.canDraw}
+            whyNot="You can look but not draw: ask the lead for the labeller role."
+            tool={desk.tool}
+            onTool={(tool) => {
+              desk.chooseTool(tool);
+              focusMap();
+            }}
+            keys={classes.map((one) => ({ ...one, count: one.sampleCount }))}
+            target={project.targetSamplesPerClass}
+            classId={desk.canDraw ? desk.classId : desk.filter.classId}
+            onClass={(id) => {
+              desk.chooseClass(id);
+              focusMap();
+            }}
+            canUndo={desk.canUndo}
+            canRedo={desk.canRedo}
+            onUndo={desk.undo}
+            onRedo={desk.redo}
+            onKeyList={() => desk.setIsKeyListOpen(true)}
+          />
+        }
+        slip={<DeskSlip desk={desk} viewerId={viewerId} scenes={scenes} measure={measure} />}
+      />
+      {desk.conflict && (
+        <ConflictDialog
+          conflict={desk.conflict}
+          classes={classes}
+          isSaving={desk.isBusy}
+          onKeepMine={() => desk.conflict && void desk.keepMine(desk.conflict)}
+          onTakeTheirs={() => desk.conflict && desk.takeTheirs(desk.conflict)}
+          onClose={desk.closeConflict}
+        />
+      )}
+      {desk.isKeyListOpen && <KeyList onClose={() => desk.setIsKeyListOpen(false)} />}
+    </>
+  );
+}
