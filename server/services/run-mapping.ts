@@ -1,4 +1,5 @@
 import { join } from 'node:path';
+import type { ClassifierRecipe } from '../../shared/contracts/run.ts';
 import { runComputeTask, runWatched } from '../jobs/compute/run-compute-task.ts';
 import type { FinishedMap } from '../jobs/compute/tasks.ts';
 import { forEachLimited } from '../jobs/for-each-limited.ts';
@@ -10,8 +11,13 @@ import { runFiles } from './run-files.ts';
 import { planShares } from './run-shares.ts';
 import type { RunWork } from './run-work.ts';
 
-/** Whole rows of blocks, so that each block of a band is decoded once. */
-const STRIP_ROWS = blockSize;
+/**
+ * Rows mapped at a time: whole rows of blocks, so that each block of a band is decoded once; fewer for the slow neighbour search,
+ * beside which decoding a block again costs nothing, so that progress is told and kept more often.
+ */
+function chooseStripRows({ kind }: ClassifierRecipe): number {
+  return kind === 'nearest-neighbours' ? blockSize / 8 : blockSize;
+}
 
 export interface MappedRun extends FinishedMap {
   notes: string[];
@@ -36,7 +42,8 @@ export async function mapRun(work: RunWork, trainingPixels: number): Promise<Map
 async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): Promise<number> {
   const { app, run, scene, signal, report } = work;
   const files = runFiles(run.id);
-  const nStrips = Math.ceil(scene.grid.height / STRIP_ROWS);
+  const stripRows = chooseStripRows(run.recipe.classifier);
+  const nStrips = Math.ceil(scene.grid.height / stripRows);
   const modelPath = await app.files.localPath(files.model);
   const codes = run.classes.map(({ code }) => code);
   const made = new Set(await app.files.list(files.strips));
@@ -48,8 +55,8 @@ async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): 
   };
   say();
   await forEachLimited(missing, app.workers.compute.threads, signal, async (strip, stripSignal) => {
-    const y = strip * STRIP_ROWS;
-    const height = Math.min(STRIP_ROWS, scene.grid.height - y);
+    const y = strip * stripRows;
+    const height = Math.min(stripRows, scene.grid.height - y);
     const deflated = await runComputeTask(
       app.workers.compute,
       'map-strip',

@@ -138,6 +138,8 @@ export async function deleteRun(app: App, run: Run, byId: string): Promise<void>
     await manager.delete(Job, { id: run.jobId });
     await recordActivity(manager, run.projectId, byId, `deleted run ${run.number}`, 'runs');
   });
+  // A probe may still hold the class map open.
+  if (run.result) await app.bands.forget(await app.files.localPath(run.result.mapKey));
   await app.files.remove(runFiles(run.id).root);
   await app.events.publish(run.projectId, { type: 'changed', what: 'runs', id: run.id, by: byId });
 }

@@ -149,4 +149,22 @@ describe('a run whose server is killed', () => {
     const names = await readdir(join(test.config.dataDir, 'files/runs', runId));
     expect(names.sort()).toEqual(['class-map.tif', 'class-map.tif.aux.xml', 'model.bin']);
   }, 150_000);
+
+  it('goes on after an orderly stop as well, from what it had', async () => {
+    await killServer();
+    await startServer(2);
+    const runId = await startRun(await signIn());
+    await waitForFiles(runId, 'parts', 5);
+    server!.kill('SIGTERM');
+    const [code] = (await once(server!, 'exit')) as [number | null];
+    expect(code).toBe(0);
+    const kept = await countFiles(runId, 'parts');
+    expect(kept.length).toBeGreaterThanOrEqual(5);
+    await startServer(2);
+    const agent = await signIn();
+    const resumed = await waitForRun(agent, runId);
+    expect(resumed.job).toMatchObject({ state: 'finished', error: null });
+    const { body } = await agent.get(`/api/v1/projects/${team.project.id}/runs`).expect(200);
+    expect(new Set((body.runs as Run[]).map(({ classMapSha256 }) => classMapSha256)).size).toBe(1);
+  }, 150_000);
 });

@@ -61,16 +61,17 @@ async function readEvents(cookie: string, isLast: (event: ProjectEvent) => boole
     signal: stop.signal,
   });
   const events: ProjectEvent[] = [];
+  const reader = res.body!.pipeThrough(new TextDecoderStream()).getReader();
   let text = '';
-  for await (const part of res.body!.pipeThrough(new TextDecoderStream())) {
-    text += part;
-    const entries = text.split('\n\n');
+  while (!events.some(isLast)) {
+    const { value, done } = await reader.read();
+    if (done) throw new Error('the event stream ended');
+    const entries = (text + value).split('\n\n');
     text = entries.pop()!;
     for (const entry of entries) {
       const data = entry.split('\n').find((line) => line.startsWith('data: '));
       if (data) events.push(projectEventSchema.parse(JSON.parse(data.slice(6))));
     }
-    if (events.some(isLast)) break;
   }
   stop.abort();
   return events;
