@@ -12,6 +12,26 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/classes/classes-page.tsx'), 'ClassesPage'),
   },
   {
+    path: 'samples',
+    lazy: lazyPage(() => import('../pages/samples/samples-page.tsx'), 'SamplesPage'),
+  },
+  {
+    path: 'runs',
+    lazy: lazyPage(() => import('../pages/runs/runs-page.tsx'), 'RunsPage'),
+  },
+  {
+    path: 'runs/new',
+    lazy: lazyPage(() => import('../pages/runs/new-run-page.tsx'), 'NewRunPage'),
+  },
+  {
+    path: 'runs/:runId',
+    lazy: lazyPage(() => import('../pages/run/run-page.tsx'), 'RunPage'),
+  },
+  {
+    path: 'accuracy',
+    lazy: lazyPage(() => import('../pages/accuracy/accuracy-page.tsx'), 'AccuracyPage'),
+  },
+  {
     path: 'handover',
     lazy: lazyPage(() => import('../pages/handover/handover-page.tsx'), 'HandoverPage'),
   },

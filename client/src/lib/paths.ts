@@ -13,9 +13,15 @@ export const paths = {
   scene: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}`,
   classes: (projectId: string) => `/projects/${projectId}/classes`,
   samples: (projectId: string) => `/projects/${projectId}/samples`,
+  /** The sampling desk with these samples shown and the first of them selected. */
+  samplesChosen: (projectId: string, sampleIds: readonly string[]) =>
+    `/projects/${projectId}/samples?samples=${sampleIds.join(',')}`,
   runs: (projectId: string) => `/projects/${projectId}/runs`,
+  /** With `fromRunId`, the recipe of that run is filled in. */
+  newRun: (projectId: string, fromRunId?: string) =>
+    `/projects/${projectId}/runs/new${fromRunId ? `?from=${fromRunId}` : ''}`,
   run: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}`,
-  accuracy: (projectId: string) => `/projects/${projectId}/accuracy`,
+  accuracy: (projectId: string, runId?: string) => `/projects/${projectId}/accuracy${runId ? `?run=${runId}` : ''}`,
   handover: (projectId: string) => `/projects/${projectId}/handover`,
   members: (projectId: string) => `/projects/${projectId}/members`,
 } as const;

@@ -13,6 +13,8 @@ export interface MatrixClass {
   /** For the column's head, when the name is long: "broadleaf". Full names stand upright otherwise. */
   shortName?: string;
   colour: string;
+  /** Place in the scheme, for its pattern; the place in the matrix otherwise. */
+  position?: number;
 }
 
 export interface MatrixCell {
@@ -133,7 +135,11 @@ export function ConfusionMatrixTable({
               <tr key={classes[mappedIndex]?.id}>
                 <th scope="row" className="max-w-44 py-1 pr-2 text-left font-medium text-ink-soft">
                   <span className="flex items-center gap-2 leading-tight">
-                    <ClassSwatch size="sm" colour={classes[mappedIndex]!.colour} position={mappedIndex} />
+                    <ClassSwatch
+                      size="sm"
+                      colour={classes[mappedIndex]!.colour}
+                      position={classes[mappedIndex]!.position ?? mappedIndex}
+                    />
                     {classes[mappedIndex]?.name}
                   </span>
                 </th>

@@ -11,6 +11,8 @@ export interface ProgressBarProps {
   unit?: string;
   /** How a count prints, when it is no plain number (bytes). */
   formatAmount?: (amount: number) => string;
+  /** Said instead of “done of total”. */
+  countsText?: string;
   secondsLeft?: number | null | undefined;
   /** A failed or stopped bar keeps its place but turns rust. */
   tone?: 'working' | 'danger' | 'ok';
@@ -28,13 +30,14 @@ export function ProgressBar({
   total,
   unit,
   formatAmount = formatNumber,
+  countsText,
   secondsLeft,
   tone = 'working',
   action,
   className,
 }: ProgressBarProps) {
   const share = total > 0 ? Math.min(1, Math.max(0, done / total)) : 0;
-  const counts = `${formatAmount(done)} of ${formatAmount(total)}${unit ? ` ${unit}` : ''}`;
+  const counts = countsText ?? `${formatAmount(done)} of ${formatAmount(total)}${unit ? ` ${unit}` : ''}`;
   const left = formatTimeLeft(secondsLeft);
   return (
     <div className={className}>

@@ -1,0 +1,20 @@
+import { useMutation, useQueryClient } from '@tanstack/react-query';
+import { sendRequest } from '../../lib/fetch-json.ts';
+import { projectKey } from '../../lib/project/project-query.ts';
+import { runQuery } from './get-run.ts';
+
+const deleteRun = (runId: string) => sendRequest(`/runs/${runId}`, { method: 'DELETE' });
+
+/** Deletes an ended run with its class map. */
+export function useDeleteRun(projectId: string) {
+  const queryClient = useQueryClient();
+  return useMutation({
+    mutationFn: deleteRun,
+    onSuccess: (_, runId) => {
+      queryClient.removeQueries({ queryKey: runQuery(projectId, runId).queryKey });
+      for (const topic of ['runs', 'accuracy', 'project', 'overview'] as const) {
+        void queryClient.invalidateQueries({ queryKey: projectKey(projectId, topic), exact: topic === 'runs' });
+      }
+    },
+  });
+}

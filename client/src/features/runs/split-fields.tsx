@@ -1,0 +1,71 @@
+import { Controller } from 'react-hook-form';
+import { Field } from '../../components/ui/field.tsx';
+import { NumberInput } from '../../components/ui/number-input.tsx';
+import { Slider } from '../../components/ui/slider.tsx';
+import { FormSection } from './form-section.tsx';
+import { NumberField } from './number-field.tsx';
+import type { RunFormControl } from './run-form-values.ts';
+
+/** What is learned from and what is held out, and how many pixels are drawn. */
+export function SplitFields({ control }: { control: RunFormControl }) {
+  return (
+    <FormSection
+      title="Samples"
+      note="Held out by whole polygon, within each class, drawn by the seed: no pixel of a held-out polygon is learned from."
+    >
+      <HeldOutField control={control} />
+      <div className="grid gap-4 sm:grid-cols-2">
+        <NumberField
+          control={control}
+          name="recipe.maxPixelsPerClass"
+          label="Most training pixels a class"
+          hint="More are thinned at random, so that a common class does not drown the others."
+        />
+        <NumberField
+          control={control}
+          name="recipe.seed"
+          label="Seed"
+          hint="The same seed, recipe and samples give the same map, byte for byte."
+        />
+      </div>
+    </FormSection>
+  );
+}
+
+const percentOf = (share: number) => Math.round(share * 1000) / 10;
+
+function HeldOutField({ control }: { control: RunFormControl }) {
+  return (
+    <Controller
+      control={control}
+      name="recipe.heldOutShare"
+      render={({ field, fieldState }) => {
+        const share = typeof field.value === 'number' ? field.value : null;
+        return (
+          <Field label="Held out for the accuracy" error={fieldState.error?.message}>
+            <div className="flex items-center gap-4">
+              <Slider
+                value={[percentOf(share ?? 0.3)]}
+                onChange={([percent = 30]) => field.onChange(percent / 100)}
+                min={5}
+                max={90}
+                step={5}
+                labels={['Share of each class’s polygons held out']}
+                formatValue={(percent) => `${percent} %`}
+              />
+              <div className="w-28 shrink-0">
+                <NumberInput
+                  ref={field.ref}
+                  unit="%"
+                  value={share === null ? null : percentOf(share)}
+                  onChange={(percent) => field.onChange(percent === null ? null : Math.round(percent * 10) / 1000)}
+                  onBlur={field.onBlur}
+                />
+              </div>
+            </div>
+          </Field>
+        );
+      }}
+    />
+  );
+}
