@@ -6,7 +6,7 @@ const getWelcome = (secret: string, signal: AbortSignal) =>
   fetchJson(`/welcome/${encodeURIComponent(secret)}`, welcomeSchema, { signal });
 
 /** Whom a welcome or reset link is for. */
-export const welcomeQuery = (secret: string) =>
+const welcomeQuery = (secret: string) =>
   queryOptions({
     queryKey: ['welcome', secret],
     queryFn: ({ signal }) => getWelcome(secret, signal),

@@ -28,7 +28,7 @@ export function ColourField({ value, onChange, error, takenBy }: ColourFieldProp
             <label
               key={step.colour}
               title={taken ? `${step.name}, used by ${taken}` : step.name}
-              className="flex cursor-pointer items-center gap-1.5 rounded-md border border-line px-1.5 py-1.5 text-xs hover:bg-sunken has-checked:border-ink has-checked:bg-groundsel-wash has-focus-visible:outline-2 has-focus-visible:outline-offset-1 has-focus-visible:outline-ink"
+              className="flex cursor-pointer items-center gap-1.5 rounded-md border border-line px-1.5 py-1.5 text-2xs hover:bg-sunken has-checked:border-ink has-checked:bg-groundsel-wash has-focus-visible:outline-2 has-focus-visible:outline-offset-1 has-focus-visible:outline-ink"
             >
               <input
                 type="radio"

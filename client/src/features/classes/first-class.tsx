@@ -16,7 +16,7 @@ export function FirstClass({ action }: { action?: ReactNode }) {
     <div className="grid items-start gap-x-14 gap-y-8 lg:grid-cols-[minmax(0,34rem)_minmax(0,26rem)]">
       <EmptyState title="No class yet" action={action}>
         {action
-          ? 'The class scheme is what you and the client agree to map. A run needs at least two classes; most schemes have five to fifteen.'
+          ? 'The class scheme is what you and the client agree to map. A run needs at least two classes; you may add, change and reorder them at any time.'
           : 'The project lead defines the class scheme. Samples can be drawn once there is one.'}
       </EmptyState>
       <section aria-labelledby="class-parts">

@@ -7,7 +7,7 @@ const getOverview = (projectId: string, signal: AbortSignal) =>
   fetchJson(`/projects/${projectId}/overview`, overviewSchema, { signal });
 
 /** Where a project stands: what waits for the viewer, figures, recent activity. */
-export const overviewQuery = (projectId: string) =>
+const overviewQuery = (projectId: string) =>
   queryOptions({
     queryKey: projectKey(projectId, 'overview'),
     queryFn: ({ signal }) => getOverview(projectId, signal),

@@ -5,8 +5,7 @@ import { fetchJson } from '../../lib/fetch-json.ts';
 const getStorage = (signal: AbortSignal) => fetchJson('/site/storage', siteStorageSchema, { signal });
 
 /** What the stored files take, in bytes. */
-export const storageQuery = () =>
-  queryOptions({ queryKey: ['site', 'storage'], queryFn: ({ signal }) => getStorage(signal) });
+const storageQuery = () => queryOptions({ queryKey: ['site', 'storage'], queryFn: ({ signal }) => getStorage(signal) });
 
 export function useStorage() {
   return useQuery(storageQuery());

@@ -1,6 +1,8 @@
+import { Link } from 'react-router-dom';
 import { KAPPA_CAUTION, MAP_CAUTIONS, THERMAL_CAUTION } from '../../../../shared/constants/cautions.ts';
 import { PageHeader } from '../../components/layout/page-header.tsx';
 import { Marked, ReadingPage, Section, Statement } from '../../components/layout/reading-page.tsx';
+import { paths } from '../../lib/paths.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { ClientContents } from './client-contents.tsx';
 
@@ -20,9 +22,22 @@ export function HandoverPage() {
       <Statement
         above={isTeam ? `${project.name} · what ${project.client || 'the client'} sees` : project.name}
         below={
-          isTeam
-            ? 'People with the client role see this page and no draft: no scene, no sample, no run.'
-            : 'The team is at work on it. The map, its areas and its report will be here once they are handed over; you need not do anything.'
+          isTeam ? (
+            <p>
+              People with the client role see this page and no draft: no scene, no sample, no run.{' '}
+              <Link to={paths.members(project.id)} className="link">
+                See who they are
+              </Link>
+            </p>
+          ) : (
+            <p>
+              The team is at work on it. The map, its areas and its report will be here once they are handed over; you
+              need not do anything.{' '}
+              <Link to={paths.projects()} className="link">
+                All your projects
+              </Link>
+            </p>
+          )
         }
       >
         <Marked>Nothing</Marked> has been handed over yet.
