@@ -30,7 +30,7 @@ export async function recordSampleActivity(
 }
 
 /** "drew sample 3" and 4 become "drew 2 samples, 3 to 4"; null when the line says something else. */
-export function mergeDrawn(text: string, number: number): string | null {
+function mergeDrawn(text: string, number: number): string | null {
   const single = /^drew sample (\d+)$/.exec(text);
   const several = /^drew (\d+) samples, (\d+) to \d+$/.exec(text);
   if (single) return `drew 2 samples, ${single[1]} to ${number}`;

@@ -57,7 +57,7 @@ export function drawEmptyTile(): Promise<Uint8Array> {
 }
 
 /** The bands shown when none are named: natural colour, else the first composite whose roles are there, else the first three or one. */
-export function chooseDefaultBands(bands: readonly Band[]): Band[] {
+function chooseDefaultBands(bands: readonly Band[]): Band[] {
   for (const { roles } of COMPOSITES) {
     const found = roles.flatMap((role) => bands.find((band) => band.role === role) ?? []);
     if (found.length === roles.length) return found;

@@ -13,6 +13,7 @@ export interface RasterSpec {
   originX: number;
   originY: number;
   pixelSize: number;
+  /** Empty for a file without one. */
   crs: string;
   /** Names of the bands; empty strings for bands without a description. */
   bandNames: string[];
@@ -69,7 +70,8 @@ export async function makeRaster(path: string, overrides: Partial<RasterSpec> = 
     );
     const ullr = [originX, originY, originX + width * pixelSize, originY - height * pixelSize].map(String);
     await run('gdal_translate', [
-      ...['-q', '-of', 'GTiff', '-a_srs', spec.crs, '-a_ullr', ...ullr],
+      ...['-q', '-of', 'GTiff', '-a_ullr', ...ullr],
+      ...(spec.crs === '' ? [] : ['-a_srs', spec.crs]),
       ...(spec.nodata === null ? [] : ['-a_nodata', String(spec.nodata)]),
       ...(spec.scale === null ? [] : ['-a_scale', String(spec.scale)]),
       ...(spec.offset === null ? [] : ['-a_offset', String(spec.offset)]),
