@@ -1,0 +1,261 @@
+import { randomUUID } from 'node:crypto';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { Job } from '../../server/entities/job.ts';
+import { Membership } from '../../server/entities/membership.ts';
+import { Run } from '../../server/entities/run.ts';
+import { Sample } from '../../server/entities/sample.ts';
+import type { User } from '../../server/entities/user.ts';
+import { routes } from '../../server/routes/index.ts';
+import type { Route } from '../../server/routes/route.ts';
+import { findProject } from '../../server/services/projects.ts';
+import { startRun } from '../../server/services/runs.ts';
+import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
+import { makeRunGround } from '../factories/make-run-ground.ts';
+import { makeUser, PASSWORD } from '../factories/make-user.ts';
+import { openTestApp, type TestApp } from '../factories/test-app.ts';
+import { waitForRun } from '../factories/wait-for-run.ts';
+
+/** Who asks. The labeller drew the sample at hand, the other labeller did not; the admin is a member of nothing. */
+const ACTORS = [
+  'signed out',
+  'outsider',
+  'admin',
+  'client',
+  'labeller',
+  'otherLabeller',
+  'modeller',
+  'reviewer',
+  'lead',
+] as const;
+type Actor = (typeof ACTORS)[number];
+type Outcome = 'in' | 401 | 403 | 404;
+type Row = Record<Actor, Outcome>;
+
+function row(signedOut: Outcome, strangers: Outcome, members: Partial<Row>): Row {
+  const none = { 'signed out': signedOut, outsider: strangers, admin: strangers, client: strangers };
+  return {
+    ...none,
+    labeller: strangers,
+    otherLabeller: strangers,
+    modeller: strangers,
+    reviewer: strangers,
+    lead: strangers,
+    ...members,
+  };
+}
+const forTeam = (outcome: Outcome): Partial<Row> => ({
+  ...{ labeller: outcome, otherLabeller: outcome, modeller: outcome, reviewer: outcome, lead: outcome },
+});
+
+const PUBLIC = row('in', 'in', {});
+/** Open to all, and there is nothing behind a made-up link. */
+const PUBLIC_LINK = row(404, 404, {});
+const ACCOUNT = row(401, 'in', {});
+const SITE_ADMIN = row(401, 404, { admin: 'in' });
+const MEMBERS = row(401, 404, { ...forTeam('in'), client: 'in' });
+const LEAD_KNOWN_TO_CLIENT = row(401, 404, { ...forTeam(403), client: 403, lead: 'in' });
+const TEAM = row(401, 404, forTeam('in'));
+const LEAD = row(401, 404, { ...forTeam(403), lead: 'in' });
+const LEAD_MODELLER = row(401, 404, { ...forTeam(403), lead: 'in', modeller: 'in' });
+const DRAWS = row(401, 404, { ...forTeam(403), lead: 'in', labeller: 'in', otherLabeller: 'in' });
+const MAKER_OR_LEAD = row(401, 404, { ...forTeam(403), lead: 'in', labeller: 'in' });
+const ACCURACY = row(401, 404, { ...forTeam('in'), labeller: 403, otherLabeller: 403 });
+
+/** A row for every route. A route that is added without one fails the test below. */
+const TABLE: Record<string, Row> = {
+  'session.read': PUBLIC,
+  'session.create': PUBLIC,
+  'session.delete': ACCOUNT,
+  'session.devices': ACCOUNT,
+  'session.delete-all': ACCOUNT,
+  'account.rename': ACCOUNT,
+  'account.change-password': ACCOUNT,
+  'account.forgot-password': PUBLIC,
+  'welcome.read': PUBLIC_LINK,
+  'welcome.accept': row(400 as Outcome, 400 as Outcome, {}),
+  'site.accounts.list': SITE_ADMIN,
+  'site.accounts.create': SITE_ADMIN,
+  'site.accounts.update': SITE_ADMIN,
+  'site.accounts.link': SITE_ADMIN,
+  'site.storage.read': SITE_ADMIN,
+  'projects.list': ACCOUNT,
+  'projects.create': ACCOUNT,
+  'projects.read': MEMBERS,
+  'projects.update': LEAD_KNOWN_TO_CLIENT,
+  'projects.delete': LEAD_KNOWN_TO_CLIENT,
+  'projects.overview': TEAM,
+  'projects.set-study-area': LEAD,
+  'members.list': TEAM,
+  'members.add': LEAD,
+  'members.update': LEAD,
+  'members.remove': LEAD,
+  'scenes.list': TEAM,
+  'scenes.create': LEAD_MODELLER,
+  'scenes.read': TEAM,
+  'scenes.update': LEAD_MODELLER,
+  'scenes.delete': LEAD_MODELLER,
+  'scenes.cancel': LEAD_MODELLER,
+  'scenes.tile': TEAM,
+  'scenes.probe': TEAM,
+  'classes.list': TEAM,
+  'classes.create': LEAD,
+  'classes.order': LEAD,
+  'classes.update': LEAD,
+  'classes.delete': LEAD,
+  'samples.list': TEAM,
+  'samples.create': DRAWS,
+  'samples.measure': TEAM,
+  'samples.read': TEAM,
+  'samples.update': MAKER_OR_LEAD,
+  'samples.delete': MAKER_OR_LEAD,
+  'samples.restore': MAKER_OR_LEAD,
+  'samples.history': TEAM,
+  'runs.list': TEAM,
+  'runs.start': LEAD_MODELLER,
+  'runs.check': LEAD_MODELLER,
+  'runs.read': TEAM,
+  'runs.delete': LEAD_MODELLER,
+  'runs.cancel': LEAD_MODELLER,
+  'runs.tile': TEAM,
+  'runs.probe': TEAM,
+  'runs.class-map': TEAM,
+  'runs.class-map-package': TEAM,
+  'accuracy.read': ACCURACY,
+  'accuracy.csv': ACCURACY,
+  'accuracy.cell': ACCURACY,
+  'events.stream': TEAM,
+  'openapi.read': PUBLIC,
+};
+
+let test: TestApp;
+let team: Team;
+let admin: User;
+let params: Record<string, string>;
+let runId = '';
+const cookies = new Map<Actor, string>();
+
+function userOf(actor: Exclude<Actor, 'signed out'>): User {
+  return actor === 'admin' ? admin : team[actor];
+}
+
+async function signIn(actor: Actor): Promise<string> {
+  if (actor === 'signed out') return '';
+  const answer = await fetch(`${test.url}/api/v1/session`, {
+    method: 'POST',
+    headers: { 'Content-Type': 'application/json' },
+    body: JSON.stringify({ email: userOf(actor).email, password: PASSWORD }),
+  });
+  expect(answer.status, `signing in as ${actor}`).toBe(200);
+  return answer.headers.getSetCookie()[0]?.split(';')[0] ?? '';
+}
+
+beforeAll(async () => {
+  test = await openTestApp();
+  team = await makeTeam(test.app);
+  admin = await makeUser(test.app, { siteAdmin: true });
+  const ground = await makeRunGround(test.app, team.project);
+  const sample = ground.samples[0]!;
+  await test.app.db.getRepository(Sample).update({ id: sample.id }, { createdById: team.labeller.id });
+  const project = (await findProject(test.app, team.project.id))!;
+  const run = await startRun(test.app, project, team.modeller.id, { name: '', note: '', recipe: ground.recipe });
+  runId = run.id;
+  expect((await waitForRun(await test.signedIn(team.lead), run.id)).job.state).toBe('finished');
+  const member = await test.app.db.getRepository(Membership).findOneByOrFail({ userId: team.reviewer.id });
+  params = {
+    ...{ projectId: project.id, sceneId: ground.scene.id, classId: ground.classes[0]!.id, sampleId: sample.id, runId },
+    ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
+    ...{ z: '4', x: '7', y: '4' },
+  };
+  for (const actor of ACTORS) cookies.set(actor, await signIn(actor));
+}, 120_000);
+afterAll(() => test.close());
+
+/** A finished run that may be deleted. */
+async function makeSpareRun(): Promise<string> {
+  const runs = test.app.db.getRepository(Run);
+  const run = await runs.findOneByOrFail({ id: runId });
+  const jobs = test.app.db.getRepository(Job);
+  const job = await jobs.findOneByOrFail({ id: run.jobId });
+  const [id, jobId] = [randomUUID(), randomUUID()];
+  await jobs.insert({ ...job, id: jobId, runId: id });
+  await runs.insert({ ...run, id, jobId, number: Math.floor(Math.random() * 1e6) + 1000, result: null } as never);
+  return id;
+}
+
+async function makeSpareMember(): Promise<string> {
+  const user = await makeUser(test.app);
+  await makeMembership(test.app, team.project, user, 'labeller');
+  return (await test.app.db.getRepository(Membership).findOneByOrFail({ userId: user.id })).id;
+}
+
+/** What a route acts on where an allowed request would use it up. */
+const SPARE: Record<string, () => Promise<Record<string, string>>> = {
+  'runs.delete': async () => ({ runId: await makeSpareRun() }),
+  'members.remove': async () => ({ memberId: await makeSpareMember() }),
+};
+/** Queries that make a read complete; bodies stay empty, so that writes end at validation, after authority was decided. */
+const QUERY: Record<string, () => string> = {
+  'scenes.probe': () => '?lon=-15&lat=60',
+  'runs.probe': () => '?lon=-15&lat=60',
+  'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
+};
+
+async function ask(route: Route, actor: Actor): Promise<number> {
+  const own = { ...params, ...(await SPARE[route.id]?.()) };
+  const path = route.path.replace(/:(\w+)/g, (_all, name: string) => own[name] ?? `missing-${name}`);
+  const cookie = route.id.startsWith('session.delete') ? await signIn(actor) : (cookies.get(actor) ?? '');
+  const abort = new AbortController();
+  const answer = await fetch(`${test.url}/api/v1${path}${QUERY[route.id]?.() ?? ''}`, {
+    method: route.method.toUpperCase(),
+    headers: { cookie, ...(route.method === 'get' || route.multipart ? {} : { 'Content-Type': 'application/json' }) },
+    ...(route.method === 'get' || route.multipart ? {} : { body: '{}' }),
+    signal: abort.signal,
+  });
+  abort.abort();
+  return answer.status;
+}
+
+/** Signing out everywhere ends the sessions that the other rows use, so it comes last. */
+const inOrder = routes.toSorted(
+  (a, b) => Number(a.id.startsWith('session.delete')) - Number(b.id.startsWith('session.delete')),
+);
+
+function fits(outcome: Outcome, status: number): boolean {
+  if (outcome !== 'in') return status === outcome;
+  return status < 500 && ![401, 403, 404].includes(status);
+}
+
+describe('authority', () => {
+  it('has a row for every route, and no row without one', () => {
+    expect(Object.keys(TABLE).sort()).toEqual(routes.map(({ id }) => id).sort());
+  });
+
+  it.each(inOrder.map((route) => [route.id, route] as const))(
+    'of %s is what the table says for everyone',
+    async (id, route) => {
+      const expected = TABLE[id];
+      const wrong: string[] = [];
+      for (const actor of ACTORS) {
+        const status = await ask(route, actor);
+        if (!expected || !fits(expected[actor], status))
+          wrong.push(`${actor}: got ${status}, wanted ${expected?.[actor]}`);
+      }
+      expect(wrong).toEqual([]);
+    },
+  );
+
+  it('hides what belongs to another project behind the same answer as what never was', async () => {
+    const other = await makeTeam(test.app);
+    const stranger = await test.signedIn(other.lead);
+    for (const path of [
+      `/scenes/${params['sceneId']}`,
+      `/samples/${params['sampleId']}`,
+      `/runs/${runId}`,
+      `/runs/${runId}/accuracy`,
+    ]) {
+      const hidden = await stranger.get(`/api/v1${path}`).expect(404);
+      const never = await stranger.get(`/api/v1${path.replace(/[0-9a-f-]{36}/, randomUUID())}`).expect(404);
+      expect(hidden.body).toEqual(never.body);
+    }
+  });
+});
