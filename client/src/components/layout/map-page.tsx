@@ -26,6 +26,12 @@ export function MapPage({ header, map, strip, list, slip }: MapPageProps) {
     observer.observe(element);
     return () => observer.disconnect();
   }, [hasStrip]);
+  useEffect(() => {
+    // Notes about finished acts appear at the page's foot, outside this component.
+    const { style } = document.documentElement;
+    style.setProperty('--page-foot', hasStrip ? `${stripHeight + 14}px` : '0px');
+    return () => void style.removeProperty('--page-foot');
+  }, [hasStrip, stripHeight]);
   // The map's own controls stay clear of the strip, however high it is.
   const foot = { '--map-foot': hasStrip ? `${stripHeight + 14}px` : '0px' } as CSSProperties;
   return (

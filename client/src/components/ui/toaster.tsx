@@ -6,6 +6,8 @@ export function Toaster() {
   return (
     <Base
       position="bottom-center"
+      // A map page's strip of tools stays free.
+      offset={{ bottom: 'calc(var(--page-foot, 0px) + 24px)' }}
       duration={5000}
       toastOptions={{
         unstyled: true,
@@ -20,9 +22,22 @@ export function Toaster() {
   );
 }
 
-/** Says that something was done, with a way back where there is one. */
-export function sayDone(text: string, undo?: { label?: string; onUndo: () => void }): void {
-  toast(text, undo ? { action: { label: undo.label ?? 'Undo', onClick: undo.onUndo } } : {});
+export interface WayBack {
+  label?: string;
+  onUndo: () => void;
+}
+
+/**
+ * Says that something was done, with a way back where there is one.
+ *
+ * @param line notes of one line of work take each other's place: a walk through many undos leaves one note
+ */
+export function sayDone(text: string, undo?: WayBack, line?: string): void {
+  toast(text, {
+    ...(line && { id: line }),
+    // Set either way: a note that takes another's place must not keep its button.
+    action: undo ? { label: undo.label ?? 'Undo', onClick: undo.onUndo } : undefined,
+  });
 }
 
 /** Says that something could not be done, with its reason and what to do. */

@@ -1,4 +1,4 @@
-import { useEffect, useMemo } from 'react';
+import { type RefObject, useEffect, useMemo } from 'react';
 import { useMap } from 'react-leaflet';
 import type { DrawingRefusal } from '../../../../shared/contracts/sample.ts';
 import { AreaOutline } from '../../components/map/area-outline.tsx';
@@ -8,12 +8,12 @@ import { Crosshair, isOnControl } from '../../components/map/crosshair.tsx';
 import { PlaceMarker } from '../../components/map/place-marker.tsx';
 import { PressMap } from '../../components/map/press-map.tsx';
 import { SceneLayer } from '../../components/map/scene-layer.tsx';
-import { ShapeEditor } from '../../components/map/shape-editor.tsx';
+import { ShapeEditor, type ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import { ZoomTo } from '../../components/map/zoom-to.tsx';
 import { sayDone } from '../../components/ui/toaster.tsx';
 import { formatMeters } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';
-import { unwrapBounds } from '../../lib/map-bounds.ts';
+import { finestTileZoom, unwrapBounds } from '../../lib/map-bounds.ts';
 import type { SceneView } from '../../lib/scene-view.ts';
 import { drawToolOf } from './desk-tool.ts';
 import { samplePolygons } from './sample-polygons.ts';
@@ -22,12 +22,13 @@ import type { Desk } from './use-desk.ts';
 export interface DeskMapProps {
   desk: Desk;
   view: SceneView;
+  editor: RefObject<ShapeEditorHandle | null>;
   /** Why the open drawing is refused; its place is marked. */
   refusal: DrawingRefusal | null;
 }
 
 /** The desk's map: scene, study area, samples, and the drawing in hand. */
-export function DeskMap({ desk, view, refusal }: DeskMapProps) {
+export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
   const { scene, draft, tool, shown, byId, project, selected } = desk;
   const polygons = useMemo(() => samplePolygons(shown, byId), [shown, byId]);
   const drawTool = desk.canDraw ? drawToolOf(tool) : null;
@@ -39,7 +40,7 @@ export function DeskMap({ desk, view, refusal }: DeskMapProps) {
     <BaseMap
       label={`${scene.name} with ${shown.length} samples`}
       bounds={unwrapBounds(firstBounds)}
-      maxZoom={20}
+      maxZoom={scene.bounds && scene.height ? finestTileZoom(unwrapBounds(scene.bounds), scene.height) + 2 : 18}
       readoutNote={gsdMeters ? `${formatMeters(gsdMeters)} pixels` : undefined}
     >
       <SceneLayer key={scene.id} scene={scene} view={view} />
@@ -54,7 +55,7 @@ export function DeskMap({ desk, view, refusal }: DeskMapProps) {
       {desk.version && <AreaOutline geometry={desk.version.geometry} label={`Version ${desk.version.versionNumber}`} />}
       {desk.canDraw && (
         <ShapeEditor
-          ref={desk.editor}
+          ref={editor}
           tool={drawTool}
           shape={draft?.geometry ?? null}
           colour={colour}

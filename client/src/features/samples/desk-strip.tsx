@@ -6,6 +6,8 @@ export interface DeskStripProps {
   canDraw: boolean;
   /** Said instead of drawing tools. */
   whyNot: string;
+  /** How the tool in hand is used. */
+  help: string | null;
   tool: DeskTool;
   onTool: (tool: DeskTool) => void;
   keys: readonly ClassKey[];
@@ -49,6 +51,9 @@ export function DeskStrip(props: DeskStripProps) {
         </>
       }
     >
+      <p role="status" className={props.help ? 'border-b border-line px-3.5 py-1 text-xs text-ink-soft' : 'sr-only'}>
+        {props.help}
+      </p>
       <ClassKeys
         keys={keys}
         target={target}

@@ -69,7 +69,7 @@ export function DraftSlip(props: DraftSlipProps) {
       <SpectrumBlock measure={measure} name="This drawing" colour={landClass?.colour ?? 'var(--ink)'} />
       {refusal && <RefusalNote refusal={refusal} />}
       {error && <ErrorState error={error} isInline />}
-      {measure.data && <MeasureFacts measure={measure.data} isOld={measure.isPlaceholderData} />}
+      {measure.data && !refusal && <MeasureFacts measure={measure.data} isOld={measure.isPlaceholderData} />}
       <div className="space-y-3 border-t border-line pt-3">
         <Field label="Class">
           <Select

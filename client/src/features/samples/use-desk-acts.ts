@@ -34,6 +34,9 @@ export interface DeskActsOptions {
   onSelect: (sampleId: string | null) => void;
 }
 
+/** Notes of the desk take each other's place. */
+const LINE = 'desk';
+
 /** Saving, deleting and restoring samples, with one line of steps that undo and redo walk along. */
 export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOptions) {
   const queryClient = useQueryClient();
@@ -78,6 +81,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     settle(sample);
     closeDraft({ kind: 'created', sampleId: sample.id, number: sample.number });
     onSelect(sample.id);
+    sayDone(`Sample ${sample.number} saved`, undefined, LINE);
   };
   const saveOver = async (wanted: Draft, over: Sample | NonNullable<Draft['base']>) => {
     const sample = await updateSample(wanted.id, fieldsToUpdate(over, wanted));
@@ -86,6 +90,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     const before = sampleFields(over);
     closeDraft({ kind: 'changed', sampleId: sample.id, number, before, after: sampleFields(sample) });
     onSelect(sample.id);
+    sayDone(`Sample ${number} saved, version ${sample.version}`, undefined, LINE);
   };
   const meetProblem = (wanted: Draft) => (error: unknown) => {
     if (!(error instanceof ProblemError)) throw error;
@@ -158,7 +163,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
         after: sampleFields(restored),
       };
       setHistory((now) => pushStep(now, step));
-      sayDone(`Sample ${number} is as in version ${versionNumber} again`);
+      sayDone(`Sample ${number} is as in version ${versionNumber} again`, undefined, LINE);
     }, sayProblem);
 
   const refuseStale = (error: unknown) => {
@@ -194,7 +199,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
       async () => {
         await replay(next.step, isUndo);
         setHistory(next.history);
-        sayDone(describeStep(next.step, isUndo));
+        sayDone(describeStep(next.step, isUndo), undefined, LINE);
       },
       (error) => {
         // Someone else changed it since: this step cannot be walked any more, by anyone.

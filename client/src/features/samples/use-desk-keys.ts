@@ -1,12 +1,14 @@
+import type { RefObject } from 'react';
 import { classDigit } from '../../components/layout/class-keys.tsx';
 import { isOnControl } from '../../components/map/crosshair.tsx';
+import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import { type KeyMap, useKeys } from '../../lib/keys.ts';
 import { drawToolOf } from './desk-tool.ts';
 import type { Desk } from './use-desk.ts';
 
 /** The desk's shortcuts; KeyList prints them. */
-export function useDeskKeys(desk: Desk, canSave: boolean): void {
-  const { editor, draft, selected, canDraw } = desk;
+export function useDeskKeys(desk: Desk, editor: RefObject<ShapeEditorHandle | null>, canSave: boolean): void {
+  const { draft, selected, canDraw } = desk;
   const isDrawing = () => editor.current?.isDrawing() ?? false;
 
   const undo = () => {
@@ -67,15 +69,17 @@ export function useDeskKeys(desk: Desk, canSave: boolean): void {
 /** What the map's line of help says for the tool in hand; null when there is nothing to add. */
 export function toolHelp(desk: Pick<Desk, 'tool' | 'draft' | 'canDraw'>): string | null {
   if (desk.draft)
-    return 'Drag corners or the whole outline · a small gold point adds a corner · right press takes one out';
+    return 'Drag corners or the whole outline; the small gold points add corners, a right press takes one out. Enter saves.';
   switch (drawToolOf(desk.tool)) {
     case 'polygon':
-      return 'Press for each corner · Enter or a press on the first corner closes';
+      return 'Press for each corner; Enter, or a press on the first corner, closes. Arrow keys and Space do it without a mouse.';
     case 'rectangle':
-      return 'Press at one corner, then at the one across';
+      return 'Press at one corner, then at the one across. Arrow keys and Space do it without a mouse.';
     case 'circle':
-      return 'Press in the middle, then at the edge';
+      return 'Press in the middle, then at the edge. Arrow keys and Space do it without a mouse.';
     default:
-      return desk.tool === 'inspect' ? 'Press a pixel for its values in every band' : null;
+      return desk.tool === 'inspect'
+        ? 'Press a pixel for its values in every band; arrow keys and Space do it without a mouse.'
+        : null;
   }
 }

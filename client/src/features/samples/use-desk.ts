@@ -1,4 +1,4 @@
-import { useMemo, useRef, useState } from 'react';
+import { type RefObject, useMemo, useState } from 'react';
 import { useSearchParams } from 'react-router-dom';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
@@ -7,6 +7,7 @@ import type { Confidence, Sample, SampleVersion } from '../../../../shared/contr
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import type { ZoomTarget } from '../../components/map/zoom-to.tsx';
+import { unwrapBounds } from '../../lib/map-bounds.ts';
 import type { Place } from '../../lib/project/probe-query.ts';
 import type { DeskTool } from './desk-tool.ts';
 import { type Draft, draftOfSample, isSameOutline, newDraft } from './draft.ts';
@@ -21,10 +22,12 @@ export interface DeskInput {
   scenes: readonly Scene[];
   classes: readonly LandClass[];
   samples: readonly Sample[];
+  /** The map's editor, for leaving a drawing under way. */
+  editor: RefObject<ShapeEditorHandle | null>;
 }
 
 /** All that is open on the sampling desk, and what can be done with it. */
-export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInput) {
+export function useDesk({ project, viewerId, scenes, classes, samples, editor }: DeskInput) {
   const [search, setSearch] = useSearchParams();
   const canDraw = project.abilities.drawSamples;
   const { draft, setDraft, isFromBefore } = useStoredDraft(
@@ -33,8 +36,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInp
     ({ sceneId, classId }) =>
       canDraw && scenes.some(({ id }) => id === sceneId) && classes.some(({ id }) => id === classId),
   );
-  const linked = useRef(search.get('sample') ?? search.get('samples'));
-  const linkedIds = linked.current?.split(',') ?? [];
+  const [linkedIds] = useState(() => (search.get('sample') ?? search.get('samples'))?.split(',') ?? []);
   const [sceneId, setSceneId] = useState(
     draft?.sceneId ?? samples.find(({ id }) => id === linkedIds[0])?.sceneId ?? scenes[0]!.id,
   );
@@ -50,9 +52,14 @@ export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInp
     const places = draft
       ? [draft.geometry]
       : samples.filter(({ id }) => linkedIds.includes(id)).map(({ geometry }) => geometry);
-    return zoomTarget(places, 'fit');
+    return (
+      zoomTarget(places, 'fit') ??
+      wholeScene(
+        project,
+        scenes.find(({ id }) => id === sceneId),
+      )
+    );
   });
-  const editor = useRef<ShapeEditorHandle>(null);
 
   const byId = useMemo(() => new Map(classes.map((one) => [one.id, one])), [classes]);
   const sceneSamples = useMemo(() => samples.filter((one) => one.sceneId === sceneId), [samples, sceneId]);
@@ -105,7 +112,6 @@ export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInp
     sceneSamples,
     isListOpen,
     isKeyListOpen,
-    editor,
     select,
     setFilter,
     setIsListOpen,
@@ -161,6 +167,12 @@ export function useDesk({ project, viewerId, scenes, classes, samples }: DeskInp
 }
 
 export type Desk = ReturnType<typeof useDesk>;
+
+/** The study area, or the scene where there is none. */
+function wholeScene(project: Project, scene: Scene | undefined): ZoomTarget | null {
+  const bounds = project.studyAreaBounds ?? scene?.bounds;
+  return bounds ? { bounds: unwrapBounds(bounds), kind: 'fit', turn: 0 } : null;
+}
 
 let turns = 0;
 function zoomTarget(outlines: readonly Polygon[], kind: ZoomTarget['kind']): ZoomTarget | null {

@@ -1,4 +1,5 @@
 import { List, PenTool } from 'lucide-react';
+import { useRef } from 'react';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Sample } from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
@@ -6,6 +7,7 @@ import { MapPage } from '../../components/layout/map-page.tsx';
 import { PageHeader } from '../../components/layout/page-header.tsx';
 import { CompositeControl } from '../../components/map/composite-control.tsx';
 import { SceneChoice } from '../../components/map/scene-choice.tsx';
+import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import { StretchControl } from '../../components/map/stretch-control.tsx';
 import { Button } from '../../components/ui/button.tsx';
 import { ConflictDialog } from '../../features/samples/conflict-dialog.tsx';
@@ -17,7 +19,7 @@ import { KeyList } from '../../features/samples/key-list.tsx';
 import { useDraftMeasure } from '../../features/samples/measure-query.ts';
 import { SampleList } from '../../features/samples/sample-list.tsx';
 import { useDesk } from '../../features/samples/use-desk.ts';
-import { useDeskKeys } from '../../features/samples/use-desk-keys.ts';
+import { toolHelp, useDeskKeys } from '../../features/samples/use-desk-keys.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useSceneView } from '../../lib/use-scene-view.ts';
 
@@ -33,13 +35,14 @@ export interface SamplingDeskProps {
 /** The map with its samples, the key strip, the list and the slip. */
 export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDeskProps) {
   const project = useProject();
-  const desk = useDesk({ project, viewerId, scenes, classes, samples });
+  const editor = useRef<ShapeEditorHandle>(null);
+  const desk = useDesk({ project, viewerId, scenes, classes, samples, editor });
   const [view, setView] = useSceneView(project.id);
   const measure = useDraftMeasure(project.id, desk.scene, desk.draft?.geometry ?? null);
   const refusal = desk.draft ? (measure.data?.refusal ?? null) : null;
-  useDeskKeys(desk, refusal === null);
+  useDeskKeys(desk, editor, refusal === null);
   const focusMap = () => document.querySelector<HTMLElement>('.leaflet-container')?.focus({ preventScroll: true });
-  const isDrawing = drawToolOf(desk.tool) !== null;
+  const isDrawing = drawToolOf(desk.tool) !== null && desk.draft === null;
   return (
     <>
       <MapPage
@@ -94,11 +97,12 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
             />
           )
         }
-        map={<DeskMap desk={desk} view={view} refusal={refusal} />}
+        map={<DeskMap desk={desk} view={view} editor={editor} refusal={refusal} />}
         strip={
           <DeskStrip
             canDraw={desk.canDraw}
             whyNot="You can look but not draw: ask the lead for the labeller role."
+            help={toolHelp(desk)}
             tool={desk.tool}
             onTool={(tool) => {
               desk.chooseTool(tool);
