@@ -6,6 +6,7 @@ import type { Run } from '../entities/run.ts';
 import { presentJob } from '../jobs/job-event.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
+import { isUnderWay } from '../services/runs.ts';
 
 type ClassArea = z.infer<typeof classAreaSchema>;
 
@@ -36,7 +37,6 @@ export function listClassAreas(run: Run): ClassArea[] | null {
 /** Accuracy is shown only to those who may read it. */
 export function presentRun(run: Run, viewer: Viewer): RunContract {
   const { result, job } = run;
-  const isUnderWay = job.state === 'queued' || job.state === 'running';
   const shown = can('accuracy.read', viewer.roles) ? result : null;
   const mayStop = can('run.stop', viewer.roles, run.startedById === viewer.userId);
   return {
@@ -62,6 +62,6 @@ export function presentRun(run: Run, viewer: Viewer): RunContract {
     overallHigh: shown?.overallHigh ?? null,
     bounds: run.scene.bounds,
     notes: [...run.warnings, ...(result?.notes ?? [])],
-    abilities: { cancel: mayStop && isUnderWay, delete: mayStop && !isUnderWay },
+    abilities: { cancel: mayStop && isUnderWay(run), delete: mayStop && !isUnderWay(run) },
   };
 }

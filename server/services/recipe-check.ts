@@ -13,7 +13,7 @@ import { placeScene } from './run-scene.ts';
 /** Common practice, no published source: fewer polygons than this say little about a class. */
 const FEW_POLYGONS = 5;
 
-export interface RecipeProblem {
+interface RecipeProblem {
   severity: 'stops' | 'warns';
   /** Field of the recipe it is about. */
   path: string;

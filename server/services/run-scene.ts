@@ -38,7 +38,7 @@ export function drawInPixels(placed: PlacedScene, geometry: Polygon): PixelPolyg
 }
 
 /** @throws Error when the study area cannot be drawn in the scene's projection */
-export function drawStudyArea(placed: PlacedScene, studyArea: ArealGeometry | null): PixelPolygon[] | null {
+function drawStudyArea(placed: PlacedScene, studyArea: ArealGeometry | null): PixelPolygon[] | null {
   if (!studyArea) return null;
   const polygons = studyArea.type === 'Polygon' ? [studyArea.coordinates] : studyArea.coordinates;
   return polygons.map((rings) => {

@@ -17,7 +17,7 @@ function speckle(column: number, row: number, band: number, range: number): numb
 }
 
 /** Three covers side by side; the second and third overlap in value, so that a map of them makes mistakes. */
-export function overlappingCovers(width: number): RasterSpec['value'] {
+function overlappingCovers(width: number): RasterSpec['value'] {
   return (band, column, row) => {
     if (column < 8 && row < 8) return 0;
     const cover = Math.min(2, Math.floor((column * 3) / width));
