@@ -23,6 +23,7 @@ export async function executeRun(app: App, context: JobContext): Promise<void> {
   if (!run) throw new Error('The run is gone.');
   const { signal } = context;
   try {
+    if (context.job.cancelAsked && !run.result) await waitForCancel(signal);
     // An attempt that died after the result was written has only its tidying left.
     if (!run.result) {
       const work = await openRunWork(app, run, context);
@@ -40,6 +41,14 @@ export async function executeRun(app: App, context: JobContext): Promise<void> {
   }
   await removeWorkFiles(app, run.id);
   await sendRunLetter(app, run, { failure: null });
+}
+
+/** A run cancelled while its server was gone does no more work: the runner tells it to stop at its next heartbeat. */
+function waitForCancel(signal: AbortSignal): Promise<never> {
+  return new Promise((_, reject) => {
+    if (signal.aborted) return reject(signal.reason);
+    signal.addEventListener('abort', () => reject(signal.reason), { once: true });
+  });
 }
 
 async function storeResult(work: RunWork, training: TrainingSummary): Promise<void> {

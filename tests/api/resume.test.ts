@@ -6,6 +6,8 @@ import { join } from 'node:path';
 import { pino } from 'pino';
 import request from 'supertest';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { createDataSource } from '../../server/data-source.ts';
+import { Job } from '../../server/entities/job.ts';
 import { openApp } from '../../server/start-server.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
@@ -167,4 +169,20 @@ describe('a run whose server is killed', () => {
     const { body } = await agent.get(`/api/v1/projects/${team.project.id}/runs`).expect(200);
     expect(new Set((body.runs as Run[]).map(({ classMapSha256 }) => classMapSha256)).size).toBe(1);
   }, 150_000);
+
+  it('stays cancelled when it was cancelled while its server was gone', async () => {
+    const runId = await startRun(await signIn());
+    await waitForFiles(runId, 'parts', 1);
+    await killServer();
+    // What another server process does for somebody who cancels.
+    const db = createDataSource(test.config.db);
+    await db.initialize();
+    await db.getRepository(Job).update({ runId }, { cancelAsked: true });
+    await db.destroy();
+    await startServer(2);
+    const ended = await waitForRun(await signIn(), runId);
+    expect(ended.job.state).toBe('cancelled');
+    expect(await countFiles(runId, 'parts')).toEqual([]);
+    expect(await countFiles(runId, 'strips')).toEqual([]);
+  }, 60_000);
 });
