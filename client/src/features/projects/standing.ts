@@ -15,7 +15,7 @@ type Targets = Pick<Project, 'targetOverallAccuracy' | 'targetSamplesPerClass'>;
 export function describeStanding(figures: Figures, targets: Targets): Standing {
   const { bestRun, samplesPerClass, sampleCount, sceneCount } = figures;
   if (bestRun && bestRun.overallAccuracy !== null) {
-    return describeAccuracy(bestRun.number, bestRun.overallAccuracy, targets.targetOverallAccuracy);
+    return describeAccuracy({ ...bestRun, overallAccuracy: bestRun.overallAccuracy }, targets.targetOverallAccuracy);
   }
   if (sampleCount > 0) return describeSamples(samplesPerClass, sampleCount, targets.targetSamplesPerClass);
   if (samplesPerClass.length > 0) {
@@ -35,17 +35,22 @@ export function describeStanding(figures: Figures, targets: Targets): Standing {
   return { before: 'The work begins with ', figure: 'a scene', after: ' and a class scheme.' };
 }
 
-function describeAccuracy(runNumber: number, accuracy: number, target: number | null): Standing {
-  const against =
-    target === null
-      ? '.'
-      : accuracy >= target
-        ? `; the target of ${formatPercent(target)} is met.`
-        : `; the target is ${formatPercent(target)}.`;
+type Judged = Omit<NonNullable<Figures['bestRun']>, 'overallAccuracy'> & { overallAccuracy: number };
+
+/** A target counts as met or missed only when the whole interval lies on one side of it. */
+function judgeTarget({ overallAccuracy, low, high }: Judged, target: number): string {
+  if ((low ?? overallAccuracy) >= target) return `the target of ${formatPercent(target)} is met`;
+  if ((high ?? overallAccuracy) < target) return `the target of ${formatPercent(target)} is missed`;
+  return `whether the target of ${formatPercent(target)} is met is uncertain`;
+}
+
+function describeAccuracy(run: Judged, target: number | null): Standing {
+  const give =
+    run.low !== null && run.high !== null ? `, give or take ${formatNumber(50 * (run.high - run.low), 0)}` : '';
   return {
-    before: `Run ${runNumber} agrees with `,
-    figure: formatPercent(accuracy, 1),
-    after: ` of the pixels held out from it${against}`,
+    before: `Run ${run.number} agrees with `,
+    figure: formatPercent(run.overallAccuracy, 1),
+    after: ` of the pixels held out from it${give}${target === null ? '.' : `; ${judgeTarget(run, target)}.`}`,
   };
 }
 
