@@ -33,7 +33,7 @@ export function ClassKeys({ keys, target, selectedId, onSelect, label = 'Class t
     <div
       role="group"
       aria-label={label}
-      className="grid auto-cols-[minmax(60px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
+      className="grid auto-cols-[minmax(72px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
     >
       {keys.map((key) => {
         const digit = classDigit(key.position);
@@ -54,7 +54,7 @@ export function ClassKeys({ keys, target, selectedId, onSelect, label = 'Class t
               {digit}
               <ClassSwatch colour={key.colour} position={key.position} size="key" />
             </span>
-            <span className="min-h-[30px] font-medium">{key.name}</span>
+            <span className="min-h-[30px] font-medium break-words hyphens-auto">{key.name}</span>
             <span className="text-2xs text-ink-soft">
               {formatNumber(key.count)}
               {target !== null && ` of ${formatNumber(target)}`}

@@ -1,11 +1,11 @@
-import { type PathOptions, geoJSON, svg } from 'leaflet';
+import { type PathOptions, geoJSON, svg, tooltip } from 'leaflet';
 import { useEffect } from 'react';
 import { useMap } from 'react-leaflet';
 import type { ArealGeometry } from '../../../../shared/contracts/geometry.ts';
 
 export interface AreaOutlineProps {
   geometry: ArealGeometry | null;
-  /** Stands at the outline for as long as it is there. */
+  /** Stands over the outline's north for as long as it is there. */
   label?: string;
 }
 
@@ -24,9 +24,12 @@ export function AreaOutline({ geometry, label }: AreaOutlineProps) {
     // Dark below light: it is seen on snow as well as on water.
     const dark = line({ color: '#1e2a26', weight: 4, opacity: 0.45 }).addTo(map);
     const light = line({ color: '#fffdf8', weight: 2, dashArray: '2 6' });
-    if (label) light.bindTooltip(label, { permanent: true, direction: 'center', className: 'map-note' });
     light.addTo(map);
+    const bounds = light.getBounds();
+    const name = label && tooltip({ permanent: true, direction: 'top', className: 'map-note' });
+    if (name) name.setContent(label).setLatLng([bounds.getNorth(), bounds.getCenter().lng]).addTo(map);
     return () => {
+      if (name) name.remove();
       dark.remove();
       light.remove();
       renderer.remove();

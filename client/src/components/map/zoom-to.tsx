@@ -15,6 +15,7 @@ const CLOSEST_ZOOM = 15;
 const ROOM_PIXELS = 60;
 /** Room left free at the foot for the strip of tools. */
 const FOOT_PIXELS = 190;
+const SETTLING_MS = 600;
 
 /** Takes the map to a place, clear of the strip at its foot. */
 export function ZoomTo({ target }: { target: ZoomTarget | null }) {
@@ -22,8 +23,6 @@ export function ZoomTo({ target }: { target: ZoomTarget | null }) {
   useEffect(() => {
     if (!target) return undefined;
     const go = () => {
-      // A slip that opened with the selection has taken its room by now.
-      map.invalidateSize({ pan: false, animate: false });
       const bounds = toLatLngBounds(target.bounds);
       const size = map.getSize();
       const free = latLngBounds(
@@ -39,7 +38,14 @@ export function ZoomTo({ target }: { target: ZoomTarget | null }) {
       });
     };
     const frame = requestAnimationFrame(go);
-    return () => cancelAnimationFrame(frame);
+    // A slip or list that opens with the selection takes its room a little later.
+    map.on('resize', go);
+    const settled = setTimeout(() => map.off('resize', go), SETTLING_MS);
+    return () => {
+      cancelAnimationFrame(frame);
+      clearTimeout(settled);
+      map.off('resize', go);
+    };
   }, [target, map]);
   return null;
 }

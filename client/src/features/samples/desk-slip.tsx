@@ -1,5 +1,6 @@
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { DraftSlip } from './draft-slip.tsx';
+import { MarkedSlip } from './marked-slip.tsx';
 import type { useDraftMeasure } from './measure-query.ts';
 import { ProbeSlip } from './probe-slip.tsx';
 import { SampleSlip } from './sample-slip.tsx';
@@ -34,7 +35,18 @@ export function DeskSlip({ desk, viewerId, scenes, measure }: DeskSlipProps) {
   if (probe) {
     return <ProbeSlip projectId={desk.project.id} scene={scene} place={probe} onClose={() => desk.setProbe(null)} />;
   }
-  if (!selected) return null;
+  if (!selected) {
+    if (desk.marked.length === 0) return null;
+    return (
+      <MarkedSlip
+        samples={desk.marked}
+        nWanted={desk.highlightedIds.length}
+        classes={desk.byId}
+        onSelect={desk.goTo}
+        onClose={() => desk.select(null)}
+      />
+    );
+  }
   return (
     <SampleSlip
       sample={selected}

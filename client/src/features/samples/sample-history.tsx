@@ -63,7 +63,7 @@ function Versions({ sample, classes, viewerId, isBusy, shownVersion, onShowVersi
               {version.by?.id === viewerId ? 'you' : (version.by?.name ?? 'someone no longer here')},{' '}
               {formatSince(version.at)}
             </p>
-            {!isStanding && (
+            {!isStanding && version.change !== 'deleted' && (
               <p className="mt-1 flex gap-1.5">
                 <Button
                   size="sm"
@@ -73,7 +73,7 @@ function Versions({ sample, classes, viewerId, isBusy, shownVersion, onShowVersi
                 >
                   {isShown ? 'On the map' : 'Show on the map'}
                 </Button>
-                {sample.abilities.edit && version.change !== 'deleted' && (
+                {sample.abilities.edit && (
                   <Button size="sm" kind="ghost" isPending={isBusy} onClick={() => onRestore(version.versionNumber)}>
                     Restore
                   </Button>

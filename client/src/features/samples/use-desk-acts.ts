@@ -132,9 +132,8 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     if (!draft) return;
     const dropped = draft;
     closeDraft(null);
-    sayDone(dropped.base ? `Changes of sample ${dropped.base.number} discarded` : 'Drawing discarded', {
-      onUndo: () => setDraft(dropped),
-    });
+    const said = dropped.base ? `Changes of sample ${dropped.base.number} discarded` : 'Drawing discarded';
+    sayDone(said, { onUndo: () => setDraft(dropped) }, LINE);
   };
 
   const erase = (sample: Sample) =>
@@ -142,7 +141,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
       await remove(sample.id, sample.version);
       closeDraft({ kind: 'deleted', sampleId: sample.id, number: sample.number });
       onSelect(null);
-      sayDone(`Sample ${sample.number} deleted`, { onUndo: () => void bringBack(sample) });
+      sayDone(`Sample ${sample.number} deleted`, { onUndo: () => void bringBack(sample) }, LINE);
     }, refuseStale);
   const bringBack = (sample: Sample) =>
     guarded(async () => {

@@ -64,7 +64,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
   const byId = useMemo(() => new Map(classes.map((one) => [one.id, one])), [classes]);
   const sceneSamples = useMemo(() => samples.filter((one) => one.sceneId === sceneId), [samples, sceneId]);
   const shown = useMemo(() => filterSamples(sceneSamples, filter, byId), [sceneSamples, filter, byId]);
-  const selectedId = search.get('sample');
+  const selectedId = search.get('sample') ?? onlyOne(search.get('samples'));
   const selected = samples.find(({ id }) => id === selectedId) ?? null;
   const highlighted = search.get('samples');
   const highlightedIds = useMemo(() => highlighted?.split(',') ?? [], [highlighted]);
@@ -76,8 +76,8 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
       (before) => {
         const next = new URLSearchParams(before);
         if (id) next.set('sample', id);
-        else next.delete('sample');
-        if (!id) next.delete('samples');
+        else if (next.has('sample')) next.delete('sample');
+        else next.delete('samples');
         return next;
       },
       { replace: true },
@@ -104,6 +104,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     isFromBefore,
     selected: draft ? null : selected,
     highlightedIds,
+    marked: samples.filter(({ id }) => highlightedIds.includes(id)),
     probe,
     version,
     zoom,
@@ -167,6 +168,11 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
 }
 
 export type Desk = ReturnType<typeof useDesk>;
+
+/** The id of a list that names one sample: it is selected, not only marked. */
+function onlyOne(ids: string | null): string | null {
+  return ids && !ids.includes(',') ? ids : null;
+}
 
 /** The study area, or the scene where there is none. */
 function wholeScene(project: Project, scene: Scene | undefined): ZoomTarget | null {
