@@ -68,6 +68,17 @@ function MapName({ label }: { label: string }) {
     container.setAttribute('role', 'application');
     container.setAttribute('aria-roledescription', 'map');
     container.setAttribute('aria-label', `${label}. Arrow keys move, plus and minus zoom.`);
+    // Leaflet focuses itself on a press, which browsers take for the keyboard: the ring is for keys alone.
+    const hideRing = () => container.setAttribute('data-pressed', '');
+    const showRing = () => container.removeAttribute('data-pressed');
+    container.addEventListener('pointerdown', hideRing, { capture: true });
+    container.addEventListener('keydown', showRing);
+    container.addEventListener('blur', showRing);
+    return () => {
+      container.removeEventListener('pointerdown', hideRing, { capture: true });
+      container.removeEventListener('keydown', showRing);
+      container.removeEventListener('blur', showRing);
+    };
   }, [label, map]);
   return null;
 }

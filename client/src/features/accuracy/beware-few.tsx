@@ -29,10 +29,11 @@ export function BewareFew({ accuracy }: { accuracy: Accuracy }) {
             ? 'All classes have'
             : `${formatCount(few.length, 'class', 'classes')} of ${accuracy.classes.length} have`}{' '}
           too few held-out samples to rely on; read their figures by their interval.
-          <details className="mt-1 print:open">
+          <details className="mt-1 print:hidden">
             <summary className="link cursor-pointer">Which, and by how much</summary>
             {list}
           </details>
+          <div className="hidden print:block">{list}</div>
         </>
       )}
     </Callout>

@@ -24,7 +24,9 @@ export function CellPanel({ projectId, accuracy, cell, onClose }: CellPanelProps
   const mapped = classes[cell.mappedIndex];
   const reference = classes[cell.referenceIndex];
   const ref = useRef<HTMLElement>(null);
-  useEffect(() => ref.current?.scrollIntoView({ block: 'nearest' }), [cell]);
+  useEffect(() => {
+    ref.current?.scrollIntoView({ block: 'nearest' });
+  }, [cell]);
   if (!mapped || !reference) return null;
   const count = matrix[cell.mappedIndex]?.[cell.referenceIndex] ?? 0;
   const isRight = cell.mappedIndex === cell.referenceIndex;

@@ -56,10 +56,9 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
             <th scope="col" className="pl-3 text-right">
               F1
             </th>
-            <th scope="col" className="pl-3 text-right" title="Right, mapped as it, reference of it">
-              Right of mapped,
-              <br />
-              of reference
+            <th scope="col" className="pl-3 text-right">
+              Right
+              <span className="block text-2xs font-normal">of mapped, of reference</span>
             </th>
             <th scope="col" className="pl-3 text-right max-sm:hidden">
               Polygons
@@ -72,7 +71,7 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
             if (!landClass) return null;
             return (
               <tr key={row.classId} className="*:border-t *:border-line *:py-1.5">
-                <th scope="row" className="pr-2 text-left font-normal">
+                <th scope="row" className="pr-2 text-left font-normal sm:min-w-36">
                   <span className="flex items-start gap-2 leading-tight">
                     <ClassSwatch
                       size="sm"
@@ -86,7 +85,7 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
                     </span>
                   </span>
                 </th>
-                <td className="w-[24%] min-w-20 max-sm:hidden">
+                <td className="w-[22%] min-w-16 max-sm:hidden">
                   <IntervalBar
                     value={percent(row.users.value)}
                     low={percent(row.users.low)}

@@ -59,9 +59,14 @@ function describeInterval({ value, low, high }: Accuracy['overall']): string {
 
 /** Below this user's accuracy a class is worth a word of its own. */
 const WEAK_BELOW = 0.9;
+/** Rule of thumb for accuracy samples: Congalton 1991, Remote Sensing of Environment 37:35–46. */
+const ENOUGH_MAPPED = 50;
 
 function describeWeakClass({ classes, matrix, perClass, unit }: Accuracy): string | null {
-  const rows = perClass.flatMap((row, index) => (row.users.value === null ? [] : [{ index, users: row.users.value }]));
+  // A class with too little behind it may only look weak: it is said to be unsure, not weak.
+  const rows = perClass.flatMap(({ users, warning, mappedCount }, index) =>
+    users.value === null || warning !== null || mappedCount < ENOUGH_MAPPED ? [] : [{ index, users: users.value }],
+  );
   const weakest = rows.toSorted((a, b) => a.users - b.users)[0];
   if (!weakest || weakest.users >= WEAK_BELOW) return null;
   const row = matrix[weakest.index] ?? [];

@@ -33,7 +33,7 @@ export function ClassFields({ control, classes }: { control: RunFormControl; cla
                 isChecked={field.value.includes(landClass.id)}
                 onChange={(on) => set((one) => (one.id === landClass.id ? on : field.value.includes(one.id)))}
                 label={
-                  <span className="flex items-center gap-2">
+                  <span className="flex items-start gap-2 [&>svg]:mt-1">
                     <ClassSwatch size="sm" colour={landClass.colour} position={landClass.position} />
                     {landClass.name}
                   </span>

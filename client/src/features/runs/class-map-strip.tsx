@@ -22,9 +22,9 @@ export function ClassMapStrip({ bands, view, onView, opacity, onOpacity, onInspe
       label="Map tools"
       tools={
         <>
-          <span className="pl-1 font-medium">Class map</span>
+          <span className="w-20 shrink-0 pl-1 font-medium">Class map</span>
           <Slider
-            className="mx-3 w-40! shrink-0"
+            className="mx-3 w-44! shrink-0"
             value={[Math.round(opacity * 100)]}
             onChange={([percent = 100]) => onOpacity(percent / 100)}
             min={0}
@@ -33,21 +33,23 @@ export function ClassMapStrip({ bands, view, onView, opacity, onOpacity, onInspe
             labels={['Opacity of the class map']}
             formatValue={(percent) => `${percent} %`}
           />
-          <span className="w-11 text-ink-soft">{formatPercent(opacity)}</span>
+          <span className="w-11 shrink-0 text-ink-soft">{formatPercent(opacity)}</span>
           <ToolButton
             label={opacity > 0 ? 'Hide' : 'Show'}
             shortcut="H"
             onPress={() => onOpacity(opacity > 0 ? 0 : 1)}
           />
-          <span aria-hidden className="mx-2 h-5 w-px shrink-0 bg-line" />
-          <span className="mr-2 font-medium">Scene</span>
-          <CompositeControl bands={bands} view={view} onChange={onView} />
-          <span className="w-1.5" />
-          <StretchControl stretch={view.stretch} onChange={(stretch) => onView({ ...view, stretch })} />
           <ToolGap />
-          <ToolButton label="Inspect the middle" shortcut="I" onPress={onInspectMiddle} />
+          <span className="pr-2 text-ink-soft max-lg:hidden">Press the map to read a pixel</span>
+          <ToolButton label="Read the middle" shortcut="I" onPress={onInspectMiddle} />
         </>
       }
-    />
+    >
+      <div className="flex items-center gap-1.5 overflow-x-auto px-2.5 py-1.5 text-sm whitespace-nowrap">
+        <span className="w-20 shrink-0 pl-1 font-medium">Scene</span>
+        <CompositeControl bands={bands} view={view} onChange={onView} />
+        <StretchControl stretch={view.stretch} onChange={(stretch) => onView({ ...view, stretch })} />
+      </div>
+    </Strip>
   );
 }

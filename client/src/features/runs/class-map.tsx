@@ -9,10 +9,10 @@ import { PressMap } from '../../components/map/press-map.tsx';
 import { SceneLayer } from '../../components/map/scene-layer.tsx';
 import { SceneTileLayer } from '../../components/map/scene-tile-layer.tsx';
 import { API_BASE } from '../../lib/fetch-json.ts';
-import { formatMeters } from '../../lib/format.ts';
 import { finestTileZoom, unwrapBounds, unwrapLongitude } from '../../lib/map-bounds.ts';
 import type { Place } from '../../lib/project/probe-query.ts';
 import type { SceneView } from '../../lib/scene-view.ts';
+import { formatGsd } from './band-choice.ts';
 
 interface ClassMapProps {
   run: Run;
@@ -34,7 +34,7 @@ export function ClassMap({ run, scene, view, opacity, studyArea, place, onPress,
     <BaseMap
       label={`Class map of run ${run.number} over ${scene.name}`}
       bounds={bounds}
-      readoutNote={pixelMeters === null ? undefined : `${formatMeters(pixelMeters)} pixels`}
+      readoutNote={pixelMeters === null ? undefined : `${formatGsd(pixelMeters)} pixels`}
       onReady={onReady}
     >
       <SceneLayer scene={scene} view={view} />

@@ -79,7 +79,7 @@ function ForestFields({
 }) {
   const nBands = useWatch({ control, name: 'recipe.bandIds' }).length;
   return (
-    <div className="grid gap-4 sm:grid-cols-2">
+    <div className="grid items-end gap-4 sm:grid-cols-2">
       <NumberField
         control={control}
         name="recipe.classifier.trees"

@@ -28,6 +28,7 @@ export function PixelSlip({ run, scene, scheme, place, onClose }: PixelSlipProps
   const landClass = withPositions(run.classes, scheme).find((one) => one.code === mapped.data?.code);
   const pixel = probe.data?.pixel;
   const values = probe.data?.values ?? [];
+  const series = pixelSeries(values);
   const failed = mapped.error ?? probe.error;
   return (
     <Slip
@@ -54,12 +55,14 @@ export function PixelSlip({ run, scene, scheme, place, onClose }: PixelSlipProps
       )}
       {pixel && (
         <>
-          <SpectralProfile
-            title="Spectrum of this pixel"
-            isTitleHidden
-            series={[pixelSeries(values)]}
-            plotHeight={150}
-          />
+          {series.points.length > 0 ? (
+            <SpectralProfile title="Spectrum of this pixel" isTitleHidden series={[series]} plotHeight={150} />
+          ) : (
+            <p className="text-ink-soft">
+              No band of this scene has a wavelength, so there is no spectrum to draw. The band table on the Scenes page
+              takes them.
+            </p>
+          )}
           <table className="w-full text-sm" aria-label="Band values of this pixel">
             <thead>
               <tr className="text-xs text-ink-soft *:border-t *:border-line *:pt-2 *:pb-1 *:font-medium">

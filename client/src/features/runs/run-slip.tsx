@@ -3,10 +3,9 @@ import type { ReactNode } from 'react';
 import { MAP_CAUTIONS } from '../../../../shared/constants/cautions.ts';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
-import { Facts, Slip } from '../../components/layout/slip.tsx';
-import { buttonClass } from '../../components/ui/button.tsx';
+import { Slip } from '../../components/layout/slip.tsx';
+import { Button, buttonClass } from '../../components/ui/button.tsx';
 import { Menu, MenuItem } from '../../components/ui/menu.tsx';
-import { Button } from '../../components/ui/button.tsx';
 import { apiUrl } from '../../lib/fetch-json.ts';
 import { formatNumber } from '../../lib/format.ts';
 import { ClassLegend } from './class-legend.tsx';
@@ -55,7 +54,6 @@ export function RunSlip({ run, scene, scheme, accuracy }: RunSlipProps) {
         <p className="text-xs text-ink-soft">
           The same recipe, samples and scene give the same class map, byte for byte. SHA-256 of both:
         </p>
-        <Facts facts={[]} />
         <Digest name="Samples, classes, study area and bands" value={run.inputSha256} />
         <Digest name="Class map, one byte a pixel" value={run.classMapSha256} />
       </Part>

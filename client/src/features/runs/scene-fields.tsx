@@ -7,8 +7,8 @@ import { Checkbox } from '../../components/ui/checkbox.tsx';
 import { Field } from '../../components/ui/field.tsx';
 import { Select } from '../../components/ui/select.tsx';
 import { formatCalendarDate } from '../../lib/format-date.ts';
-import { formatMeters, formatNumber } from '../../lib/format.ts';
-import { isCoarse } from './band-choice.ts';
+import { formatNumber } from '../../lib/format.ts';
+import { formatGsd, isCoarse } from './band-choice.ts';
 import { defaultBandIds } from './default-recipe.ts';
 import { FieldFault, PickAll } from './pick-all.tsx';
 import { FormSection } from './form-section.tsx';
@@ -66,7 +66,7 @@ export function SceneFields({ control, scenes }: { control: RunFormControl; scen
                 {band.gsdMeters !== null && (
                   <span className={isCoarse(band, bands) ? 'font-medium text-rust' : undefined}>
                     {band.centreWavelengthUm !== null && ' · '}
-                    {formatMeters(band.gsdMeters)}
+                    {formatGsd(band.gsdMeters)}
                     {isCoarse(band, bands) && ', coarser'}
                   </span>
                 )}

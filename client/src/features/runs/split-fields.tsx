@@ -14,7 +14,7 @@ export function SplitFields({ control }: { control: RunFormControl }) {
       note="Held out by whole polygon, within each class, drawn by the seed: no pixel of a held-out polygon is learned from."
     >
       <HeldOutField control={control} />
-      <div className="grid gap-4 sm:grid-cols-2">
+      <div className="grid items-end gap-4 sm:grid-cols-2">
         <NumberField
           control={control}
           name="recipe.maxPixelsPerClass"
