@@ -104,7 +104,7 @@ const schema = z.object({
   GROUNDSEL_UPLOAD_LIMIT_MB: wholeNumber(1, 1_048_576, 'MB a file').prefault('4096'),
   GROUNDSEL_MAX_SCENE_PIXELS: wholeNumber(1, 10_000_000_000, 'pixels a band').prefault('500000000'),
   GROUNDSEL_INGEST_TIMEOUT_SECONDS: wholeNumber(10, 86_400, 'seconds').prefault('1800'),
-  GROUNDSEL_INGEST_MEMORY_MB: wholeNumber(256, 1_048_576, 'MB').prefault('2048'),
+  GROUNDSEL_INGEST_MEMORY_MB: wholeNumber(256, 1_048_576, 'MB').prefault('3072'),
   GROUNDSEL_WORKER_THREADS: wholeNumber(1, 256, 'threads').prefault(String(availableParallelism())),
   GROUNDSEL_TILE_CACHE_MB: wholeNumber(0, 1_048_576, 'MB').prefault('256'),
   GROUNDSEL_ADMIN_EMAIL: text('the e-mail of the first site administrator', /^[^\s@]+@[^\s@]+$/).optional(),

@@ -45,6 +45,8 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
   const db = createDataSource(config.db);
   await db.initialize();
   await db.runMigrations({ transaction: 'each' });
+  const files = new LocalFileStore(config.dataDir);
+  await files.sweepScratch();
   const events = new EventLog(db, log);
   const workers = openWorkerPools(config);
   const bands = new BandStore({ cacheMb: 64, decode: 'async' });
@@ -56,7 +58,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
     config,
     db,
     log,
-    files: new LocalFileStore(config.dataDir),
+    files,
     jobs: new DatabaseJobQueue(db, events, { now: () => wake.now(), cancelled: (id) => wake.cancelled(id) }),
     events,
     mail: createMailer(config, log),

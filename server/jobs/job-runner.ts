@@ -2,6 +2,7 @@ import { hostname } from 'node:os';
 import type { Logger } from 'pino';
 import { In, LessThan, Like, type DataSource } from 'typeorm';
 import { Job } from '../entities/job.ts';
+import { isProcessAlive } from '../is-process-alive.ts';
 import type { EventLog } from './event-log.ts';
 import { presentJobEvent } from './job-event.ts';
 import type { JobHandler } from './job-queue.ts';
@@ -22,15 +23,6 @@ interface Running {
   job: Job;
   abort: AbortController;
   settled: Promise<void>;
-}
-
-function isAlive(pid: number): boolean {
-  try {
-    process.kill(pid, 0);
-    return true;
-  } catch (error) {
-    return (error as NodeJS.ErrnoException).code === 'EPERM';
-  }
 }
 
 /** Takes jobs up, one of each kind at a time, keeps their heartbeat, and brings back those whose server died. */
@@ -84,7 +76,7 @@ export class JobRunner {
     const mine = await this.jobs.find({ where: { state: 'running', owner: Like(`${hostname()}:%`) } });
     for (const job of mine) {
       const pid = Number(job.owner?.split(':')[1]);
-      if (!isAlive(pid) || pid === process.pid) await this.bringBack(job);
+      if (!isProcessAlive(pid) || pid === process.pid) await this.bringBack(job);
     }
   }
 

@@ -9,9 +9,6 @@ import type { SourceBand, SourceInfo } from './inspect-source.ts';
 import { writeGeoTiffFromRaw } from './raw-to-geotiff.ts';
 import { SourceRefusal } from './source-refusal.ts';
 
-// A JPEG 2000 image without tiles is decoded whole, at four bytes a sample.
-const decodeMemoryBytes = 3 * 1024 ** 3;
-
 /** One band to be taken out of an inspected source. */
 export interface BandExtraction {
   sourcePath: string;
@@ -21,6 +18,8 @@ export interface BandExtraction {
   workDir: string;
   outPath: string;
   timeoutMs: number;
+  /** Limit on the program that decodes; a JPEG 2000 image without tiles is decoded whole, at four bytes a sample. */
+  memoryBytes: number;
   signal: AbortSignal;
   onProgress: (fraction: number) => void;
 }
@@ -39,7 +38,7 @@ export async function extractBand(extraction: BandExtraction): Promise<BandDtype
 }
 
 async function translateBand(
-  { sourcePath, info, band, timeoutMs, signal }: BandExtraction,
+  { sourcePath, info, band, timeoutMs, memoryBytes, signal }: BandExtraction,
   bandArgument: string,
   outPath: string,
   dtype: BandDtype,
@@ -56,7 +55,7 @@ async function translateBand(
       ...listCreationOptions(dtype),
       ...[sourcePath, outPath],
     ],
-    { origin: 'upload', timeoutMs, memoryBytes: decodeMemoryBytes, signal, onProgress },
+    { origin: 'upload', timeoutMs, memoryBytes, signal, onProgress },
   );
   try {
     await run;

@@ -41,8 +41,11 @@ export interface IngestOptions {
   concurrentBands?: number;
   /** Limit for each GDAL step on a band. */
   timeoutMs?: number;
+  /** Limit on the memory of the program that decodes a band. */
+  memoryBytes?: number;
 }
 
+const defaultMemoryBytes = 3 * 1024 ** 3;
 const stepShares = { write: 0.5, overviews: 0.2, statistics: 0.3 };
 
 /**
@@ -77,8 +80,8 @@ export async function ingestBands(
       options.onProgress?.(fractions.reduce((sum, one) => sum + one, 0) / wanted.length);
     };
     const fileName = `band-${String(firstNumber + position).padStart(2, '0')}.tif`;
-    const timeoutMs = options.timeoutMs ?? 1_800_000;
-    return { sourcePath, info, band, outDir, workDir, fileName, store, timeoutMs, signal, onProgress };
+    const { timeoutMs = 1_800_000, memoryBytes = defaultMemoryBytes } = options;
+    return { sourcePath, info, band, outDir, workDir, fileName, store, timeoutMs, memoryBytes, signal, onProgress };
   });
   let isDone = false;
   try {

@@ -1,5 +1,5 @@
 import type { SceneFailure } from '../entities/scene.ts';
-import { GdalProcessError } from '../raster/gdal-process.ts';
+import { GdalProcessError, isFaultOfFile } from '../raster/gdal-process.ts';
 import { SourceRefusal } from '../raster/source-refusal.ts';
 
 /** Files that cannot become a scene together, for reasons no single file has. */
@@ -32,12 +32,20 @@ export function describeIngestFailure(error: unknown): SceneFailure {
       advice: 'Cut the scene to the study area, or ask the site administrator to raise the limit.',
     };
   }
-  if (error instanceof GdalProcessError && error.reason !== 'not-installed' && error.reason !== 'aborted') {
+  if (isFaultOfFile(error)) {
     return {
       code: 'unreadable',
       found: 'a file whose pixels cannot be read to the end',
       wanted: 'whole files',
       advice: 'Check that the file opens elsewhere, then upload it again.',
+    };
+  }
+  if (error instanceof GdalProcessError && error.reason === 'failed') {
+    return {
+      code: 'no-resources',
+      found: 'a file that takes more memory or disk to read than this server gives',
+      wanted: 'files that are read within the limits',
+      advice: 'Cut the scene to the study area, or ask the site administrator to raise the limits.',
     };
   }
   return {

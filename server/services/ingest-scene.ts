@@ -50,7 +50,7 @@ export async function ingestScene(app: App, { job, signal, report }: JobContext)
   }
 }
 
-/** Marks a scene that is being ingested as failed and lets go of its uploads; nothing happens to any other. */
+/** Marks a scene that is being ingested as failed and lets go of its files; one that is ready meanwhile stays so. */
 export async function failScene(app: App, sceneId: string, failure: SceneFailure): Promise<void> {
   const scenes = app.db.getRepository(Scene);
   const scene = await scenes.findOneBy({ id: sceneId, state: 'ingesting' });
@@ -62,6 +62,8 @@ export async function failScene(app: App, sceneId: string, failure: SceneFailure
     }
   }
   await app.files.remove(`incoming/${sceneId}/`);
+  const isReady = await scenes.existsBy({ id: sceneId, state: 'ready' });
+  if (!isReady) await app.files.remove(`scenes/${sceneId}/`);
 }
 
 async function inspectFiles(app: App, scene: Scene, signal: AbortSignal): Promise<IngestSource[]> {
@@ -105,6 +107,7 @@ async function writeBands(
         firstFileNumber,
         signal,
         timeoutMs: app.config.ingest.timeoutSeconds * 1000,
+        memoryBytes: app.config.ingest.memoryMb * 1024 ** 2,
         onProgress: (fraction) => {
           const nDone = written.length + Math.floor(fraction * source.info.bands.length);
           const share = INSPECTED + (WRITTEN - INSPECTED) * ((doneWeight + fraction * weight) / totalWeight);

@@ -98,7 +98,10 @@ export async function deleteProjectWhole(app: App, id: string): Promise<void> {
   const jobs = await app.db.getRepository(Job).findBy({ projectId: id, state: In(['queued', 'running']) });
   for (const job of jobs) await app.jobs.cancel(job.id);
   const { sceneIds, runIds } = await app.db.transaction((manager) => deleteRows(manager, id));
-  for (const sceneId of sceneIds) await app.files.remove(`scenes/${sceneId}/`);
+  for (const sceneId of sceneIds) {
+    await app.files.remove(`scenes/${sceneId}/`);
+    await app.files.remove(`incoming/${sceneId}/`);
+  }
   for (const runId of runIds) await app.files.remove(`runs/${runId}/`);
 }
 

@@ -3,6 +3,7 @@ import { createReadStream } from 'node:fs';
 import { access, mkdir, readdir, readFile, rename, rm, stat, writeFile } from 'node:fs/promises';
 import { dirname, join, resolve, sep } from 'node:path';
 import type { Readable } from 'node:stream';
+import { isProcessAlive } from '../is-process-alive.ts';
 import type { FileStore } from './file-store.ts';
 
 function isMissing(error: unknown): boolean {
@@ -45,7 +46,7 @@ export class LocalFileStore implements FileStore {
     return path;
   }
 
-  read(key: string): Promise<Buffer> {
+  async read(key: string): Promise<Buffer> {
     return readFile(this.pathOf(key));
   }
 
@@ -82,9 +83,20 @@ export class LocalFileStore implements FileStore {
   }
 
   async scratch(name: string): Promise<{ path: string; dispose(): Promise<void> }> {
-    const path = join(this.scratchDir, `${name}-${randomUUID()}`);
+    const path = join(this.scratchDir, `${name}.${process.pid}.${randomUUID()}`);
     await mkdir(path, { recursive: true, mode: 0o700 });
     return { path, dispose: () => rm(path, { recursive: true, force: true }) };
+  }
+
+  /** Removes working folders whose process is gone. To be called before this process makes its first. */
+  async sweepScratch(): Promise<void> {
+    await mkdir(this.scratchDir, { recursive: true });
+    for (const name of await readdir(this.scratchDir)) {
+      const pid = Number(name.split('.').at(-2));
+      // A folder under this process's own number is of an earlier process that had it: numbers come round again.
+      if (pid === process.pid || !isProcessAlive(pid))
+        await rm(join(this.scratchDir, name), { recursive: true, force: true });
+    }
   }
 
   private async statOf(key: string) {

@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import { mkdir, mkdtemp, readdir, rm, writeFile } from 'node:fs/promises';
+import { mkdir, mkdtemp, readdir, readFile, rm, writeFile } from 'node:fs/promises';
 import { request as openRequest } from 'node:http';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -269,9 +269,16 @@ describe('files that cannot become a scene', () => {
     await writeFile(path, 'This is a letter, not an image.');
     return path;
   };
+  const cutShort = async (): Promise<string> => {
+    const path = await raster();
+    const bytes = await readFile(path);
+    await writeFile(path, bytes.subarray(0, bytes.length / 2));
+    return path;
+  };
   const cases: [string, () => Promise<string[]>, RegExp][] = [
     ['not-a-raster', async () => [await blank()], /none of the allowed readers/],
     ['not-a-raster', async () => [await raster(), await blank()], /^scene-1\.tif: /],
+    ['unreadable', async () => [await cutShort()], /./],
     ['no-crs', async () => [await raster({ crs: '' })], /no coordinate reference system/],
     ['all-nodata', async () => [await raster({ value: () => 0 })], /no pixel with data/],
     ['empty-band', async () => [await raster({ value: (band) => (band === 2 ? 0 : 9) })], /band 3 \(Red\)/],

@@ -33,7 +33,7 @@ export const LAYERS: readonly Layer[] = [
   },
   { name: 'policies', prefix: 'server/policies/', may: ['shared'] },
   { name: 'jobs', prefix: 'server/jobs/', may: ['entities', 'analysis', 'raster', 'ground', 'shared'] },
-  { name: 'storage', prefix: 'server/storage/', may: ['shared'] },
+  { name: 'storage', prefix: 'server/storage/', may: ['ground', 'shared'] },
   { name: 'mail', prefix: 'server/mail/', may: ['ground', 'shared'] },
   { name: 'entities', prefix: 'server/entities/', may: ['shared'] },
   { name: 'migrations', prefix: 'server/migrations/', may: [] },
@@ -48,6 +48,7 @@ export const LAYERS: readonly Layer[] = [
   // Config, errors, the app's context: what every server layer stands on. It names the layers' types only.
   { name: 'ground', prefix: 'server/config.ts', may: [] },
   { name: 'ground', prefix: 'server/errors.ts', may: [] },
+  { name: 'ground', prefix: 'server/is-process-alive.ts', may: [] },
   { name: 'ground', prefix: 'server/app-context.ts', may: ['jobs', 'mail', 'raster', 'storage'] },
   {
     name: 'start',

@@ -37,7 +37,7 @@ describe('readConfig', () => {
       mailFrom: 'Groundsel <groundsel@localhost>',
       uploadLimitBytes: 4096 * 1024 * 1024,
       maxScenePixels: 500_000_000,
-      ingest: { timeoutSeconds: 1800, memoryMb: 2048 },
+      ingest: { timeoutSeconds: 1800, memoryMb: 3072 },
       workerThreads: availableParallelism(),
       tileCacheMb: 256,
       adminEmail: null,
