@@ -77,7 +77,11 @@ export const sceneSchema = z.object({
   version: z.number().int(),
 });
 export type Scene = z.infer<typeof sceneSchema>;
-export const sceneListSchema = z.object({ scenes: z.array(sceneSchema) });
+export const sceneListSchema = z.object({
+  scenes: z.array(sceneSchema),
+  /** What one upload may hold. */
+  limits: z.object({ fileBytes: z.number().int(), files: z.number().int() }),
+});
 
 export const updateSceneSchema = z
   .object({

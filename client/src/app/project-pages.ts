@@ -8,6 +8,18 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/overview/overview-page.tsx'), 'OverviewPage'),
   },
   {
+    path: 'scenes',
+    lazy: lazyPage(() => import('../pages/scenes/scenes-page.tsx'), 'ScenesPage'),
+  },
+  {
+    path: 'scenes/:sceneId',
+    lazy: lazyPage(() => import('../pages/scene/scene-page.tsx'), 'ScenePage'),
+  },
+  {
+    path: 'scenes/:sceneId/bands',
+    lazy: lazyPage(() => import('../pages/scene/scene-bands-page.tsx'), 'SceneBandsPage'),
+  },
+  {
     path: 'classes',
     lazy: lazyPage(() => import('../pages/classes/classes-page.tsx'), 'ClassesPage'),
   },

@@ -11,6 +11,7 @@ export const paths = {
   overview: (projectId: string) => `/projects/${projectId}/overview`,
   scenes: (projectId: string) => `/projects/${projectId}/scenes`,
   scene: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}`,
+  sceneBands: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}/bands`,
   classes: (projectId: string) => `/projects/${projectId}/classes`,
   samples: (projectId: string) => `/projects/${projectId}/samples`,
   /** The sampling desk with these samples shown and the first of them selected. */

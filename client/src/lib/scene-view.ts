@@ -61,12 +61,31 @@ export function shownCompositeId(bands: readonly Band[], view: SceneView): strin
   return sceneComposites(bands).find((composite) => composite.bands.join() === shown)?.id ?? CUSTOM_COMPOSITE;
 }
 
+/** Stored values drawn darkest and brightest, by band number, where they were set by hand. */
+export type BandLimits = Readonly<Record<number, { low: number; high: number }>>;
+
+/** The stored values a band is drawn from and to. */
+export function bandLimits(band: Band, stretch: Stretch, byHand: BandLimits = {}): { low: number; high: number } {
+  const set = byHand[band.number];
+  if (set) return set;
+  const low = bandPercentile(band.statistics, stretch.lowPercent);
+  const high = bandPercentile(band.statistics, stretch.highPercent);
+  // A band of one value has no width to stretch.
+  return { low, high: high > low ? high : low + 1 };
+}
+
 /** Tile address of a scene for Leaflet, with {z}, {x}, {y} left in; the content key in it makes browsers keep tiles long. */
-export function sceneTileUrl(scene: Pick<Scene, 'id' | 'bands' | 'contentKey'>, view: SceneView): string {
+export function sceneTileUrl(
+  scene: Pick<Scene, 'id' | 'bands' | 'contentKey'>,
+  view: SceneView,
+  byHand: BandLimits = {},
+): string {
   const numbers = viewBands(scene.bands, view);
   const stretch = numbers.map((number) => {
     const band = scene.bands.find((one) => one.number === number);
-    return band ? bandLimits(band, view.stretch) : '0:1';
+    if (!band) return '0:1';
+    const { low, high } = bandLimits(band, view.stretch, byHand);
+    return `${shortNumber(low)}:${shortNumber(high)}`;
   });
   const query = [
     `bands=${numbers.join(',')}`,
@@ -75,13 +94,6 @@ export function sceneTileUrl(scene: Pick<Scene, 'id' | 'bands' | 'contentKey'>, 
     `v=${encodeURIComponent(scene.contentKey)}`,
   ];
   return `${API_BASE}/scenes/${scene.id}/tiles/{z}/{x}/{y}.webp?${query.join('&')}`;
-}
-
-function bandLimits(band: Band, stretch: Stretch): string {
-  const low = bandPercentile(band.statistics, stretch.lowPercent);
-  const high = bandPercentile(band.statistics, stretch.highPercent);
-  // A band of one value has no width to stretch.
-  return `${shortNumber(low)}:${shortNumber(high > low ? high : low + 1)}`;
 }
 
 /** Six digits: far finer than a screen's 256 steps, and the same address for the same view. */

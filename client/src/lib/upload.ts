@@ -89,6 +89,6 @@ function connectionLost(): ProblemError {
     status: 0,
     code: 'no-answer',
     title: 'The connection was lost during the upload',
-    advice: 'Choose the same file again: the upload goes on from where it stopped.',
+    advice: 'Check the network and send it again.',
   });
 }

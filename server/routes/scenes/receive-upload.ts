@@ -13,7 +13,8 @@ import { InvalidInput } from '../../errors.ts';
 import type { UploadedFile } from '../../services/create-scene.ts';
 import { checkRoom } from '../../services/site-storage.ts';
 
-const MAX_FILES = 64;
+/** Files of one scene. */
+export const MAX_FILES = 64;
 
 const fieldsSchema = z.object({
   name: z.string().trim().max(160).default(''),

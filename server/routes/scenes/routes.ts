@@ -20,7 +20,7 @@ import { findProjectTarget, projectParams } from '../find-project.ts';
 import { route } from '../route.ts';
 import { sendTile } from '../send-tile.ts';
 import { showCurrent } from '../show-current.ts';
-import { receiveUpload } from './receive-upload.ts';
+import { MAX_FILES, receiveUpload } from './receive-upload.ts';
 
 const sceneParams = z.object({ sceneId: idSchema });
 
@@ -42,7 +42,10 @@ export const sceneRoutes = [
     params: projectParams,
     answer: sceneListSchema,
     async handle({ app, params }) {
-      return { scenes: (await listScenes(app, params.projectId)).map(presentScene) };
+      return {
+        scenes: (await listScenes(app, params.projectId)).map(presentScene),
+        limits: { fileBytes: app.config.uploadLimitBytes, files: MAX_FILES },
+      };
     },
   }),
   route({

@@ -4,9 +4,18 @@ import { formatNumber } from '../../lib/format.ts';
 import { DEFAULT_STRETCH, type Stretch } from '../../lib/scene-view.ts';
 import { Button } from '../ui/button.tsx';
 import { Popover } from '../ui/popover.tsx';
+import { Segmented } from '../ui/segmented.tsx';
 import { Slider } from '../ui/slider.tsx';
 
 const percent = (value: number) => `${formatNumber(value, value % 1 === 0 ? 0 : 1)} %`;
+const PRESETS = [
+  { low: 0, high: 100, label: 'Min–max' },
+  { low: 0.5, high: 99.5, label: '0.5–99.5' },
+  { low: 1, high: 99, label: '1–99' },
+  { low: 2, high: 98, label: '2–98' },
+  { low: 5, high: 95, label: '5–95' },
+];
+const presetId = (low: number, high: number) => `${low}-${high}`;
 /** Gamma on a slider by its logarithm, so that 0.5 and 2 lie equally far from 1. */
 const gammaOfStep = (step: number) => Number((2 ** (step / 20)).toFixed(2));
 const stepOfGamma = (gamma: number) => Math.round(20 * Math.log2(gamma));
@@ -51,6 +60,16 @@ function StretchSliders({ stretch, onChange }: { stretch: Stretch; onChange: (st
           {percent(draft.lowPercent)} – {percent(draft.highPercent)}
         </span>
       </p>
+      <Segmented
+        label="Percentile presets"
+        className="my-1.5 text-xs! *:px-2!"
+        value={presetId(stretch.lowPercent, stretch.highPercent)}
+        onChange={(id) => {
+          const preset = PRESETS.find(({ low, high }) => presetId(low, high) === id);
+          if (preset) onChange({ ...stretch, lowPercent: preset.low, highPercent: preset.high });
+        }}
+        options={PRESETS.map(({ low, high, label }) => ({ value: presetId(low, high), label }))}
+      />
       <Slider
         value={[draft.lowPercent, draft.highPercent]}
         onChange={([lowPercent = 2, highPercent = 98]) =>
