@@ -28,6 +28,8 @@ export interface ShapeEditorProps {
   colour: string;
   onDrawn: (shape: Polygon) => void;
   onShaped: (shape: Polygon) => void;
+  /** Corners of a drawing under way can be taken back, or set again. */
+  onCorners?: (corners: { canUndo: boolean; canRedo: boolean }) => void;
   /** The outline cannot be opened for mending, and why ("Feature has holes"). */
   onUnmendable: (reason: string) => void;
   ref?: Ref<ShapeEditorHandle>;
@@ -36,14 +38,15 @@ export interface ShapeEditorProps {
 const SHAPE_ID = '00000000-0000-4000-8000-000000000001';
 
 /** Draws one polygon, rectangle or circle by pointer, or mends one outline: drag corners, midpoints or the whole. */
-export function ShapeEditor({ tool, shape, colour, onDrawn, onShaped, onUnmendable, ref }: ShapeEditorProps) {
+export function ShapeEditor(props: ShapeEditorProps) {
+  const { tool, shape, colour, onDrawn, onShaped, onCorners, onUnmendable, ref } = props;
   const map = useMap();
   const draw = useRef<TerraDraw>(undefined);
-  const latest = useRef({ colour, onDrawn, onShaped, onUnmendable });
+  const latest = useRef({ colour, onDrawn, onShaped, onCorners, onUnmendable });
   /** The outline the editor holds, as this component's parent knows it. */
   const held = useRef<string | null>(null);
   useEffect(() => {
-    latest.current = { colour, onDrawn, onShaped, onUnmendable };
+    latest.current = { colour, onDrawn, onShaped, onCorners, onUnmendable };
   });
 
   useEffect(() => {
@@ -66,8 +69,19 @@ export function ShapeEditor({ tool, shape, colour, onDrawn, onShaped, onUnmendab
       held.current = JSON.stringify(drawn);
       latest.current.onShaped(drawn);
     });
+    const tellCorners = () => latest.current.onCorners?.({ canUndo: editor.canUndo(), canRedo: editor.canRedo() });
+    editor.on('history', tellCorners);
+    editor.on('finish', tellCorners);
+    // Midpoints are set at the screen's precision: at another zoom they would lie beside the outline.
+    const reopen = () => {
+      if (editor.getMode() !== 'select' || !editor.hasFeature(SHAPE_ID)) return;
+      editor.deselectFeature(SHAPE_ID);
+      editor.selectFeature(SHAPE_ID);
+    };
+    map.on('zoomend', reopen);
     const underlay = followWithInk(editor, map);
     return () => {
+      map.off('zoomend', reopen);
       editor.stop();
       underlay.remove();
       draw.current = undefined;
@@ -81,6 +95,7 @@ export function ShapeEditor({ tool, shape, colour, onDrawn, onShaped, onUnmendab
     if (shapeKey !== null && shapeKey === held.current) return;
     held.current = shapeKey;
     editor.clear();
+    latest.current.onCorners?.({ canUndo: false, canRedo: false });
     if (shapeKey === null) {
       editor.setMode(tool ?? 'static');
       return;

@@ -61,6 +61,7 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
           colour={colour}
           onDrawn={desk.drawn}
           onShaped={desk.shaped}
+          onCorners={desk.setCorners}
           onUnmendable={(reason) =>
             sayDone(`This outline cannot be changed by hand here (${reason.toLowerCase()}); its class and note can.`)
           }

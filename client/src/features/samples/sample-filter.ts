@@ -14,7 +14,10 @@ export function isFiltering(filter: SampleFilter): boolean {
   return filter.text.trim() !== '' || Boolean(filter.classId ?? filter.authorId ?? filter.confidence);
 }
 
-/** The samples a filter lets through. The text is looked for in the number, the class's name, the author and the note. */
+/**
+ * The samples a filter lets through. Each word of the text must begin a word of the number, the class's name, the
+ * author or the note: "2" finds sample 25, not 12.
+ */
 export function filterSamples(
   samples: readonly Sample[],
   filter: SampleFilter,
@@ -28,7 +31,8 @@ export function filterSamples(
     if (words.length === 0) return true;
     const className = classes.get(sample.classId)?.name ?? '';
     const text = `${sample.number} ${className} ${sample.createdBy?.name ?? ''} ${sample.note}`.toLowerCase();
-    return words.every((word) => text.includes(word));
+    const found = text.split(/[^\p{Letter}\p{Number}]+/u);
+    return words.every((word) => found.some((one) => one.startsWith(word)));
   });
 }
 

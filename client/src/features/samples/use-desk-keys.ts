@@ -11,12 +11,6 @@ export function useDeskKeys(desk: Desk, editor: RefObject<ShapeEditorHandle | nu
   const { draft, selected, canDraw } = desk;
   const isDrawing = () => editor.current?.isDrawing() ?? false;
 
-  const undo = () => {
-    if (!editor.current?.undoCorner()) desk.undo();
-  };
-  const redo = () => {
-    if (!editor.current?.redoCorner()) desk.redo();
-  };
   const escape = () => {
     if (isDrawing()) editor.current?.leave();
     else if (draft) desk.discard();
@@ -51,9 +45,9 @@ export function useDeskKeys(desk: Desk, editor: RefObject<ShapeEditorHandle | nu
     Enter: enter,
     Delete: erase,
     Backspace: () => editor.current?.undoCorner(),
-    'mod+z': undo,
-    'mod+shift+z': redo,
-    'mod+y': redo,
+    'mod+z': desk.undo,
+    'mod+shift+z': desk.redo,
+    'mod+y': desk.redo,
   };
   useKeys({
     ...classKeys,

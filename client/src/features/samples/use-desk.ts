@@ -48,6 +48,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
   const [isListOpen, setIsListOpen] = useState(false);
   const [isKeyListOpen, setIsKeyListOpen] = useState(false);
   const [version, setVersion] = useState<SampleVersion | null>(null);
+  const [corners, setCorners] = useState({ canUndo: false, canRedo: false });
   const [zoom, setZoom] = useState<ZoomTarget | null>(() => {
     const places = draft
       ? [draft.geometry]
@@ -94,6 +95,14 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
   return {
     ...acts,
     project,
+    canUndo: corners.canUndo || acts.canUndo,
+    canRedo: corners.canRedo || acts.canRedo,
+    undo: () => {
+      if (!editor.current?.undoCorner()) acts.undo();
+    },
+    redo: () => {
+      if (!editor.current?.redoCorner()) acts.redo();
+    },
     canDraw,
     scene: scenes.find(({ id }) => id === sceneId) ?? scenes[0]!,
     classes,
@@ -114,6 +123,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     isListOpen,
     isKeyListOpen,
     select,
+    setCorners,
     setFilter,
     setIsListOpen,
     setIsKeyListOpen,
