@@ -8,7 +8,7 @@ import type { SampleVersion } from '../entities/sample-version.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import type { DrawingMeasure } from '../services/drawing-measure.ts';
-import type { SampleListRow } from '../services/samples.ts';
+import type { SampleListRow } from '../services/samples-list.ts';
 import { presentPerson } from './present-account.ts';
 
 /** The sample as stored, whoever looks at it. */

@@ -1,6 +1,6 @@
 import { IsNull, type EntityManager } from 'typeorm';
 import type { z } from 'zod';
-import type { Bounds, Polygon } from '../../shared/contracts/geometry.ts';
+import type { Polygon } from '../../shared/contracts/geometry.ts';
 import type { Confidence, createSampleSchema, updateSampleSchema } from '../../shared/contracts/sample.ts';
 import type { App } from '../app-context.ts';
 import { LandClass } from '../entities/land-class.ts';
@@ -229,46 +229,4 @@ export function listSampleVersions(app: App, sampleId: string): Promise<SampleVe
   return app.db
     .getRepository(SampleVersion)
     .find({ where: { sampleId }, relations: { by: true }, order: { versionNumber: 'DESC' } });
-}
-
-/** A sample as the list carries it. */
-export interface SampleListRow extends Omit<Sample, 'project' | 'scene' | 'landClass' | 'createdBy' | 'deletedAt'> {
-  createdBy: { id: string; name: string } | null;
-}
-
-interface RawSample extends Omit<SampleListRow, 'geometry' | 'createdBy'> {
-  geometry: { x: number; y: number }[][];
-  createdByName: string | null;
-}
-
-/**
- * The samples on the map, by number; with bounds only those whose own bounds meet them. One query whatever their number, and the driver reads
- * geometry in binary: ten thousand samples are a matter of a few tenths of a second.
- */
-export async function listSamples(app: App, projectId: string, bounds: Bounds | null): Promise<SampleListRow[]> {
-  const boxes = bounds ? boxesAsWkt(bounds) : [];
-  const rows = await app.db.query<RawSample[]>(
-    `SELECT s.id, s.projectId, s.number, s.sceneId, s.classId, s.geometry, s.confidence, s.note, s.pixelCount, s.areaHa,
-       s.version, s.createdById, s.createdAt, s.updatedAt, u.name AS createdByName
-     FROM samples s LEFT JOIN users u ON u.id = s.createdById
-     WHERE s.projectId = ? AND s.deletedAt IS NULL
-       ${boxes.length ? `AND (${boxes.map(() => 'MBRIntersects(s.geometry, ST_GeomFromText(?))').join(' OR ')})` : ''}
-     ORDER BY s.number`,
-    [projectId, ...boxes],
-  );
-  return rows.map(({ geometry, createdByName, ...row }) => ({
-    ...row,
-    geometry: {
-      type: 'Polygon',
-      coordinates: geometry.map((ring) => ring.map(({ x, y }): [number, number] => [x, y])),
-    },
-    createdBy: row.createdById === null ? null : { id: row.createdById, name: createdByName ?? '' },
-  }));
-}
-
-function boxesAsWkt([west, south, east, north]: Bounds): string[] {
-  const box = (from: number, to: number) =>
-    `POLYGON((${from} ${south}, ${to} ${south}, ${to} ${north}, ${from} ${north}, ${from} ${south}))`;
-  // A west beyond the east means across the antimeridian (RFC 7946, section 5.2).
-  return west <= east ? [box(west, east)] : [box(west, 180), box(-180, east)];
 }

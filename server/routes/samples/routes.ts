@@ -20,12 +20,12 @@ import { NotFound } from '../../errors.ts';
 import { presentMeasure, presentSample, presentSampleVersion } from '../../presenters/present-sample.ts';
 import { measureDrawing } from '../../services/drawing-measure.ts';
 import { findProject } from '../../services/projects.ts';
+import { listSamples } from '../../services/samples-list.ts';
 import {
   createSample,
   deleteSample,
   findDrawingScene,
   findSample,
-  listSamples,
   listSampleVersions,
   restoreSample,
   updateSample,
