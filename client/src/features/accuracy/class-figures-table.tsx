@@ -50,18 +50,24 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
             <th scope="col" className="text-right sm:hidden">
               User’s
             </th>
-            <th scope="col" className="pl-3 text-right">
+            <th scope="col" className="pl-2.5 text-right">
               Producer’s
             </th>
-            <th scope="col" className="pl-3 text-right">
+            <th scope="col" className="pl-2.5 text-right">
               F1
             </th>
-            <th scope="col" className="pl-3 text-right">
+            <th scope="col" className="pl-2.5 text-right">
               Right
-              <span className="block text-2xs font-normal">of mapped, of reference</span>
+              <span className="block text-2xs font-normal">
+                of mapped,
+                <br />
+                of reference
+              </span>
             </th>
-            <th scope="col" className="pl-3 text-right max-sm:hidden">
-              Polygons
+            <th scope="col" className="pl-2.5 text-right max-sm:hidden">
+              Poly-
+              <br />
+              gons
             </th>
           </tr>
         </thead>
@@ -71,7 +77,7 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
             if (!landClass) return null;
             return (
               <tr key={row.classId} className="*:border-t *:border-line *:py-1.5">
-                <th scope="row" className="pr-2 text-left font-normal sm:min-w-36">
+                <th scope="row" className="pr-2 text-left font-normal sm:min-w-32">
                   <span className="flex items-start gap-2 leading-tight">
                     <ClassSwatch
                       size="sm"
@@ -85,7 +91,7 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
                     </span>
                   </span>
                 </th>
-                <td className="w-[22%] min-w-16 max-sm:hidden">
+                <td className="w-[20%] min-w-12 max-sm:hidden">
                   <IntervalBar
                     value={percent(row.users.value)}
                     low={percent(row.users.low)}
@@ -95,13 +101,13 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
                     label={`${landClass.name}, user’s accuracy in %`}
                   />
                 </td>
-                <td className="pl-3 text-right whitespace-nowrap">
+                <td className="pl-2.5 text-right whitespace-nowrap">
                   <ShareEstimate estimate={row.users} whyUndefined={whyNoUsers(unit)} />
                 </td>
-                <td className="pl-3 text-right whitespace-nowrap">
+                <td className="pl-2.5 text-right whitespace-nowrap">
                   <ShareEstimate estimate={row.producers} whyUndefined={whyNoProducers(unit)} />
                 </td>
-                <td className="pl-3 text-right">
+                <td className="pl-2.5 text-right">
                   {row.f1 === null ? (
                     <>
                       undefined
@@ -111,13 +117,13 @@ export function ClassFiguresTable({ accuracy, positions, fileName }: ClassFigure
                     formatNumber(row.f1, 2)
                   )}
                 </td>
-                <td className="pl-3 text-right whitespace-nowrap">
+                <td className="pl-2.5 text-right whitespace-nowrap">
                   {formatNumber(row.correctCount)}
                   <span className="block text-xs text-ink-soft">
                     of {formatNumber(row.mappedCount)}, of {formatNumber(row.referenceCount)}
                   </span>
                 </td>
-                <td className="pl-3 text-right max-sm:hidden">{formatNumber(row.heldOutPolygons)}</td>
+                <td className="pl-2.5 text-right max-sm:hidden">{formatNumber(row.heldOutPolygons)}</td>
               </tr>
             );
           })}

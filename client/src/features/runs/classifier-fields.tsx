@@ -39,10 +39,12 @@ const SLOW: Partial<Record<ClassifierKind, string>> = {
 export function ClassifierFields({ control }: { control: RunFormControl }) {
   const { field } = useController({ control, name: 'recipe.classifier' });
   const kept = useRef<Partial<Record<ClassifierKind, RunClassifierInput>>>({});
-  const kind = field.value.kind;
+  // The controller of the whole does not hear of its parts; the watch does.
+  const settings = useWatch({ control, name: 'recipe.classifier' });
+  const kind = settings.kind;
   const choose = (next: ClassifierKind) => {
     if (next === kind) return;
-    kept.current[kind] = field.value;
+    kept.current[kind] = { ...settings };
     field.onChange(kept.current[next] ?? defaultClassifier(next));
   };
   return (

@@ -13,7 +13,10 @@ interface DeleteRunDialogProps {
 
 /** Asks before a run goes with its map and figures. */
 export function DeleteRunDialog({ run, isOpen, onOpenChange, onDeleted }: DeleteRunDialogProps) {
-  const remove = useDeleteRun(run.projectId);
+  const remove = useDeleteRun(run.projectId, () => {
+    sayDone(`Run ${run.number} deleted`);
+    onDeleted();
+  });
   const loses = ['Its recipe and notes'];
   if (run.job.state === 'finished') {
     loses.unshift('The class map and its downloads', 'Its confusion matrix and accuracy figures');
@@ -28,14 +31,7 @@ export function DeleteRunDialog({ run, isOpen, onOpenChange, onDeleted }: Delete
       confirmLabel="Delete run"
       isPending={remove.isPending}
       error={remove.error ? asProblem(remove.error) : null}
-      onConfirm={() =>
-        remove.mutate(run.id, {
-          onSuccess: () => {
-            sayDone(`Run ${run.number} deleted`);
-            onDeleted();
-          },
-        })
-      }
+      onConfirm={() => remove.mutate(run.id)}
     />
   );
 }
