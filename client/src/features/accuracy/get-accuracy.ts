@@ -7,7 +7,7 @@ const getAccuracy = (runId: string, unit: AccuracyUnit, signal: AbortSignal) =>
   fetchJson(`/runs/${runId}/accuracy`, accuracySchema, { query: { unit }, signal });
 
 /** Confusion matrix and figures of a finished run. */
-export const accuracyQuery = (projectId: string, runId: string, unit: AccuracyUnit) =>
+const accuracyQuery = (projectId: string, runId: string, unit: AccuracyUnit) =>
   queryOptions({
     queryKey: projectKey(projectId, 'accuracy', runId, unit),
     queryFn: ({ signal }) => getAccuracy(runId, unit, signal),

@@ -17,7 +17,7 @@ const getCellSamples = ({ runId, unit, mappedId, referenceId }: CellChoice, sign
   });
 
 /** The held-out samples behind a cell of the matrix, most pixels first. */
-export const cellSamplesQuery = (projectId: string, cell: CellChoice) =>
+const cellSamplesQuery = (projectId: string, cell: CellChoice) =>
   queryOptions({
     queryKey: projectKey(projectId, 'accuracy', cell.runId, cell.unit, 'cell', cell.mappedId, cell.referenceId),
     queryFn: ({ signal }) => getCellSamples(cell, signal),

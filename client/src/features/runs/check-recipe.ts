@@ -7,7 +7,7 @@ const checkRecipe = (projectId: string, recipe: Recipe, signal: AbortSignal) =>
   fetchJson(`/projects/${projectId}/runs/check`, recipeCheckSchema, { method: 'POST', body: recipe, signal });
 
 /** What a recipe comes to with the samples as they stand; kept under `samples`, so that it is asked again when they change. */
-export const recipeCheckQuery = (projectId: string, recipe: Recipe) =>
+const recipeCheckQuery = (projectId: string, recipe: Recipe) =>
   queryOptions({
     queryKey: projectKey(projectId, 'samples', 'recipe-check', recipe),
     queryFn: ({ signal }) => checkRecipe(projectId, recipe, signal),

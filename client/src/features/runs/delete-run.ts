@@ -1,7 +1,6 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { sendRequest } from '../../lib/fetch-json.ts';
 import { projectKey } from '../../lib/project/project-query.ts';
-import { runQuery } from './get-run.ts';
 
 const deleteRun = (runId: string) => sendRequest(`/runs/${runId}`, { method: 'DELETE' });
 
@@ -14,9 +13,9 @@ export function useDeleteRun(projectId: string, onDeleted: () => void) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: deleteRun,
-    onSuccess: (_, runId) => {
+    onSuccess: () => {
       onDeleted();
-      queryClient.removeQueries({ queryKey: runQuery(projectId, runId).queryKey });
+      // Exact: the run's own page, still there for a moment, must not ask for what is gone.
       for (const topic of ['runs', 'accuracy', 'project', 'overview'] as const) {
         void queryClient.invalidateQueries({ queryKey: projectKey(projectId, topic), exact: topic === 'runs' });
       }

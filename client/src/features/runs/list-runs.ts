@@ -7,7 +7,7 @@ const listRuns = (projectId: string, signal: AbortSignal) =>
   fetchJson(`/projects/${projectId}/runs`, runListSchema, { signal });
 
 /** The project's runs, newest first; events move the bars of those under way. */
-export const runsQuery = (projectId: string) =>
+const runsQuery = (projectId: string) =>
   queryOptions({
     queryKey: projectKey(projectId, 'runs'),
     queryFn: ({ signal }) => listRuns(projectId, signal),

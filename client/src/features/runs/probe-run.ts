@@ -8,7 +8,7 @@ const probeRun = (runId: string, place: Place, signal: AbortSignal) =>
   fetchJson(`/runs/${runId}/probe`, runProbeSchema, { query: { lon: place.lon, lat: place.lat }, signal });
 
 /** The mapped class at a place. A class map never changes, so an answer holds for good. */
-export const runProbeQuery = (projectId: string, runId: string, place: Place) =>
+const runProbeQuery = (projectId: string, runId: string, place: Place) =>
   queryOptions({
     queryKey: projectKey(projectId, 'runs', runId, 'probe', place.lon, place.lat),
     queryFn: ({ signal }) => probeRun(runId, place, signal),
