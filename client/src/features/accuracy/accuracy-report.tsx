@@ -85,7 +85,10 @@ export function AccuracyReport({ projectId, accuracy, runLine, runNumber, target
         </div>
       </div>
       <Cautions cautions={accuracy.cautions.filter((text) => text !== PURPOSIVE_CAUTION)} />
-      <p className="hidden pt-4 text-sm print:block">{accuracy.overall.method}</p>
+      {/* On paper nothing opens: what the links say is printed. */}
+      <p className="hidden pt-4 text-sm print:block">
+        {accuracy.overall.method} {accuracy.kappa.caution}
+      </p>
     </>
   );
 }
