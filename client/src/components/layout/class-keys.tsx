@@ -27,12 +27,16 @@ export function classDigit(position: number): string | null {
   return position < 10 ? String((position + 1) % 10) : null;
 }
 
+const WIDEST_KEY_PIXELS = 190;
+
 /** The classes as keys: digit, swatch, name and tally against the target. Bind the digits with useKeys and classDigit. */
 export function ClassKeys({ keys, target, selectedId, onSelect, label = 'Class to draw' }: ClassKeysProps) {
   return (
     <div
       role="group"
       aria-label={label}
+      // A scheme of two or three classes does not need keys as wide as the map.
+      style={{ maxWidth: `${keys.length * WIDEST_KEY_PIXELS}px` }}
       className="grid auto-cols-[minmax(72px,1fr)] grid-flow-col divide-x divide-line overflow-x-auto"
     >
       {keys.map((key) => {

@@ -1,5 +1,5 @@
 import type { Feature, FeatureCollection, MultiPolygon, Polygon } from 'geojson';
-import { type Canvas, type GeoJSON as GeoJsonLayer, type PathOptions, canvas, geoJSON } from 'leaflet';
+import { DomEvent, type Canvas, type GeoJSON as GeoJsonLayer, type PathOptions, canvas, geoJSON } from 'leaflet';
 import { useEffect, useRef } from 'react';
 import { useMap } from 'react-leaflet';
 
@@ -48,7 +48,10 @@ export function CanvasPolygons({
   });
 
   useEffect(() => {
-    const drawn = canvas({ padding: 0.3, tolerance: 3 });
+    const drawn = canvas({ padding: 0.3, tolerance: 3 }).addTo(map);
+    // The canvas itself would otherwise still be what the pointer meets.
+    const ground = drawn.getPane()?.lastElementChild;
+    if (isStill && ground instanceof HTMLCanvasElement) ground.style.pointerEvents = 'none';
     renderer.current = drawn;
     const layer: GeoJsonLayer<PolygonProperties, Polygon | MultiPolygon> = geoJSON<
       PolygonProperties,
@@ -60,16 +63,14 @@ export function CanvasPolygons({
       onEachFeature: (feature, path) => {
         if (isStill) return;
         path.on('click', (event) => {
-          event.originalEvent.stopPropagation();
+          // Or the map's own press, on the ground below, would follow.
+          DomEvent.stopPropagation(event);
           select.current?.(feature.properties.id);
         });
         if (feature.properties.label)
           path.bindTooltip(feature.properties.label, { sticky: true, className: 'map-note' });
       },
     }).addTo(map);
-    // The canvas itself would otherwise still be what the pointer meets.
-    const ground = drawn.getPane()?.lastElementChild;
-    if (isStill && ground instanceof HTMLCanvasElement) ground.style.pointerEvents = 'none';
     return () => {
       layer.remove();
       drawn.remove();

@@ -37,7 +37,7 @@ export function SampleList(props: SampleListProps) {
   return (
     <section
       aria-label="Sample list"
-      className="flex w-[430px] shrink-0 flex-col border-r border-line bg-paper max-xl:w-[360px] max-lg:w-[300px]"
+      className="flex w-[430px] shrink-0 flex-col border-r border-line bg-paper max-xl:w-[360px] max-lg:w-[320px]"
     >
       <header className="flex items-center gap-2 px-3.5 pt-3">
         <h2 className="text-lg font-semibold">Sample list</h2>

@@ -3,6 +3,7 @@ import type { DrawingMeasure } from '../../../../shared/contracts/sample.ts';
 import { SpectralProfile } from '../../components/charts/spectral-profile.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
+import { formatPlusMinus } from '../../lib/format.ts';
 import { measureSeries } from './spectrum-series.ts';
 
 export interface SpectrumBlockProps {
@@ -17,14 +18,45 @@ export function SpectrumBlock({ measure, name, colour }: SpectrumBlockProps) {
   if (measure.isError) return <ErrorState error={measure.error} onRetry={() => void measure.refetch()} isInline />;
   const series = measureSeries(measure.data.spectrum, name, colour);
   if (series.points.length === 0) {
-    const hasBands = measure.data.spectrum.some((band) => band.mean !== null);
-    if (!hasBands) return null;
-    return (
-      <p className="text-ink-soft">
-        No band of this scene has a wavelength, so there is no spectrum to draw. The band table on the Scenes page takes
-        them.
-      </p>
-    );
+    return <BandMeans spectrum={measure.data.spectrum} />;
   }
   return <SpectralProfile title="Spectrum of the pixels inside" isTitleHidden series={[series]} plotHeight={150} />;
+}
+
+/** The means in a table, for a scene whose bands have no wavelength to draw them along. */
+function BandMeans({ spectrum }: { spectrum: DrawingMeasure['spectrum'] }) {
+  const known = spectrum.filter((band) => band.mean !== null);
+  if (known.length === 0) return null;
+  return (
+    <div>
+      <table className="w-full">
+        <caption className="pb-1 text-left font-medium">Mean of the pixels inside</caption>
+        <thead>
+          <tr className="text-xs text-ink-soft">
+            <th scope="col" className="pb-0.5 text-left font-medium">
+              Band
+            </th>
+            <th scope="col" className="pb-0.5 text-right font-medium">
+              Mean ± 1 σ
+            </th>
+          </tr>
+        </thead>
+        <tbody>
+          {known.map((band) => (
+            <tr key={band.bandId}>
+              <th scope="row" className="py-px text-left font-normal text-ink-soft">
+                {band.number} · {band.name}
+              </th>
+              <td className="py-px text-right font-medium">
+                {formatPlusMinus(band.mean, band.standardDeviation, band.quantity === 'reflectance' ? 3 : 1)}
+              </td>
+            </tr>
+          ))}
+        </tbody>
+      </table>
+      <p className="mt-1.5 text-xs text-ink-soft">
+        With wavelengths in the scene’s band table this is drawn as a spectrum.
+      </p>
+    </div>
+  );
 }

@@ -1,5 +1,5 @@
 import { useQueryClient } from '@tanstack/react-query';
-import { useRef, useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { type Sample, sampleSchema } from '../../../../shared/contracts/sample.ts';
 import { sayDone, sayProblem } from '../../components/ui/toaster.tsx';
 import { ProblemError } from '../../lib/problem-error.ts';
@@ -44,6 +44,11 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
   const [isBusy, setIsBusy] = useState(false);
   const [saveError, setSaveError] = useState<ProblemError | null>(null);
   const [conflict, setConflict] = useState<SampleConflict | null>(null);
+  /** The drawing in hand when a note's button is pressed, which may be long after the note came. */
+  const open = useRef(draft);
+  useEffect(() => {
+    open.current = draft;
+  });
   /** Versions as this person's own acts left them: undo must not go over what someone else did since. */
   const versions = useRef(new Map<string, number>());
 
@@ -128,12 +133,16 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     }
   };
 
+  const reopen = (dropped: Draft) => {
+    if (open.current) sayDone('Save or discard the drawing in hand first', { onUndo: () => reopen(dropped) }, LINE);
+    else setDraft(dropped);
+  };
   const discard = () => {
     if (!draft) return;
     const dropped = draft;
     closeDraft(null);
     const said = dropped.base ? `Changes of sample ${dropped.base.number} discarded` : 'Drawing discarded';
-    sayDone(said, { onUndo: () => setDraft(dropped) }, LINE);
+    sayDone(said, { onUndo: () => reopen(dropped) }, LINE);
   };
 
   const erase = (sample: Sample) =>

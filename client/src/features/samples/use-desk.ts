@@ -7,7 +7,6 @@ import type { Confidence, Sample, SampleVersion } from '../../../../shared/contr
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import type { ZoomTarget } from '../../components/map/zoom-to.tsx';
-import { unwrapBounds } from '../../lib/map-bounds.ts';
 import type { Place } from '../../lib/project/probe-query.ts';
 import type { DeskTool } from './desk-tool.ts';
 import { type Draft, draftOfSample, isSameOutline, newDraft } from './draft.ts';
@@ -53,13 +52,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     const places = draft
       ? [draft.geometry]
       : samples.filter(({ id }) => linkedIds.includes(id)).map(({ geometry }) => geometry);
-    return (
-      zoomTarget(places, 'fit') ??
-      wholeScene(
-        project,
-        scenes.find(({ id }) => id === sceneId),
-      )
-    );
+    return zoomTarget(places, 'fit');
   });
 
   const byId = useMemo(() => new Map(classes.map((one) => [one.id, one])), [classes]);
@@ -125,7 +118,12 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     select,
     setCorners,
     setFilter,
-    setIsListOpen,
+    setIsListOpen: (isOpen: boolean) => {
+      setIsListOpen(isOpen);
+      // The map grows or shrinks from its left: what is open on it stays in sight.
+      const open = draft?.geometry ?? selected?.geometry;
+      if (open) showPlace(open);
+    },
     setIsKeyListOpen,
     setProbe,
     setVersion: (next: SampleVersion | null) => {
@@ -182,12 +180,6 @@ export type Desk = ReturnType<typeof useDesk>;
 /** The id of a list that names one sample: it is selected, not only marked. */
 function onlyOne(ids: string | null): string | null {
   return ids && !ids.includes(',') ? ids : null;
-}
-
-/** The study area, or the scene where there is none. */
-function wholeScene(project: Project, scene: Scene | undefined): ZoomTarget | null {
-  const bounds = project.studyAreaBounds ?? scene?.bounds;
-  return bounds ? { bounds: unwrapBounds(bounds), kind: 'fit', turn: 0 } : null;
 }
 
 let turns = 0;
