@@ -1,6 +1,8 @@
-import KNN from 'ml-knn';
 import { requireBlock, requireInteger, requireTrainingSet, type Classifier, type TrainedModel } from './classifier.ts';
+import { keepScales, measureScales, scaleRows, type FeatureScales } from './feature-scales.ts';
 import { ModelBytesError, packArrays, unpackArrays } from './model-bytes.ts';
+import { NeighbourSearch } from './neighbour-search.ts';
+import { layOutTree, orderPoints } from './neighbour-tree.ts';
 
 export interface NearestNeighboursParams {
   /** Neighbours that vote. */
@@ -12,13 +14,14 @@ export interface NearestNeighboursParams {
 export const defaultNearestNeighboursParams: NearestNeighboursParams = { k: 5, standardise: true };
 
 const kind = 'nearest-neighbours';
-const VERSION = 1;
+const VERSION = 2;
 
 /**
- * k nearest neighbours by Euclidean distance, searched with the k-d tree of the library ml-knn.
+ * k nearest neighbours by Euclidean distance: the library ml-knn arranges the training rows in a k-d tree, which is then
+ * laid out flat and searched here.
  *
  * Ties are decided, not left to the search: neighbours at the same distance count in the order of the training rows,
- * and of classes with as many votes the lowest index wins. Training has one part: it stores the rows.
+ * and of classes with as many votes the lowest index wins. Training has one part, the same for every seed.
  * Source: Cover & Hart 1967, IEEE Transactions on Information Theory 13:21–27.
  */
 export const nearestNeighbours: Classifier<NearestNeighboursParams> = {
@@ -32,9 +35,11 @@ export const nearestNeighbours: Classifier<NearestNeighboursParams> = {
   trainPart(set, params) {
     requireParams(params);
     requireTrainingSet(set);
-    if (params.k > set.nRows) throw new RangeError(`${params.k} neighbours are wanted of ${set.nRows} training rows.`);
-    const shape = Uint32Array.of(set.nFeatures, set.nClasses, set.nRows, params.k, params.standardise ? 1 : 0);
-    return packArrays(kind, VERSION, [shape, set.features, set.labels]);
+    const { nFeatures, nClasses, nRows, features, labels } = set;
+    if (params.k > nRows) throw new RangeError(`${params.k} neighbours are wanted of ${nRows} training rows.`);
+    const scaled = scaleRows(features, nRows, chooseScales(features, nRows, nFeatures, params.standardise));
+    const shape = Uint32Array.of(nFeatures, nClasses, nRows, params.k, params.standardise ? 1 : 0);
+    return packArrays(kind, VERSION, [shape, features, labels, orderPoints(scaled, nFeatures)]);
   },
 
   assemble(_shape, _params, parts) {
@@ -57,11 +62,10 @@ class NeighbourModel implements TrainedModel {
   readonly nClasses: number;
   readonly featureImportance = null;
   readonly #k: number;
-  readonly #nRows: number;
   readonly #labels: Uint8Array;
-  readonly #means: Float64Array;
-  readonly #scales: Float64Array;
-  readonly #tree: KNN['kdTree'];
+  readonly #scales: FeatureScales;
+  readonly #search: NeighbourSearch;
+  readonly #votes: Uint16Array;
   readonly #bytes: Uint8Array;
 
   constructor(bytes: Uint8Array) {
@@ -71,19 +75,14 @@ class NeighbourModel implements TrainedModel {
     this.#bytes = bytes.slice();
     this.nFeatures = nFeatures;
     this.nClasses = nClasses;
-    this.#nRows = nRows;
     this.#k = k;
     this.#labels = reader.next(Uint8Array, nRows);
-    const { means, scales } = measureScales(features, nRows, nFeatures, standardise === 1);
-    this.#means = means;
-    this.#scales = scales;
-    const points = Array.from({ length: nRows }, (_, row) => this.#scaleRow(features, row));
-    // The label stored with each point is its row number, which the tie rule needs; the class follows from it.
-    this.#tree = new KNN(
-      points,
-      points.map((_, row) => row),
-      { k, distance: createSquaredDistance(nFeatures) },
-    ).kdTree;
+    const order = reader.next(Int32Array, nRows);
+    requirePermutation(order);
+    this.#scales = chooseScales(features, nRows, nFeatures, standardise === 1);
+    const tree = layOutTree(scaleRows(features, nRows, this.#scales), order, nFeatures);
+    this.#search = new NeighbourSearch(tree, k);
+    this.#votes = new Uint16Array(nClasses);
   }
 
   serialise(): Uint8Array {
@@ -91,78 +90,43 @@ class NeighbourModel implements TrainedModel {
   }
 
   predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
-    requireBlock(this.nFeatures, features, n, classIndex, share);
-    const votes = new Int32Array(this.nClasses);
+    const { nFeatures } = this;
+    requireBlock(nFeatures, features, n, classIndex, share);
+    const { means, scales } = this.#scales;
+    const search = this.#search;
+    const votes = this.#votes;
+    const labels = this.#labels;
+    const position = new Float64Array(nFeatures);
     for (let i = 0; i < n; i++) {
-      votes.fill(0);
-      for (const row of this.#nearestRows(this.#scaleRow(features, i))) votes[this.#labels[row]]++;
-      let winner = 0;
-      for (let c = 1; c < votes.length; c++) if (votes[c] > votes[winner]) winner = c;
+      for (let f = 0; f < nFeatures; f++) position[f] = (features[i * nFeatures + f] - means[f]) * scales[f];
+      search.find(position);
+      const { found } = search;
+      let winner = labels[found[0]];
+      for (let j = 0; j < found.length; j++) {
+        const candidate = labels[found[j]];
+        votes[candidate]++;
+        if (votes[candidate] > votes[winner] || (votes[candidate] === votes[winner] && candidate < winner)) {
+          winner = candidate;
+        }
+      }
       classIndex[i] = winner;
       if (share) share[i] = votes[winner] / this.#k;
+      for (let j = 0; j < found.length; j++) votes[labels[found[j]]] = 0;
     }
-  }
-
-  /** The k nearest training rows, ties in row order. */
-  #nearestRows(point: number[]): number[] {
-    const k = this.#k;
-    // One more than k shows whether a tie runs past the k-th; then more are fetched until it ends.
-    for (let wanted = k + 1; ; wanted *= 2) {
-      const found = this.#tree
-        .nearest(point, Math.min(wanted, this.#nRows))
-        .map(([stored, distance]) => ({ row: stored[this.nFeatures], distance }))
-        .sort((a, b) => a.distance - b.distance || a.row - b.row);
-      const tieEnds = found.length === this.#nRows || found[found.length - 1].distance > found[k - 1].distance;
-      if (tieEnds) return found.slice(0, k).map(({ row }) => row);
-    }
-  }
-
-  #scaleRow(features: Float32Array, row: number): number[] {
-    const point = new Array<number>(this.nFeatures);
-    for (let f = 0; f < this.nFeatures; f++) {
-      point[f] = (features[row * this.nFeatures + f] - this.#means[f]) * this.#scales[f];
-    }
-    return point;
   }
 }
 
-/**
- * Squared Euclidean distance over the features only. With the library's own distance its search visits every point,
- * since that reads the length of the stand-in the search compares with, which has none; this one lets the search skip
- * branches.
- */
-function createSquaredDistance(nFeatures: number): (a: ArrayLike<number>, b: ArrayLike<number>) => number {
-  return (a, b) => {
-    let sum = 0;
-    for (let f = 0; f < nFeatures; f++) {
-      const difference = a[f] - b[f];
-      sum += difference * difference;
-    }
-    return sum;
-  };
+function chooseScales(features: Float32Array, nRows: number, nFeatures: number, standardise: boolean): FeatureScales {
+  return standardise ? measureScales(features, nRows, nFeatures) : keepScales(nFeatures);
 }
 
-function measureScales(
-  features: Float32Array,
-  nRows: number,
-  nFeatures: number,
-  standardise: boolean,
-): { means: Float64Array; scales: Float64Array } {
-  const means = new Float64Array(nFeatures);
-  const scales = new Float64Array(nFeatures).fill(1);
-  if (!standardise) return { means, scales };
-  for (let f = 0; f < nFeatures; f++) {
-    let sum = 0;
-    for (let row = 0; row < nRows; row++) sum += features[row * nFeatures + f];
-    const mean = sum / nRows;
-    let squares = 0;
-    for (let row = 0; row < nRows; row++) squares += (features[row * nFeatures + f] - mean) ** 2;
-    const deviation = Math.sqrt(squares / nRows);
-    means[f] = mean;
-    // A constant feature tells nothing and is left at distance 0.
-    scales[f] = deviation > 0 ? 1 / deviation : 0;
+/** Bytes can carry a right checksum and still no tree. */
+function requirePermutation(order: Int32Array): void {
+  const seen = new Uint8Array(order.length);
+  for (const row of order) {
+    if (row < 0 || row >= order.length || seen[row]) throw new ModelBytesError('The order of the rows makes no sense.');
+    seen[row] = 1;
   }
-  return { means, scales };
 }
 
 function requireParams({ k }: NearestNeighboursParams): void {

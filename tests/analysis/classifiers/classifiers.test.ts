@@ -1,3 +1,4 @@
+import KNN from 'ml-knn';
 import { describe, expect, it } from 'vitest';
 import {
   trainModel,
@@ -5,8 +6,10 @@ import {
   type TrainedModel,
   type TrainingSet,
 } from '../../../server/analysis/classifiers/classifier.ts';
-import { ModelBytesError } from '../../../server/analysis/classifiers/model-bytes.ts';
+import { ModelBytesError, packArrays, unpackArrays } from '../../../server/analysis/classifiers/model-bytes.ts';
 import { defaultNearestNeighboursParams } from '../../../server/analysis/classifiers/nearest-neighbours.ts';
+import { NeighbourSearch } from '../../../server/analysis/classifiers/neighbour-search.ts';
+import { layOutTree, orderPoints } from '../../../server/analysis/classifiers/neighbour-tree.ts';
 import {
   defaultRandomForestParams,
   randomForest,
@@ -33,6 +36,13 @@ const params = {
   'random-subspace-forest': { ...defaultRandomSubspaceForestParams, trees: 12, featuresPerTree: 3 },
   'nearest-neighbours': defaultNearestNeighboursParams,
 };
+
+/** Over the features only: with its own distance the library also counts the row number. */
+function squaredDistance(a: ArrayLike<number>, b: ArrayLike<number>): number {
+  let sum = 0;
+  for (let f = 0; f < 4; f++) sum += (a[f] - b[f]) ** 2;
+  return sum;
+}
 
 function classify(model: TrainedModel, set: TrainingSet): { classIndex: Uint8Array; share: Float32Array } {
   const [classIndex, share] = [new Uint8Array(set.nRows), new Float32Array(set.nRows)];
@@ -180,6 +190,43 @@ describe('forests', () => {
 });
 
 describe('nearest neighbours', () => {
+  it('find the rows and distances that the library finds, whatever was asked before', () => {
+    const rng = createRng(77);
+    const points = Float64Array.from({ length: 900 * 4 }, () => rng.nextFloat() * rng.nextBelow(50));
+    const rows = Array.from({ length: 900 }, (_, i) => [...points.subarray(i * 4, i * 4 + 4)]);
+    const { kdTree } = new KNN(rows, [...rows.keys()], { distance: squaredDistance });
+    const search = new NeighbourSearch(layOutTree(points, orderPoints(points, 4), 4), 9);
+    for (let i = 0; i < 400; i++) {
+      const position = Float64Array.from({ length: 4 }, () => rng.nextFloat() * 60 - 5);
+      search.find(position);
+      const wanted = kdTree.nearest([...position], 9).sort(([, a], [, b]) => a - b);
+      expect([...search.found]).toEqual(wanted.map(([stored]) => stored[4]));
+    }
+  });
+
+  it('take a pixel with a missing value for equally far from all, and go on as before', () => {
+    const { model } = trainModel(getClassifier('nearest-neighbours'), small, { k: 3, standardise: true }, 0);
+    const pixels = test.features.slice(0, 12);
+    const alone = new Uint8Array(3);
+    model.predictBlock(pixels, 3, alone);
+    pixels[5] = NaN;
+    const got = new Uint8Array(3);
+    model.predictBlock(pixels, 3, got);
+    expect([got[0], got[2]]).toEqual([alone[0], alone[2]]);
+    const votes = [...small.labels.subarray(0, 3)].map((c, _, all) => all.filter((other) => other === c).length);
+    expect(votes[[...small.labels.subarray(0, 3)].indexOf(got[1])]).toBe(Math.max(...votes));
+  });
+
+  it('refuse an order of rows that names a row twice', () => {
+    const { model } = trainModel(getClassifier('nearest-neighbours'), small, { k: 3, standardise: false }, 0);
+    const bytes = model.serialise();
+    const reader = unpackArrays(bytes, 'nearest-neighbours', 2);
+    const [shape, features, labels, order] = [reader.next(Uint32Array), reader.next(Float32Array), reader.next(Uint8Array), reader.next(Int32Array)]; // prettier-ignore
+    order[1] = order[0];
+    const forged = packArrays('nearest-neighbours', 2, [shape, features, labels, order]);
+    expect(() => loadModel(forged)).toThrow(/makes no sense/);
+  });
+
   it('decide ties by row order and then by the lowest class', () => {
     const classifier = getClassifier('nearest-neighbours');
     // Five rows at the same place: with k = 3 the first three vote; with k = 4 classes 1 and 2 tie and 1 wins.
