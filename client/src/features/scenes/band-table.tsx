@@ -178,13 +178,14 @@ function Become({ band, index, control }: Pick<BandFieldsProps, 'band' | 'index'
   const [low, high] = [p2 * scale + offset, p98 * scale + offset].sort((a, b) => a - b) as [number, number];
   const decimals = quantity === 'digital number' && high - low < 10 ? 3 : DECIMALS[quantity];
   const doubt = doubtOf(low, high, quantity);
+  const isAsStored = scale === 1 && offset === 0;
   return (
     <>
       <p className={classNames('whitespace-nowrap', doubt && 'font-medium text-rust')}>
         {formatNumber(low, decimals)} – {formatNumber(high, decimals)}
         {quantity === 'kelvin' && ' K'}
       </p>
-      <p className="text-xs whitespace-nowrap text-ink-soft">{doubt ?? stored}</p>
+      <p className="text-xs whitespace-nowrap text-ink-soft">{doubt ?? (isAsStored ? 'as stored' : stored)}</p>
     </>
   );
 }

@@ -20,7 +20,7 @@ interface SceneCardProps {
   onUploadAnother: () => void;
 }
 
-const THUMBNAIL = { width: 232, height: 172 };
+const THUMBNAIL = { width: 212, height: 176 };
 
 /** A scene in the list: its picture, what it is, and how it stands. */
 export function SceneCard({ scene, canManage, onDelete, onUploadAnother }: SceneCardProps) {
@@ -41,7 +41,7 @@ export function SceneCard({ scene, canManage, onDelete, onUploadAnother }: Scene
               </Link>
             </h2>
             <p className="text-sm text-ink-soft">
-              {scene.acquiredOn ? `Acquired ${formatCalendarDate(scene.acquiredOn)}` : 'Date of acquisition not given'}
+              {scene.acquiredOn ? `Acquired ${formatCalendarDate(scene.acquiredOn)}` : 'No date given'}
             </p>
           </div>
           <SceneState scene={scene} />
@@ -89,8 +89,9 @@ export function SceneCard({ scene, canManage, onDelete, onUploadAnother }: Scene
 
 function ReadyFacts({ scene }: { scene: Scene }) {
   const facts: [string, ReactNode][] = [
-    ['Size', [describeSize(scene), describePixel(scene.bands)].filter(Boolean).join(' at ')],
-    ['Reference system', <span title={scene.crsName ?? undefined}>{describeCrs(scene)}</span>],
+    ['Size', describeSize(scene)],
+    ['Pixel', describePixel(scene.bands) ?? 'not given'],
+    ['System', <span title={scene.crsName ?? undefined}>{describeCrs(scene)}</span>],
     [formatCount(scene.bands.length, 'band'), describeBands(scene.bands)],
   ];
   return (

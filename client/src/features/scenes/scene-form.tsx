@@ -18,7 +18,7 @@ import { presetNote } from './preset-note.ts';
 import {
   type SceneFormInput,
   type SceneValues,
-  differingValues,
+  overwrittenValues,
   sceneFormSchema,
   sceneValuesOf,
 } from './scene-values.ts';
@@ -83,7 +83,11 @@ export function SceneForm({ formId, scene, onStanding }: SceneFormProps) {
       {conflict && (
         <ConflictNote
           what="this scene"
-          rows={differingValues(sceneValuesOf(conflict), getValues() as SceneValues)}
+          rows={overwrittenValues(
+            formState.defaultValues as SceneValues,
+            sceneValuesOf(conflict),
+            getValues() as SceneValues,
+          )}
           isPending={isSaving}
           onTakeTheirs={() => {
             reset(sceneValuesOf(conflict));
@@ -122,7 +126,7 @@ export function SceneForm({ formId, scene, onStanding }: SceneFormProps) {
           onScale={(one) => applyPreset(one.name, (bands) => applyValueScale(bands, one))}
         />
       </div>
-      <div aria-live="polite">
+      <div aria-live="polite" className="empty:-mt-4">
         {preset && (
           <Callout tone={preset.before ? 'ok' : 'beware'}>
             {preset.note}{' '}

@@ -3,7 +3,7 @@ import { useMap } from 'react-leaflet';
 import type { Project } from '../../../../shared/contracts/project.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { AreaOutline } from '../../components/map/area-outline.tsx';
-import { BaseMap } from '../../components/map/base-map.tsx';
+import { BaseMap, type Bounds, toLatLngBounds } from '../../components/map/base-map.tsx';
 import { Crosshair } from '../../components/map/crosshair.tsx';
 import { PlaceMarker } from '../../components/map/place-marker.tsx';
 import { PressMap } from '../../components/map/press-map.tsx';
@@ -74,10 +74,26 @@ export function SceneMap(props: SceneMapProps) {
           if (!isEditing) onProbe(at);
         }}
       />
+      <FillView bounds={bounds} />
       <ZoomTo target={zoom} />
       <MapCursor isDrawing={!area.draft} />
     </BaseMap>
   );
+}
+
+/** How far a scene may reach past the map's edges at first, in shares of the map: whole zoom steps leave it small else. */
+const REACH_PAST = 0.09;
+
+/** The first view: the closest whole zoom at which all but the scene's margins is seen. */
+function FillView({ bounds }: { bounds: Bounds }) {
+  const map = useMap();
+  const key = bounds.join(' ');
+  useEffect(() => {
+    const box = toLatLngBounds(key.split(' ').map(Number) as [number, number, number, number]);
+    const { x, y } = map.getSize();
+    map.fitBounds(box, { padding: [-REACH_PAST * x, -REACH_PAST * y], animate: false });
+  }, [key, map]);
+  return null;
 }
 
 /** A crosshair where a press reads a pixel or sets a corner. */

@@ -29,7 +29,7 @@ export function SceneSlip(props: SceneSlipProps) {
   return (
     <Slip
       title={scene.name}
-      note={scene.acquiredOn ? `Acquired ${formatCalendarDate(scene.acquiredOn)}` : 'Date of acquisition not given'}
+      note={scene.acquiredOn ? `Acquired ${formatCalendarDate(scene.acquiredOn)}` : 'No date of acquisition given'}
     >
       <Tabs<SceneLeaf>
         label="Scene"

@@ -1,4 +1,4 @@
-import { BAND_ROLE_NAME } from '../../../../shared/constants/bands.ts';
+import { BAND_ROLE_NAME, type BandRole } from '../../../../shared/constants/bands.ts';
 import type { Band, Scene } from '../../../../shared/contracts/scene.ts';
 import { THIN_SPACE, formatNumber } from '../../lib/format.ts';
 
@@ -22,9 +22,14 @@ export function describeCrs({ crsEpsg, crsName }: Pick<Scene, 'crsEpsg' | 'crsNa
   return crsEpsg === null ? crsName : `EPSG:${crsEpsg}`;
 }
 
-/** The roles the bands have, in their order: "Blue, Green, Red"; those without one are counted. */
+/** Where a list of roles must be short. */
+const SHORT_ROLE_NAME: Partial<Record<BandRole, string>> = { nir: 'NIR', swir1: 'SWIR 1', swir2: 'SWIR 2' };
+
+/** The roles the bands have, in their order: "Blue, Green, Red, NIR"; those without one are counted. */
 export function describeBands(bands: readonly Band[]): string {
-  const named = bands.filter(({ role }) => role !== 'other').map(({ role }) => BAND_ROLE_NAME[role]);
+  const named = bands
+    .filter(({ role }) => role !== 'other')
+    .map(({ role }) => SHORT_ROLE_NAME[role] ?? BAND_ROLE_NAME[role]);
   const nOther = bands.length - named.length;
   if (named.length === 0) return 'no roles yet';
   return [...named, ...(nOther > 0 ? [`${nOther} without a role`] : [])].join(', ');

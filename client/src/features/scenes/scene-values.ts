@@ -32,14 +32,14 @@ export function sceneValuesOf(scene: Pick<Scene, 'name' | 'acquiredOn' | 'bands'
   };
 }
 
-const BAND_FIELDS: readonly { key: keyof BandValues; label: string; print: (values: BandValues) => string }[] = [
-  { key: 'name', label: 'name', print: ({ name }) => name },
-  { key: 'role', label: 'role', print: ({ role }) => BAND_ROLE_NAME[role] },
-  { key: 'centreWavelengthUm', label: 'wavelength', print: (band) => printNumber(band.centreWavelengthUm, 'µm') },
-  { key: 'gsdMeters', label: 'ground sample', print: (band) => printNumber(band.gsdMeters, 'm') },
-  { key: 'scale', label: 'scale', print: ({ scale }) => String(scale) },
-  { key: 'offset', label: 'offset', print: ({ offset }) => String(offset) },
-  { key: 'quantity', label: 'quantity', print: ({ quantity }) => quantity },
+const BAND_FIELDS: readonly { label: string; print: (values: BandValues) => string }[] = [
+  { label: 'name', print: ({ name }) => name },
+  { label: 'role', print: ({ role }) => BAND_ROLE_NAME[role] },
+  { label: 'wavelength', print: (band) => printNumber(band.centreWavelengthUm, 'µm') },
+  { label: 'ground sample', print: (band) => printNumber(band.gsdMeters, 'm') },
+  { label: 'scale', print: ({ scale }) => String(scale) },
+  { label: 'offset', print: ({ offset }) => String(offset) },
+  { label: 'quantity', print: ({ quantity }) => quantity },
 ];
 
 function printNumber(value: number | null, unit: string): string {
@@ -48,20 +48,24 @@ function printNumber(value: number | null, unit: string): string {
 
 const printDay = (day: string | null) => (day ? formatCalendarDate(day) : 'not given');
 
-/** The fields on which the scene as it stands and the form differ. */
-export function differingValues(theirs: SceneValues, mine: SceneValues): ConflictRow[] {
+/**
+ * What someone else changed since the form was opened and the form has otherwise: what "mine" would overwrite.
+ *
+ * @param base the scene as the form was opened on it
+ */
+export function overwrittenValues(base: SceneValues, theirs: SceneValues, mine: SceneValues): ConflictRow[] {
   const rows: ConflictRow[] = [];
-  if (theirs.name !== mine.name) rows.push({ label: 'Name', theirs: theirs.name, mine: mine.name });
-  if ((theirs.acquiredOn || null) !== (mine.acquiredOn || null)) {
-    rows.push({ label: 'Acquired on', theirs: printDay(theirs.acquiredOn), mine: printDay(mine.acquiredOn) });
-  }
+  const compare = (label: string, was: string, now: string, own: string) => {
+    if (now !== was && now !== own) rows.push({ label, theirs: now, mine: own });
+  };
+  compare('Name', base.name, theirs.name, mine.name);
+  compare('Acquired on', printDay(base.acquiredOn), printDay(theirs.acquiredOn), printDay(mine.acquiredOn));
   theirs.bands.forEach((band, index) => {
+    const was = base.bands.find(({ id }) => id === band.id);
     const own = mine.bands.find(({ id }) => id === band.id);
-    if (!own) return;
-    for (const { key, label, print } of BAND_FIELDS) {
-      if (band[key] !== own[key]) {
-        rows.push({ label: `Band ${index + 1}, ${label}`, theirs: print(band), mine: print(own) });
-      }
+    if (!was || !own) return;
+    for (const { label, print } of BAND_FIELDS) {
+      compare(`Band ${index + 1}, ${label}`, print(was), print(band), print(own));
     }
   });
   return rows;

@@ -1,6 +1,5 @@
 import type { Scene } from '../../../../shared/contracts/scene.ts';
-import type { ProblemError} from '../../lib/problem-error.ts';
-import { asProblem } from '../../lib/problem-error.ts';
+import { type ProblemError, asProblem } from '../../lib/problem-error.ts';
 import { type PacePoint, addPacePoint } from './upload-pace.ts';
 import { type SceneUpload, sendScene } from './send-scene.ts';
 

@@ -44,6 +44,7 @@ function SceneList() {
   const list = scenes.data ?? [];
   const ready = list.find(({ state }) => state === 'ready');
   const isEmpty = scenes.data !== undefined && list.length === 0 && uploads.length === 0;
+  const cardActs = { canManage, onDelete: setDeleting, onUploadAnother: () => setChoosing([]) };
   const uploadButton = (
     <Button kind="primary" icon={<Plus />} onClick={() => setChoosing([])}>
       Upload a scene
@@ -85,25 +86,43 @@ function SceneList() {
             ))}
           </div>
         )}
-        {list.length > 0 && (
-          <ul aria-label="Scenes" className="grid gap-4 xl:grid-cols-2">
-            {list.map((scene) => (
-              <SceneCard
-                key={scene.id}
-                scene={scene}
-                canManage={canManage}
-                onDelete={() => setDeleting(scene)}
-                onUploadAnother={() => setChoosing([])}
-              />
-            ))}
-          </ul>
-        )}
+        <Cards label="Scenes" scenes={list.filter(({ state }) => state !== 'failed')} {...cardActs} />
+        <Cards label="Not taken" scenes={list.filter(({ state }) => state === 'failed')} isTitled {...cardActs} />
       </div>
       {choosing && (
         <UploadDialog firstFiles={choosing} limits={limits} onStart={start} onClose={() => setChoosing(null)} />
       )}
       {deleting && <DeleteSceneDialog scene={deleting} onClose={() => setDeleting(null)} />}
     </ReadingPage>
+  );
+}
+
+interface CardsProps {
+  label: string;
+  scenes: readonly Scene[];
+  isTitled?: boolean;
+  canManage: boolean;
+  onDelete: (scene: Scene) => void;
+  onUploadAnother: () => void;
+}
+
+function Cards({ label, scenes, isTitled = false, canManage, onDelete, onUploadAnother }: CardsProps) {
+  if (scenes.length === 0) return null;
+  return (
+    <section aria-label={label} className="mb-7">
+      {isTitled && <h2 className="mb-2 text-sm font-semibold text-ink-soft">{label}</h2>}
+      <ul className="grid gap-4 xl:grid-cols-2">
+        {scenes.map((scene) => (
+          <SceneCard
+            key={scene.id}
+            scene={scene}
+            canManage={canManage}
+            onDelete={() => onDelete(scene)}
+            onUploadAnother={onUploadAnother}
+          />
+        ))}
+      </ul>
+    </section>
   );
 }
 
