@@ -50,6 +50,20 @@ export function forgetSample(history: DeskHistory, sampleId: string): DeskHistor
   return { past: history.past.filter(isOther), future: history.future.filter(isOther) };
 }
 
+/** Forgets one kind of step of a sample: it was taken back another way. */
+export function forgetStep(history: DeskHistory, kind: DeskStep['kind'], sampleId: string): DeskHistory {
+  const keep = (step: DeskStep) => !(step.kind === kind && 'sampleId' in step && step.sampleId === sampleId);
+  return { past: history.past.filter(keep), future: history.future.filter(keep) };
+}
+
+/** While a drawing is open only its own steps are walked; without one, its changes of outline have nothing to act on. */
+export function isWithinReach(step: DeskStep | undefined, isDrawingOpen: boolean, isUndo: boolean): boolean {
+  if (!step) return false;
+  if (step.kind === 'shaped') return isDrawingOpen;
+  if (step.kind === 'drawn') return isUndo === isDrawingOpen;
+  return !isDrawingOpen;
+}
+
 /** What an undo (or redo) of the step did, for the toast. */
 export function describeStep(step: DeskStep, isUndo: boolean): string {
   switch (step.kind) {

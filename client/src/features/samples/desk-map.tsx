@@ -13,8 +13,9 @@ import { ZoomTo } from '../../components/map/zoom-to.tsx';
 import { sayDone } from '../../components/ui/toaster.tsx';
 import { formatMeters } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';
-import { finestTileZoom, unwrapBounds } from '../../lib/map-bounds.ts';
+import { finestTileZoom, unwrapBounds, unwrapLongitude } from '../../lib/map-bounds.ts';
 import type { SceneView } from '../../lib/scene-view.ts';
+import type { Place } from '../../lib/project/probe-query.ts';
 import { drawToolOf } from './desk-tool.ts';
 import { samplePolygons } from './sample-polygons.ts';
 import type { Desk } from './use-desk.ts';
@@ -35,11 +36,12 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
   const isStill = draft !== null || drawTool !== null || tool === 'inspect';
   const colour = byId.get(desk.classId)?.colour ?? '#85867a';
   const gsdMeters = scene.bands.find((band) => band.role === 'red')?.gsdMeters ?? scene.bands[0]?.gsdMeters;
-  const firstBounds = project.studyAreaBounds ?? scene.bounds ?? [-180, -85, 180, 85];
+  const firstBounds = unwrapBounds(project.studyAreaBounds ?? scene.bounds ?? [-180, -85, 180, 85]);
+  const onMap = ({ lon, lat }: Place): Place => ({ lon: unwrapLongitude(lon, firstBounds), lat });
   return (
     <BaseMap
       label={`${scene.name} with ${shown.length} samples`}
-      bounds={unwrapBounds(firstBounds)}
+      bounds={firstBounds}
       maxZoom={scene.bounds && scene.height ? finestTileZoom(unwrapBounds(scene.bounds), scene.height) + 2 : 18}
       readoutNote={gsdMeters ? `${formatMeters(gsdMeters)} pixels` : undefined}
     >
@@ -81,9 +83,9 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
         onPress={(place) => tool === 'inspect' && !draft && desk.setProbe(place)}
       />
       {!isStill && <PanByKeys />}
-      {desk.probe && <PlaceMarker place={desk.probe} mark="probe" />}
+      {desk.probe && <PlaceMarker place={onMap(desk.probe)} mark="probe" />}
       {draft && refusal?.at && (
-        <PlaceMarker place={{ lon: refusal.at[0], lat: refusal.at[1] }} mark="fault" label="Here" />
+        <PlaceMarker place={onMap({ lon: refusal.at[0], lat: refusal.at[1] })} mark="fault" label="Here" />
       )}
       <ZoomTo target={desk.zoom} />
       <DrawingCursor isOn={drawTool !== null && !draft} />

@@ -17,7 +17,7 @@ const measureDrawing = (projectId: string, sceneId: string, geometry: Polygon, s
   });
 
 /** Pixels, area and spectrum of an outline on a scene, or why it is refused; asked again when the scene's bands change. */
-export const measureQuery = (projectId: string, scene: MeasuredScene, geometry: Polygon) =>
+const measureQuery = (projectId: string, scene: MeasuredScene, geometry: Polygon) =>
   queryOptions({
     // Under the scene: another person's new sample changes nothing in what this outline holds.
     queryKey: projectKey(projectId, 'scenes', scene.id, 'measure', scene.contentKey, geometry.coordinates),

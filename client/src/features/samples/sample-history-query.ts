@@ -7,7 +7,7 @@ const getSampleHistory = (sampleId: string, signal: AbortSignal) =>
   fetchJson(`/samples/${sampleId}/history`, sampleHistorySchema, { signal });
 
 /** Every version of a sample, the newest first. */
-export const sampleHistoryQuery = (projectId: string, sampleId: string) =>
+const sampleHistoryQuery = (projectId: string, sampleId: string) =>
   queryOptions({
     queryKey: projectKey(projectId, 'samples', sampleId, 'history'),
     queryFn: ({ signal }) => getSampleHistory(sampleId, signal),

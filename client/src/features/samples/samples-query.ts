@@ -8,7 +8,7 @@ const listSamples = (projectId: string, signal: AbortSignal) =>
   fetchJson(`/projects/${projectId}/samples`, sampleListSchema, { signal });
 
 /** The project's samples, all scenes together. */
-export const samplesQuery = (projectId: string) =>
+const samplesQuery = (projectId: string) =>
   queryOptions({
     queryKey: projectKey(projectId, 'samples', 'list'),
     queryFn: ({ signal }) => listSamples(projectId, signal),

@@ -12,6 +12,8 @@ import {
   closeDrawing,
   describeStep,
   forgetSample,
+  forgetStep,
+  isWithinReach,
   pushStep,
   stepBack,
   stepForward,
@@ -202,7 +204,7 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
   };
   const walk = (isUndo: boolean) => {
     const next = isUndo ? stepBack(history) : stepForward(history);
-    if (!next || !isWithinReach(next.step, draft, isUndo)) return;
+    if (!next || !isWithinReach(next.step, draft !== null, isUndo)) return;
     void guarded(
       async () => {
         await replay(next.step, isUndo);
@@ -230,8 +232,8 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     discard,
     erase,
     restoreVersion,
-    canUndo: isWithinReach(history.past.at(-1), draft, true),
-    canRedo: isWithinReach(history.future.at(-1), draft, false),
+    canUndo: isWithinReach(history.past.at(-1), draft !== null, true),
+    canRedo: isWithinReach(history.future.at(-1), draft !== null, false),
     undo: () => walk(true),
     redo: () => walk(false),
     clearError: () => setSaveError(null),
@@ -241,17 +243,4 @@ export function useDeskActs({ projectId, draft, setDraft, onSelect }: DeskActsOp
     noteShaped: (before: Draft['geometry'], after: Draft['geometry']) =>
       setHistory((now) => pushStep(now, { kind: 'shaped', before, after })),
   };
-}
-
-/** While a drawing is open only its own steps are walked; without one, its changes of outline have nothing to act on. */
-function isWithinReach(step: DeskStep | undefined, draft: Draft | null, isUndo: boolean): boolean {
-  if (!step) return false;
-  if (step.kind === 'shaped') return draft !== null;
-  if (step.kind === 'drawn') return isUndo === (draft !== null);
-  return draft === null;
-}
-
-function forgetStep(history: DeskHistory, kind: DeskStep['kind'], sampleId: string): DeskHistory {
-  const keep = (step: DeskStep) => !(step.kind === kind && 'sampleId' in step && step.sampleId === sampleId);
-  return { past: history.past.filter(keep), future: history.future.filter(keep) };
 }

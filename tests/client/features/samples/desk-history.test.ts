@@ -6,6 +6,8 @@ import {
   closeDrawing,
   describeStep,
   forgetSample,
+  forgetStep,
+  isWithinReach,
   pushStep,
   stepBack,
   stepForward,
@@ -44,6 +46,25 @@ describe('the desk’s line of steps', () => {
   it('forgets every step of a sample that someone else changed, in both directions', () => {
     const history = stepBack(after(created(1), created(2), { kind: 'deleted', sampleId: 's1', number: 1 }))!.history;
     expect(forgetSample(history, 's1')).toEqual({ past: [created(2)], future: [] });
+  });
+
+  it('forgets a deletion that was taken back from its note', () => {
+    const history = after(created(1), { kind: 'deleted', sampleId: 's1', number: 1 });
+    expect(forgetStep(history, 'deleted', 's1')).toEqual({ past: [created(1)], future: [] });
+  });
+
+  it('walks only the drawing’s own steps while one is open', () => {
+    expect(isWithinReach(created(1), true, true)).toBe(false);
+    expect(isWithinReach(shaped, true, true)).toBe(true);
+    expect(isWithinReach(drawn, true, true)).toBe(true);
+    expect(isWithinReach(drawn, true, false)).toBe(false);
+  });
+
+  it('brings a drawing back, and no change of outline, while none is open', () => {
+    expect(isWithinReach(drawn, false, false)).toBe(true);
+    expect(isWithinReach(shaped, false, true)).toBe(false);
+    expect(isWithinReach(created(1), false, true)).toBe(true);
+    expect(isWithinReach(undefined, false, true)).toBe(false);
   });
 
   it('keeps at most two hundred steps, the newest', () => {
