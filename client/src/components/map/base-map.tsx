@@ -1,4 +1,4 @@
-import { type Map as LeafletMap, type LatLngBoundsExpression, CRS } from 'leaflet';
+import { type FitBoundsOptions, type Map as LeafletMap, type LatLngBoundsExpression, CRS } from 'leaflet';
 import { type ReactNode, useEffect, useRef } from 'react';
 import { MapContainer, ScaleControl, ZoomControl, useMap } from 'react-leaflet';
 import { CoordinateReadout } from './coordinate-readout.tsx';
@@ -19,12 +19,16 @@ export interface BaseMapProps {
   children?: ReactNode;
 }
 
+/** What floats over the map: the readout at the top, the strip at the foot. */
+const FREE_ROOM = { paddingTopLeft: [12, 12], paddingBottomRight: [12, 150] } satisfies FitBoundsOptions;
+
 /** A map without a base map: deep ground, zoom at the bottom right, scale in metres, coordinates at the top right. */
 export function BaseMap({ label, bounds, readoutNote, maxZoom = 18, onReady, children }: BaseMapProps) {
   return (
     <MapContainer
       crs={CRS.EPSG3857}
       bounds={toLatLngBounds(bounds)}
+      boundsOptions={FREE_ROOM}
       maxZoom={maxZoom}
       minZoom={3}
       zoomControl={false}
@@ -88,7 +92,7 @@ function FollowBounds({ bounds }: { bounds: Bounds }) {
   const key = bounds.join(' ');
   useEffect(() => {
     const [west, south, east, north] = key.split(' ').map(Number) as [number, number, number, number];
-    map.fitBounds(toLatLngBounds([west, south, east, north]));
+    map.fitBounds(toLatLngBounds([west, south, east, north]), FREE_ROOM);
   }, [key, map]);
   return null;
 }
