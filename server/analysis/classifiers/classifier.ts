@@ -6,6 +6,8 @@ export interface TrainingSet {
   nRows: number;
   nFeatures: number;
   nClasses: number;
+  /** What the classes are called, for messages. */
+  classNames?: readonly string[];
 }
 
 /** Parts of the training done so far; parts are of about equal size. */
@@ -26,7 +28,8 @@ export interface TrainedModel {
   readonly featureImportance: Float64Array | null;
   /**
    * Classifies n rows of row-major features: fills classIndex[0..n) and, when given, share[0..n) with the winner's
-   * share of the votes (0..1). Rows of no data are the caller's to mask: a NaN is taken as greater than everything.
+   * share of the votes (0..1), or its chance where the method has chances. Rows of no data are the caller's to mask: a
+   * NaN gives some class.
    * @throws RangeError when an array is too short.
    */
   predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void;

@@ -1,4 +1,6 @@
 import type { Classifier, TrainedModel } from './classifier.ts';
+import { gaussianMaximumLikelihood, type GaussianParams } from './gaussian-maximum-likelihood.ts';
+import { minimumDistance, type MinimumDistanceParams } from './minimum-distance.ts';
 import { ModelBytesError, readKind } from './model-bytes.ts';
 import { nearestNeighbours, type NearestNeighboursParams } from './nearest-neighbours.ts';
 import { randomForest, type RandomForestParams } from './random-forest.ts';
@@ -9,6 +11,8 @@ export interface ClassifierParams {
   'random-forest': RandomForestParams;
   'random-subspace-forest': RandomSubspaceForestParams;
   'nearest-neighbours': NearestNeighboursParams;
+  'gaussian-maximum-likelihood': GaussianParams;
+  'minimum-distance': MinimumDistanceParams;
 }
 
 export type ClassifierKind = keyof ClassifierParams;
@@ -17,6 +21,8 @@ const classifiers: { [K in ClassifierKind]: Classifier<ClassifierParams[K]> } = 
   'random-forest': randomForest,
   'random-subspace-forest': randomSubspaceForest,
   'nearest-neighbours': nearestNeighbours,
+  'gaussian-maximum-likelihood': gaussianMaximumLikelihood,
+  'minimum-distance': minimumDistance,
 };
 
 /** All kinds, the default first. */

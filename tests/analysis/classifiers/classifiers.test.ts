@@ -6,6 +6,8 @@ import {
   type TrainedModel,
   type TrainingSet,
 } from '../../../server/analysis/classifiers/classifier.ts';
+import { defaultGaussianParams } from '../../../server/analysis/classifiers/gaussian-maximum-likelihood.ts';
+import { defaultMinimumDistanceParams } from '../../../server/analysis/classifiers/minimum-distance.ts';
 import { ModelBytesError, packArrays, unpackArrays } from '../../../server/analysis/classifiers/model-bytes.ts';
 import { defaultNearestNeighboursParams } from '../../../server/analysis/classifiers/nearest-neighbours.ts';
 import { NeighbourSearch } from '../../../server/analysis/classifiers/neighbour-search.ts';
@@ -35,6 +37,8 @@ const params = {
   'random-forest': { ...defaultRandomForestParams, trees: 12 },
   'random-subspace-forest': { ...defaultRandomSubspaceForestParams, trees: 12, featuresPerTree: 3 },
   'nearest-neighbours': defaultNearestNeighboursParams,
+  'gaussian-maximum-likelihood': defaultGaussianParams,
+  'minimum-distance': defaultMinimumDistanceParams,
 };
 
 /** Over the features only: with its own distance the library also counts the row number. */
@@ -272,7 +276,13 @@ describe('nearest neighbours', () => {
 });
 
 it('the registry knows its kinds and the default comes first', () => {
-  expect(classifierKinds).toEqual(['random-forest', 'random-subspace-forest', 'nearest-neighbours']);
+  expect(classifierKinds).toEqual([
+    'random-forest',
+    'random-subspace-forest',
+    'nearest-neighbours',
+    'gaussian-maximum-likelihood',
+    'minimum-distance',
+  ]);
   expect(isClassifierKind('toString')).toBe(false);
   expect(isClassifierKind('random-forest')).toBe(true);
 });
