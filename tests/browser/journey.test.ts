@@ -107,7 +107,10 @@ async function uploadScene(projectId: string, file: string): Promise<Scene> {
   await dialog.locator('input[type=file]').setInputFiles(file);
   await expectAccessible('upload dialog');
   await dialog.getByRole('button', { name: /^Upload 1 file/ }).click();
-  await page.getByText(/^(Ready|Check band roles)$/).first().waitFor({ timeout: 90_000 });
+  await page
+    .getByText(/^(Ready|Check band roles)$/)
+    .first()
+    .waitFor({ timeout: 90_000 });
   const { scenes } = await getJson<{ scenes: Scene[] }>(`/projects/${projectId}/scenes`);
   expect(scenes).toHaveLength(1);
   return scenes[0]!;

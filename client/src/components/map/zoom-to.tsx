@@ -1,4 +1,4 @@
-import { latLngBounds } from 'leaflet';
+import type { Map as LeafletMap } from 'leaflet';
 import { useEffect } from 'react';
 import { useMap } from 'react-leaflet';
 import { type Bounds, toLatLngBounds } from './base-map.tsx';
@@ -17,6 +17,24 @@ const ROOM_PIXELS = 60;
 const FOOT_PIXELS = 190;
 const SETTLING_MS = 600;
 
+/** How far a stretch from `low` to `high` must move to lie between `first` and `last`; null when it is longer than that. */
+function shiftInto(low: number, high: number, first: number, last: number): number | null {
+  if (high - low > last - first) return null;
+  return low < first ? low - first : high > last ? high - last : 0;
+}
+
+/** Moves the map only as far as the place needs to come into sight; false when it is too large for the view. */
+function bringIntoSight(map: LeafletMap, [west, south, east, north]: Bounds): boolean {
+  const size = map.getSize();
+  const topLeft = map.latLngToContainerPoint([north, west]);
+  const bottomRight = map.latLngToContainerPoint([south, east]);
+  const dx = shiftInto(topLeft.x, bottomRight.x, ROOM_PIXELS / 2, size.x - ROOM_PIXELS / 2);
+  const dy = shiftInto(topLeft.y, bottomRight.y, ROOM_PIXELS, size.y - FOOT_PIXELS);
+  if (dx === null || dy === null) return false;
+  if (dx !== 0 || dy !== 0) map.panBy([dx, dy], { animate: false });
+  return true;
+}
+
 /** Takes the map to a place, clear of the strip at its foot. */
 export function ZoomTo({ target }: { target: ZoomTarget | null }) {
   const map = useMap();
@@ -24,12 +42,7 @@ export function ZoomTo({ target }: { target: ZoomTarget | null }) {
     if (!target) return undefined;
     const go = () => {
       const bounds = toLatLngBounds(target.bounds);
-      const size = map.getSize();
-      const free = latLngBounds(
-        map.containerPointToLatLng([ROOM_PIXELS / 2, size.y - FOOT_PIXELS]),
-        map.containerPointToLatLng([size.x - ROOM_PIXELS / 2, ROOM_PIXELS]),
-      );
-      if (target.kind === 'show' && free.contains(bounds)) return;
+      if (target.kind === 'show' && bringIntoSight(map, target.bounds)) return;
       map.fitBounds(bounds, {
         paddingTopLeft: [ROOM_PIXELS, ROOM_PIXELS],
         paddingBottomRight: [ROOM_PIXELS, FOOT_PIXELS],

@@ -89,9 +89,9 @@ function Digest({ name, value }: { name: string; value: string | null }) {
 function Downloads({ runId }: { runId: string }) {
   return (
     <>
-      <a href={apiUrl(`/runs/${runId}/class-map.zip`)} download className={buttonClass('strong')}>
+      <a href={apiUrl(`/runs/${runId}/class-map.tif`)} download className={buttonClass('strong')}>
         <Download aria-hidden />
-        Class map
+        Class map, GeoTIFF
       </a>
       <Menu
         side="top"
@@ -101,7 +101,9 @@ function Downloads({ runId }: { runId: string }) {
           </Button>
         }
       >
-        <MenuItem href={apiUrl(`/runs/${runId}/class-map.zip`)}>Package: map, names, areas, cautions (ZIP)</MenuItem>
+        <MenuItem href={apiUrl(`/runs/${runId}/class-map.zip`)}>
+          Package: map, class names, areas, cautions (ZIP)
+        </MenuItem>
         <MenuItem href={apiUrl(`/runs/${runId}/class-map.tif`)}>Class map alone (GeoTIFF)</MenuItem>
       </Menu>
     </>
