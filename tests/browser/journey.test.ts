@@ -224,11 +224,7 @@ const gdalinfo = (path: string) =>
 async function downloadClassMap(run: Run, { file, crs, size }: Journey): Promise<void> {
   await page.goBack();
   const waiting = page.waitForEvent('download');
-  await page
-    .getByRole('link', { name: 'Class map' })
-    .or(page.getByRole('button', { name: 'Class map' }))
-    .last()
-    .click();
+  await page.getByRole('link', { name: 'Class map, GeoTIFF' }).click();
   const path = join(dir, `${run.id}.tif`);
   await (await waiting).saveAs(path);
   const [map, source] = [gdalinfo(path), gdalinfo(file)];
