@@ -26,18 +26,18 @@ const CELL_INPUT = 'min-h-8! rounded-md! px-2! py-0.5! text-sm!';
 export function BandTable({ bands, control, register, errors }: BandTableProps) {
   return (
     <div className="overflow-x-auto rounded-xl border border-line bg-card">
-      <table aria-label="Band table" className="w-full min-w-[58rem] text-sm">
+      <table aria-label="Band table" className="w-full min-w-[50rem] text-sm">
         <thead>
           <tr className="text-left text-xs text-ink-soft">
             <Head className="w-9 pl-4 text-right">No.</Head>
             <Head>Name</Head>
-            <Head className="w-44">Role</Head>
-            <Head className="w-24">Centre, µm</Head>
-            <Head className="w-24">Ground sample, m</Head>
-            <Head className="w-28">Scale</Head>
-            <Head className="w-24">Offset</Head>
-            <Head className="w-36">Gives</Head>
-            <Head className="w-36 pr-4 text-right">2–98 % become</Head>
+            <Head className="w-44 max-lg:w-38">Role</Head>
+            <Head className="w-24 max-lg:w-20">Centre, µm</Head>
+            <Head className="w-24 max-lg:w-20">Ground sample, m</Head>
+            <Head className="w-28 max-lg:w-26">Scale</Head>
+            <Head className="w-24 max-lg:w-20">Offset</Head>
+            <Head className="w-36 max-lg:w-34 max-lg:pr-4">Gives</Head>
+            <Head className="w-36 pr-4 text-right max-lg:hidden">2–98 % become</Head>
           </tr>
         </thead>
         <tbody className="align-top">
@@ -110,6 +110,9 @@ function BandFields({ band, index, control, register, errors }: BandFieldsProps)
           className={CELL_INPUT}
           {...register(`bands.${index}.name`)}
         />
+        <div className="mt-1 lg:hidden">
+          <Become band={band} index={index} control={control} />
+        </div>
       </Cell>
       <Cell error={errors?.role?.message}>
         <Controller
@@ -147,7 +150,7 @@ function BandFields({ band, index, control, register, errors }: BandFieldsProps)
           )}
         />
       </Cell>
-      <td className="py-2 pr-4 pl-1.5 text-right">
+      <td className="py-2 pr-4 pl-1.5 text-right max-lg:hidden">
         <Become band={band} index={index} control={control} />
       </td>
     </tr>

@@ -51,7 +51,7 @@ export function SceneMap(props: SceneMapProps) {
         bounds={bounds}
         maxNativeZoom={finestTileZoom(bounds, scene.height ?? 1)}
       />
-      <AreaOutline geometry={project.studyArea} label={isEditing ? undefined : 'Study area'} />
+      <AreaOutline geometry={project.studyArea} />
       {isFootprintShown && <AreaOutline geometry={scene.footprint} label="Footprint" />}
       {area.draft && !area.mendable && <AreaOutline geometry={area.draft} label="New study area" />}
       {project.abilities.manageProject && (

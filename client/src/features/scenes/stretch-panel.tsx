@@ -2,8 +2,8 @@ import { useState } from 'react';
 import type { Band, Scene } from '../../../../shared/contracts/scene.ts';
 import { Histogram } from '../../components/charts/histogram.tsx';
 import { Button } from '../../components/ui/button.tsx';
-import { formatNumber } from '../../lib/format.ts';
 import { type BandLimits, type SceneView, bandLimits, viewBands } from '../../lib/scene-view.ts';
+import { formatShort } from './scene-text.ts';
 
 interface StretchPanelProps {
   scene: Scene;
@@ -27,7 +27,7 @@ export function StretchPanel({ scene, view, limits, onLimits }: StretchPanelProp
       <p className="text-ink-soft">
         {byHand.length > 0
           ? `Drawn as set by hand here (${byHand.length === 1 ? 'band' : 'bands'} ${byHand.join(', ')}).`
-          : `Drawn from the ${formatNumber(view.stretch.lowPercent, 1)} to the ${formatNumber(view.stretch.highPercent, 1)} % point of each band. Drag the handles to set a band by hand.`}
+          : `Drawn from the ${formatShort(view.stretch.lowPercent)} to the ${formatShort(view.stretch.highPercent)} % point of each band. Drag the handles to set a band by hand.`}
       </p>
       {byHand.length > 0 && (
         <Button size="sm" onClick={() => onLimits({})}>

@@ -1,3 +1,4 @@
+import { ChevronUp } from 'lucide-react';
 import { type RefObject, useRef, useState } from 'react';
 import type { ArealGeometry } from '../../../../shared/contracts/geometry.ts';
 import type { Project } from '../../../../shared/contracts/project.ts';
@@ -7,6 +8,7 @@ import { Button } from '../../components/ui/button.tsx';
 import { Callout } from '../../components/ui/callout.tsx';
 import { ConfirmDialog } from '../../components/ui/confirm-dialog.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
+import { Menu, MenuItem } from '../../components/ui/menu.tsx';
 import { formatHectares } from '../../lib/format.ts';
 import { groundAreaHa } from '../../lib/ground-area.ts';
 import { ProblemError, asProblem } from '../../lib/problem-error.ts';
@@ -50,14 +52,11 @@ function RestingTools({ project, editor, onGoTo }: Pick<StudyAreaStripProps, 'pr
         <span className="font-medium">Study area</span>{' '}
         <span className="text-ink-soft">{studyArea ? formatHectares(groundAreaHa(studyArea)) : 'not set'}</span>
       </span>
-      {studyArea && <ToolButton label="Go to it" onPress={() => onGoTo(studyArea)} />}
+      {studyArea && <ToolButton label="Go there" onPress={() => onGoTo(studyArea)} />}
       <ToolGap />
       {abilities.manageProject ? (
         <>
-          <ToolButton label={studyArea ? 'Draw anew' : 'Draw outline'} onPress={() => editor.draw('polygon')} />
-          <ToolButton label="Rectangle" onPress={() => editor.draw('rectangle')} />
-          <ToolButton label="GeoJSON file…" onPress={() => input.current?.click()} />
-          {studyArea && (
+          {studyArea ? (
             <>
               <ToolButton
                 label="Mend"
@@ -67,7 +66,25 @@ function RestingTools({ project, editor, onGoTo }: Pick<StudyAreaStripProps, 'pr
                   onGoTo(studyArea);
                 }}
               />
+              <Menu
+                side="top"
+                trigger={
+                  <Button kind="ghost" size="sm" className="font-normal! px-2!">
+                    Replace <ChevronUp aria-hidden />
+                  </Button>
+                }
+              >
+                <MenuItem onSelect={() => editor.draw('polygon')}>Draw an outline</MenuItem>
+                <MenuItem onSelect={() => editor.draw('rectangle')}>Draw a rectangle</MenuItem>
+                <MenuItem onSelect={() => input.current?.click()}>Choose a GeoJSON file…</MenuItem>
+              </Menu>
               <ToolButton label="Remove…" onPress={() => setIsRemoving(true)} />
+            </>
+          ) : (
+            <>
+              <ToolButton label="Draw outline" onPress={() => editor.draw('polygon')} />
+              <ToolButton label="Rectangle" onPress={() => editor.draw('rectangle')} />
+              <ToolButton label="GeoJSON file…" onPress={() => input.current?.click()} />
             </>
           )}
           <input
@@ -138,7 +155,7 @@ function DraftTools(
           {editor.mendable ? '. Drag corners to mend it.' : '. It has several parts or holes and is taken as it is.'}
         </span>
       </span>
-      <ToolButton label="Go to it" onPress={() => onGoTo(draft)} />
+      <ToolButton label="Go there" onPress={() => onGoTo(draft)} />
       <ToolGap />
       <ToolButton label="Cancel" shortcut="Esc" onPress={editor.cancel} />
       <Button kind="strong" size="sm" isPending={editor.isSaving} pendingLabel="Saving…" onClick={editor.save}>

@@ -40,10 +40,13 @@ export function UploadCard({ upload, onRetry, onDrop }: UploadCardProps) {
             total={totalBytes}
             formatAmount={formatBytes}
             secondsLeft={state === 'received' ? null : secondsLeft(pace, totalBytes)}
+            // Once all is sent, the server takes it over; the ingest can be cancelled instead.
             action={
-              <Button size="sm" onClick={onDrop}>
-                Cancel upload
-              </Button>
+              state === 'sending' && (
+                <Button size="sm" onClick={onDrop}>
+                  Cancel upload
+                </Button>
+              )
             }
           />
           <p className="mt-1 text-xs text-ink-soft">
