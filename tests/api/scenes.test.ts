@@ -194,6 +194,11 @@ describe('uploading a scene', () => {
     await expectTurnedAway(test, team, { method: 'get', path: scenesPath }, {});
   });
 
+  it('is told its limits with the list, so that a browser can say so before sending', async () => {
+    const { body } = await send(test, team.labeller, { method: 'get', path: scenesPath });
+    expect(body.limits).toEqual({ fileBytes: test.app.config.uploadLimitBytes, files: 64 });
+  });
+
   it('refuses what is no upload, has no file, an empty file, or a date that is none', async () => {
     const json = await send(test, team.lead, { method: 'post', path: scenesPath, body: { name: 'x' } });
     expect(json.status).toBe(400);

@@ -67,10 +67,10 @@ describe('an upload', () => {
     expect(heard).toHaveBeenCalledOnce();
   });
 
-  it('that breaks off says how to take it up again', async () => {
+  it('that breaks off says what to do', async () => {
     const promise = upload('/uploads', new FormData(), schema);
     FakeRequest.last.onerror?.();
-    await expect(promise).rejects.toMatchObject({ status: 0, advice: expect.stringContaining('goes on') });
+    await expect(promise).rejects.toMatchObject({ status: 0, advice: expect.stringContaining('send it again') });
   });
 
   it('can be stopped, before and while it runs', async () => {

@@ -20,7 +20,7 @@ export function BandReading({ scene }: { scene: Scene }) {
             { name: 'No.', isNumber: true },
             { name: 'Name' },
             { name: 'Role' },
-            { name: 'Centre, µm', isNumber: true, decimals: 3 },
+            { name: 'Centre, µm', isNumber: true, decimals: 4 },
             { name: 'Ground sample, m', isNumber: true, decimals: 1 },
             { name: 'Scale', isNumber: true, decimals: 8 },
             { name: 'Offset', isNumber: true, decimals: 3 },

@@ -120,7 +120,7 @@ function Origin({ scene, className }: { scene: Scene; className: string }) {
 }
 
 /** How a scene stands, in words; what only wants a look at its bands says so too. */
-export function SceneState({ scene }: { scene: Scene }) {
+function SceneState({ scene }: { scene: Scene }) {
   if (scene.state === 'failed') return <StateTag tone="danger">Not taken</StateTag>;
   if (scene.state === 'ingesting') return <StateTag tone="working">Ingesting</StateTag>;
   if (scene.guessedRoles) return <StateTag tone="beware">Check band roles</StateTag>;

@@ -1,5 +1,5 @@
 /** A tile and where it lies in the picture, in CSS pixels. */
-export interface ThumbnailTile {
+interface ThumbnailTile {
   z: number;
   x: number;
   y: number;
