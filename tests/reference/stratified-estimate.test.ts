@@ -104,7 +104,7 @@ describe('what cannot be estimated', () => {
     expect(estimateStratified(strataOfMapClasses(rows, [100, 50]))).toBeNull();
     const result = estimateStratified(strataOfMapClasses(rows, [100, 0]))!;
     expect(result.perClass[1].users).toBeNull();
-    expect(result.perClass[1].producers).toEqual({ value: 0, standardError: 0 });
+    expect(result.perClass[1].producers).toMatchObject({ value: 0, standardError: 0 });
     const single = estimateStratified(strataOfMapClasses([[9, 1], [0, 1]], [100, 50]))!; // prettier-ignore
     expect(single.overall.standardError).toBeNull();
     expect(single.perClass[0].producers!.standardError).toBeNull();

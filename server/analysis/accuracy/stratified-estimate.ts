@@ -1,4 +1,5 @@
-import { createConfusionMatrix, type ConfusionMatrix } from './confusion-matrix.ts';
+import { estimateCombinedRatio, type CellValue, type CountedStratum, type Estimate } from './combined-ratio.ts';
+import { confusionMatrixMargins, createConfusionMatrix, type ConfusionMatrix } from './confusion-matrix.ts';
 
 /** A stratum of the mapped area and what was found at the reference units drawn in it at random. */
 export interface StratumSample {
@@ -6,19 +7,20 @@ export interface StratumSample {
   size: number;
   /** Units by mapped (rows) and reference class (columns). Strata need not be the map classes. */
   counts: ConfusionMatrix;
-}
-
-export interface Estimate {
-  value: number;
-  /** `null` when a stratum that matters has fewer than two units. */
-  standardError: number | null;
+  /** Units drawn in the stratum that lie outside the zone looked at; none when the whole area is. */
+  nOutside?: number;
+  /** True area of the stratum. With it strata weigh by area instead of by units; give it for all strata or none. */
+  areaHa?: number;
 }
 
 export interface StratifiedEstimate {
+  /** Units inside the zone looked at. */
   nUnits: number;
-  /** Estimated share of the whole area in each cell; sums to 1. */
+  /** Estimated share of the area (of the zone) in each cell; sums to 1. */
   proportions: ConfusionMatrix;
   overall: Estimate;
+  /** Kappa of the estimated proportions; `null` where expected agreement is 1. */
+  kappa: Estimate | null;
   perClass: {
     /** Estimated share of the area that is of this class on the ground. */
     areaShare: Estimate;
@@ -26,15 +28,21 @@ export interface StratifiedEstimate {
     users: Estimate | null;
     /** `null` when the reference of the sample does not hold the class. */
     producers: Estimate | null;
+    /** F1 = 2·p_kk / (p_k+ + p_+k); `null` when neither map nor reference of the sample hold the class. */
+    f1: Estimate | null;
   }[];
 }
 
 /**
  * Estimates accuracy and area from a stratified random sample of reference units, with standard errors.
  *
- * Shares are weighted means over strata; user's and producer's accuracy are combined ratio estimates. With strata
- * equal to the map classes and no finite population correction this is Olofsson et al. 2014, eq. 5–7 and 10–11.
- * Returns `null` when a stratum of some size has no unit, since nothing is then known of it.
+ * Shares are weighted means over strata; user's and producer's accuracy and F1 are combined ratio estimates. With strata
+ * equal to the map classes and no finite population correction this is Olofsson et al. 2014, eq. 5–7 and 10–11. For a
+ * zone, pass only the units inside it in `counts` and the others of the stratum in `nOutside` (estimation for a domain).
+ * The standard error of kappa comes from its derivatives by the cells (Taylor linearisation); in a single stratum it is
+ * the large-sample one of `computeKappa` with n − 1 for n.
+ * Returns `null` when a stratum of some size has no unit, since nothing is then known of it, and when no unit lies in
+ * the zone.
  * Source: Stehman 2014, International Journal of Remote Sensing 35:4923–4939; Olofsson et al. 2014, Remote Sensing of
  * Environment 148:42–57; Cochran 1977, Sampling Techniques.
  * @throws RangeError when strata are missing, differ in classes, or hold more units than their size.
@@ -44,78 +52,90 @@ export function estimateStratified(
   finitePopulationCorrection = false,
 ): StratifiedEstimate | null {
   const nClasses = requireStrata(strata);
-  const sampled = strata.filter(({ size }) => size > 0);
-  const total = sampled.reduce((sum, { size }) => sum + size, 0);
-  const units = sampled.map(({ counts }) => counts.counts.reduce((sum, count) => sum + count, 0));
-  if (units.some((n) => n === 0)) return null;
+  const counted = strata
+    .filter(({ size }) => size > 0)
+    .map(({ size, counts, nOutside = 0, areaHa }): CountedStratum => {
+      const nUnits = counts.counts.reduce((sum, count) => sum + count, nOutside);
+      return { size, counts, nUnits, weight: areaHa ?? size };
+    });
+  if (counted.some(({ nUnits }) => nUnits === 0)) return null;
+
+  const ratio = (y: CellValue, x: CellValue, onlyWhereX = false): Estimate | null =>
+    estimateCombinedRatio(counted, y, x, { finitePopulationCorrection, onlyWhereX });
+  const one: CellValue = () => 1;
+  const isRight: CellValue = (mapped, reference) => Number(mapped === reference);
+  const overall = ratio(isRight, one);
+  if (!overall) return null;
 
   const proportions = createConfusionMatrix(nClasses);
-  sampled.forEach(({ size, counts }, h) => {
-    for (let i = 0; i < counts.counts.length; i++) {
-      proportions.counts[i] += ((size / total) * counts.counts[i]) / units[h];
-    }
-  });
-
-  const everything = (): boolean => true;
-  return {
-    nUnits: units.reduce((sum, n) => sum + n, 0),
-    proportions,
-    overall: ratio((mapped, reference) => mapped === reference, everything)!,
-    perClass: Array.from({ length: nClasses }, (_, k) => ({
-      areaShare: ratio((_mapped, reference) => reference === k, everything)!,
-      users: ratio(
-        (mapped, reference) => mapped === k && reference === k,
-        (mapped) => mapped === k,
-        true,
-      ),
-      producers: ratio(
-        (mapped, reference) => mapped === k && reference === k,
-        (_mapped, reference) => reference === k,
-      ),
-    })),
-  };
-
-  /** Combined ratio of two indicators, the first implying the second; `null` when the second never holds. */
-  function ratio(isY: Indicator, isX: Indicator, isOfMapOnly = false): Estimate | null {
-    const sums = sampled.map(({ counts }) => ({ y: sumWhere(counts, isY), x: sumWhere(counts, isX) }));
-    const expand = (of: 'x' | 'y'): number =>
-      sums.reduce((sum, one, h) => sum + (sampled[h].size * one[of]) / units[h], 0);
-    const totalX = expand('x');
-    if (totalX === 0) return null;
-    const value = expand('y') / totalX;
-    let variance: number | null = 0;
-    sums.forEach(({ x, y }, h) => {
-      const n = units[h];
-      if (variance === null) return;
-      // Strata are mostly map classes: one in which the class is not mapped at all has no part in its user's accuracy.
-      if (x === 0 && isOfMapOnly) return;
-      // Residual y − R·x is 1 − R where both hold, −R where only x holds, 0 elsewhere.
-      const mean = (y - value * x) / n;
-      const squares = y * (1 - value) ** 2 + (x - y) * value ** 2 - n * mean ** 2;
-      const { size } = sampled[h];
-      const correction = finitePopulationCorrection ? 1 - n / size : 1;
-      variance = n < 2 ? null : variance + (size ** 2 * correction * Math.max(0, squares)) / ((n - 1) * n);
+  let inZone = 0;
+  for (const { weight, nUnits, counts } of counted) {
+    counts.counts.forEach((count, i) => {
+      proportions.counts[i] += (weight * count) / nUnits;
+      inZone += (weight * count) / nUnits;
     });
-    return { value, standardError: variance === null ? null : Math.sqrt(variance) / totalX };
   }
+  for (let i = 0; i < proportions.counts.length; i++) proportions.counts[i] /= inZone;
+
+  const kappa = linearise(proportions);
+  const spreadOfKappa = kappa && ratio(kappa.derivative, one);
+  return {
+    nUnits: overall.nUnits,
+    proportions,
+    overall,
+    kappa: spreadOfKappa && { ...spreadOfKappa, value: kappa.value },
+    perClass: Array.from({ length: nClasses }, (_, k) => {
+      const isMapped: CellValue = (mapped) => Number(mapped === k);
+      const isReference: CellValue = (_mapped, reference) => Number(reference === k);
+      const isBoth: CellValue = (mapped, reference) => Number(mapped === k && reference === k);
+      return {
+        areaShare: ratio(isReference, one)!,
+        // Strata are mostly map classes: one in which the class is not mapped has no part in its user's accuracy.
+        users: ratio(isBoth, isMapped, true),
+        producers: ratio(isBoth, isReference),
+        f1: ratio(
+          (mapped, reference) => 2 * isBoth(mapped, reference),
+          (mapped, reference) => isMapped(mapped, reference) + isReference(mapped, reference),
+        ),
+      };
+    }),
+  };
 }
 
-type Indicator = (mapped: number, reference: number) => boolean;
-
-function sumWhere({ nClasses, counts }: ConfusionMatrix, holds: Indicator): number {
-  let sum = 0;
-  for (let i = 0; i < counts.length; i++) if (holds(Math.floor(i / nClasses), i % nClasses)) sum += counts[i];
-  return sum;
+/** Kappa of proportions and its derivative by each of them; `null` where expected agreement is 1. */
+function linearise(proportions: ConfusionMatrix): { value: number; derivative: CellValue } | null {
+  const { nClasses, counts } = proportions;
+  const { mapped, reference } = confusionMatrixMargins(proportions);
+  let observed = 0;
+  let expected = 0;
+  for (let k = 0; k < nClasses; k++) {
+    observed += counts[k * nClasses + k];
+    expected += mapped[k] * reference[k];
+  }
+  const beyondChance = 1 - expected;
+  if (beyondChance <= 1e-12) return null;
+  return {
+    value: (observed - expected) / beyondChance,
+    // ∂p_e/∂p_ij = p_+i + p_j+: crossed, as in the large-sample variance.
+    derivative: (i, j) =>
+      Number(i === j) / beyondChance - ((reference[i] + mapped[j]) * (1 - observed)) / beyondChance ** 2,
+  };
 }
 
 function requireStrata(strata: readonly StratumSample[]): number {
   if (strata.length === 0 || strata.every(({ size }) => size === 0)) throw new RangeError('No stratum has any size.');
   const { nClasses } = strata[0].counts;
-  strata.forEach(({ size, counts }, h) => {
-    const n = counts.counts.reduce((sum, count) => sum + count, 0);
+  const hasAreas = strata[0].areaHa !== undefined;
+  strata.forEach(({ size, counts, nOutside = 0, areaHa }, h) => {
+    const n = counts.counts.reduce((sum, count) => sum + count, nOutside);
     if (counts.nClasses !== nClasses)
       throw new RangeError(`Stratum ${h} has ${counts.nClasses} classes, not ${nClasses}.`);
     if (!(size >= n) || !Number.isFinite(size)) throw new RangeError(`Stratum ${h} of size ${size} has ${n} units.`);
+    if (!(nOutside >= 0)) throw new RangeError(`Stratum ${h} has ${nOutside} units outside the zone.`);
+    if ((areaHa !== undefined) !== hasAreas) throw new RangeError('Give the area of all strata or of none.');
+    if (areaHa !== undefined && !(Number.isFinite(areaHa) && (areaHa > 0 || size === 0))) {
+      throw new RangeError(`Stratum ${h} has an area of ${areaHa} ha.`);
+    }
   });
   return nClasses;
 }
