@@ -54,6 +54,8 @@ export function createDataSource(db: Config['db']): DataSource {
     synchronize: false,
     entities,
     migrations,
+    // A joined findOne would wrap its columns, JSON and all, in a DISTINCT that MariaDB works out on disk.
+    relationLoadStrategy: 'query',
     poolSize: 12,
   });
 }

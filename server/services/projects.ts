@@ -17,10 +17,9 @@ export async function findProject(app: App, id: string): Promise<Project | null>
 }
 
 /** Projects the person is a member of, last changed first. */
-export function listMyMemberships(app: App, userId: string): Promise<Membership[]> {
-  return app.db
-    .getRepository(Membership)
-    .find({ where: { userId }, relations: { project: true }, order: { project: { updatedAt: 'DESC' } } });
+export async function listMyMemberships(app: App, userId: string): Promise<Membership[]> {
+  const memberships = await app.db.getRepository(Membership).find({ where: { userId }, relations: { project: true } });
+  return memberships.sort((a, b) => b.project.updatedAt.getTime() - a.project.updatedAt.getTime());
 }
 
 export async function createProject(
