@@ -73,8 +73,8 @@ async function spawnLauncher(command: string, args: string[], module: string) {
   const script = `
     import { startMariadb } from ${JSON.stringify(pathToFileURL(module).href)};
     const database = await startMariadb({ dataDir: ${JSON.stringify(dataDir)}, durable: false });
-    console.log('MariaDB ' + database.pid);
     process.once('SIGTERM', async () => { await database.stop(); process.exit(0); });
+    console.log('MariaDB ' + database.pid);
     setInterval(() => undefined, 1000);`;
   const launcher = spawn(command, [...args, '--input-type=module', '-e', script]);
   let output = '';
