@@ -1,7 +1,7 @@
 import { readFile } from 'node:fs/promises';
 import { deflateRawSync } from 'node:zlib';
-import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
-import type { TrainedModel } from '../analysis/classifiers/classifier.ts';
+import { NODATA_CODE, UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
+import type { TrainedModel, TrainingSet } from '../analysis/classifiers/classifier.ts';
 import { loadModel } from '../analysis/classifiers/registry.ts';
 import type { BandFile } from '../raster/band-file.ts';
 import { BandStore } from '../raster/band-store.ts';
@@ -15,6 +15,8 @@ import type { ComputeResult, ComputeTask, ComputeTasks } from './compute/tasks.t
 const store = new BandStore({ cacheMb: 32, decode: 'blocking' });
 /** The last model used: a thread maps many strips with the same one. */
 let loaded: { path: string; model: TrainedModel } | null = null;
+/** The last training set used: each part of a training comes with the same one, and preparing it takes as long as a part. */
+let taught: { id: string; set: TrainingSet } | null = null;
 
 function openBands(paths: readonly string[]): Promise<BandFile[]> {
   return Promise.all(paths.map((path) => store.open(path)));
@@ -30,6 +32,11 @@ async function openModel(path: string): Promise<TrainedModel> {
   return loaded.model;
 }
 
+function trainPart(input: ComputeTasks['train-part']['input']): Uint8Array {
+  if (taught?.id !== input.setId) taught = { id: input.setId, set: input.set };
+  return prepareClassifier(input.classifier, taught.set.nFeatures).trainPart(taught.set, input.seed, input.part);
+}
+
 async function assembleModel(input: ComputeTasks['assemble-model']['input']): Promise<Uint8Array> {
   const parts: Uint8Array[] = [];
   for (const path of input.partPaths) parts.push(await readBytes(path));
@@ -37,7 +44,7 @@ async function assembleModel(input: ComputeTasks['assemble-model']['input']): Pr
 }
 
 async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint8Array> {
-  const { scene, y, height, codes } = input;
+  const { scene, y, height, codes, minShare } = input;
   const model = await openModel(input.modelPath);
   const strip = await classifyStrip({
     grid: scene.grid,
@@ -46,8 +53,9 @@ async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint
     height,
     codes,
     nodataCode: NODATA_CODE,
+    unclassified: minShare > 0 ? { below: minShare, code: UNCLASSIFIED_CODE } : null,
     inside: maskStrip(scene.studyArea, scene.grid.width, y, height),
-    classify: (features, n, classIndex) => model.predictBlock(features, n, classIndex),
+    classify: (features, n, classIndex, share) => model.predictBlock(features, n, classIndex, share),
   });
   // Copied out of Node's shared buffer pool.
   return new Uint8Array(deflateRawSync(strip, { level: 1 }));
@@ -59,7 +67,7 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
     case 'read-training':
       return readTraining(task, await openBands(task.scene.bandPaths));
     case 'train-part':
-      return prepareClassifier(task.classifier, task.set.nFeatures).trainPart(task.set, task.seed, task.part);
+      return trainPart(task);
     case 'assemble-model':
       return assembleModel(task);
     case 'map-strip':

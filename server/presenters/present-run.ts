@@ -1,4 +1,4 @@
-import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
+import { NODATA_CODE, UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
 import type { Run as RunContract } from '../../shared/contracts/run.ts';
 import type { z } from 'zod';
 import type { classAreaSchema } from '../../shared/contracts/run.ts';
@@ -11,6 +11,7 @@ import { isUnderWay } from '../services/runs.ts';
 type ClassArea = z.infer<typeof classAreaSchema>;
 
 const NODATA_COLOUR = '#000000';
+const UNCLASSIFIED_COLOUR = '#808080';
 
 /** Area of each class of a finished run, in the recipe's order, then what the map leaves out. */
 export function listClassAreas(run: Run): ClassArea[] | null {
@@ -24,12 +25,13 @@ export function listClassAreas(run: Run): ClassArea[] | null {
     ...{ classId: id, code, name, colour },
     ...amounts(code),
   }));
-  const left = amounts(NODATA_CODE);
-  if (left.pixels > 0) {
-    areas.push({
-      ...{ classId: null, code: NODATA_CODE, name: 'No data or outside the study area', colour: NODATA_COLOUR },
-      ...left,
-    });
+  const others = [
+    { code: UNCLASSIFIED_CODE, name: 'Unclassified', colour: UNCLASSIFIED_COLOUR },
+    { code: NODATA_CODE, name: 'No data or outside the study area', colour: NODATA_COLOUR },
+  ];
+  for (const other of others) {
+    const left = amounts(other.code);
+    if (left.pixels > 0) areas.push({ classId: null, ...other, ...left });
   }
   return areas;
 }

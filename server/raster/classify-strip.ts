@@ -9,12 +9,14 @@ export interface StripRequest {
   /** First row and number of rows. */
   y: number;
   height: number;
-  /** Fills classIndex[0..n) from n rows of row-major features. */
-  classify: (features: Float32Array, n: number, classIndex: Uint8Array) => void;
+  /** Fills classIndex[0..n), and share[0..n) when it is given, from n rows of row-major features. */
+  classify: (features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array) => void;
   /** Class code of each class index. */
   codes: ArrayLike<number>;
   /** Code of pixels without data or outside. */
   nodataCode: number;
+  /** Pixels whose class has a share below a limit get this code instead; none where not given. */
+  unclassified?: { below: number; code: number } | null;
   /** Row-major over the strip, 0 where a pixel is outside the area to be mapped; all of it where not given. */
   inside?: Uint8Array | null;
 }
@@ -34,6 +36,10 @@ export async function classifyStrip(request: StripRequest): Promise<Uint8Array> 
   const features = new Float32Array(chunkPixels * bands.length);
   const places = new Uint32Array(chunkPixels);
   const classIndex = new Uint8Array(chunkPixels);
+  const { unclassified } = request;
+  const share = unclassified ? new Float32Array(chunkPixels) : undefined;
+  // Shares are 32-bit numbers, and one equal to the limit is not below it.
+  const limit = unclassified ? Math.fround(unclassified.below) : 0;
   for (let x = 0; x < grid.width; x += windowColumns) {
     const width = Math.min(windowColumns, grid.width - x);
     const windows = [];
@@ -44,8 +50,11 @@ export async function classifyStrip(request: StripRequest): Promise<Uint8Array> 
     let n = 0;
     const flush = (): void => {
       if (n === 0) return;
-      request.classify(features, n, classIndex);
+      request.classify(features, n, classIndex, share);
       for (let i = 0; i < n; i++) out[places[i]] = request.codes[classIndex[i]];
+      if (share && unclassified) {
+        for (let i = 0; i < n; i++) if (share[i] < limit) out[places[i]] = unclassified.code;
+      }
       n = 0;
     };
     for (let row = 0; row < height; row++) {

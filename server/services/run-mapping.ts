@@ -1,5 +1,5 @@
 import { join } from 'node:path';
-import type { ClassifierRecipe } from '../../shared/contracts/run.ts';
+import { UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
 import { runComputeTask, runWatched } from '../jobs/compute/run-compute-task.ts';
 import type { FinishedMap } from '../jobs/compute/tasks.ts';
 import { forEachLimited } from '../jobs/for-each-limited.ts';
@@ -11,13 +11,10 @@ import { runFiles } from './run-files.ts';
 import { planShares } from './run-shares.ts';
 import type { RunWork } from './run-work.ts';
 
-/**
- * Rows mapped at a time: whole rows of blocks, so that each block of a band is decoded once; fewer for the slow neighbour search,
- * beside which decoding a block again costs nothing, so that progress is told and kept more often.
- */
-function chooseStripRows({ kind }: ClassifierRecipe): number {
-  return kind === 'nearest-neighbours' ? blockSize / 8 : blockSize;
-}
+/** Rows mapped at a time: one row of blocks, so that each block of a band is decoded once. */
+const STRIP_ROWS = blockSize;
+/** Colour of unclassified pixels in the class map's file. */
+const UNCLASSIFIED_COLOR: [number, number, number] = [128, 128, 128];
 
 export interface MappedRun extends FinishedMap {
   notes: string[];
@@ -33,6 +30,7 @@ export async function mapRun(work: RunWork, trainingPixels: number): Promise<Map
     run.recipe.classifier,
     trainingPixels,
     scene.bandPaths.length,
+    run.classes.length,
     scene.grid.width * scene.grid.height,
   );
   const nStrips = await mapStrips(work, shares);
@@ -42,8 +40,7 @@ export async function mapRun(work: RunWork, trainingPixels: number): Promise<Map
 async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): Promise<number> {
   const { app, run, scene, signal, report } = work;
   const files = runFiles(run.id);
-  const stripRows = chooseStripRows(run.recipe.classifier);
-  const nStrips = Math.ceil(scene.grid.height / stripRows);
+  const nStrips = Math.ceil(scene.grid.height / STRIP_ROWS);
   const modelPath = await app.files.localPath(files.model);
   const codes = run.classes.map(({ code }) => code);
   const made = new Set(await app.files.list(files.strips));
@@ -55,12 +52,12 @@ async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): 
   };
   say();
   await forEachLimited(missing, app.workers.compute.threads, signal, async (strip, stripSignal) => {
-    const y = strip * stripRows;
-    const height = Math.min(stripRows, scene.grid.height - y);
+    const y = strip * STRIP_ROWS;
+    const height = Math.min(STRIP_ROWS, scene.grid.height - y);
     const deflated = await runComputeTask(
       app.workers.compute,
       'map-strip',
-      { scene, modelPath, y, height, codes },
+      { scene, modelPath, y, height, codes, minShare: run.recipe.minShare },
       stripSignal,
     );
     await app.files.write(files.strip(strip), deflated);
@@ -95,7 +92,12 @@ async function finishRunMap(work: RunWork, nStrips: number, from: number): Promi
         stripPaths: [rawPath],
         grid: scene.grid,
         wkt: placed.wkt,
-        classes: run.classes.map(({ code, name, colour }) => ({ code, name, color: readColour(colour) })),
+        classes: [
+          ...(run.recipe.minShare > 0
+            ? [{ code: UNCLASSIFIED_CODE, name: 'Unclassified', color: UNCLASSIFIED_COLOR }]
+            : []),
+          ...run.classes.map(({ code, name, colour }) => ({ code, name, color: readColour(colour) })),
+        ],
         // Nothing of this one run: the same recipe and input give the same file.
         title: `Class map of ${run.scene.name}`,
         metadata: { CLASS_MAP_SHA256: map.sha256, INPUT_SHA256: run.inputSha256 },
@@ -108,10 +110,20 @@ async function finishRunMap(work: RunWork, nStrips: number, from: number): Promi
     );
     await app.files.adopt(files.mapNames, written.auxPath);
     await app.files.adopt(files.map, written.path);
-    return { ...map, notes: [areas.method, ...describeHeldOut(map)] };
+    return {
+      ...map,
+      notes: [areas.method, ...describeUnclassified(run.recipe.minShare, map), ...describeHeldOut(map)],
+    };
   } finally {
     await scratch.dispose();
   }
+}
+
+function describeUnclassified(minShare: number, { pixelsByCode }: FinishedMap): string[] {
+  if (!(minShare > 0)) return [];
+  const nPixels = pixelsByCode[UNCLASSIFIED_CODE] ?? 0;
+  const percent = Number((minShare * 100).toFixed(1));
+  return [`${nPixels} pixels are left unclassified: no class has a share of ${percent} % of the votes or more there.`];
 }
 
 function describeHeldOut({ nRepeated, nConflicting }: FinishedMap): string[] {

@@ -16,12 +16,19 @@ const SECONDS = {
   treeRowLevel: 1e-7,
   pixelTreeLevel: 4e-9,
   subspaceTree: 0.15,
-  neighbourPixel: 1.5e-4,
+  neighbourPixel: 5e-6,
+  gaussianPixelClassFeature: 4e-9,
 };
 
 /** Shares out the time between training and mapping by what each is expected to take. */
-export function planShares(classifier: ClassifierRecipe, nRows: number, nFeatures: number, nPixels: number): RunShares {
-  const { training, mapping } = estimateSeconds(classifier, Math.max(2, nRows), nFeatures, nPixels);
+export function planShares(
+  classifier: ClassifierRecipe,
+  nRows: number,
+  nFeatures: number,
+  nClasses: number,
+  nPixels: number,
+): RunShares {
+  const { training, mapping } = estimateSeconds(classifier, Math.max(2, nRows), nFeatures, nClasses, nPixels);
   const split = training / (training + mapping);
   const between = 1 - READING_SHARE - FINISHING_SHARE;
   return {
@@ -35,10 +42,14 @@ function estimateSeconds(
   classifier: ClassifierRecipe,
   nRows: number,
   nFeatures: number,
+  nClasses: number,
   nPixels: number,
 ): { training: number; mapping: number } {
   if (classifier.kind === 'nearest-neighbours') {
     return { training: 1e-3, mapping: nPixels * SECONDS.neighbourPixel };
+  }
+  if (classifier.kind === 'gaussian-maximum-likelihood' || classifier.kind === 'minimum-distance') {
+    return { training: 1e-3, mapping: nPixels * nClasses * nFeatures * SECONDS.gaussianPixelClassFeature };
   }
   const levels = Math.min(classifier.maxDepth, Math.log2(nRows));
   const tried = classifier.featuresPerTree ?? Math.sqrt(nFeatures);

@@ -1,5 +1,8 @@
+import { randomUUID } from 'node:crypto';
 import { THERMAL_CAUTION } from '../../shared/constants/cautions.ts';
+import type { ClassifierRecipe } from '../../shared/contracts/run.ts';
 import { prepareClassifier, subspaceRowsPerTree } from '../jobs/compute/classifier-of-recipe.ts';
+import type { TrainingSet } from '../analysis/classifiers/classifier.ts';
 import { runComputeTask, runWatched } from '../jobs/compute/run-compute-task.ts';
 import type { TrainingData } from '../jobs/compute/tasks.ts';
 import { forEachLimited } from '../jobs/for-each-limited.ts';
@@ -23,7 +26,8 @@ export async function trainRun(work: RunWork): Promise<TrainingSummary> {
   const data = await readTrainingData(work);
   const summary = { trainingPixels: data.set.nRows, notes: describeTraining(work, data) };
   await app.files.write(files.training, Buffer.from(JSON.stringify(summary)));
-  const nParts = await trainParts(work, data);
+  const classNames = run.classes.map(({ name }) => name);
+  const nParts = await trainParts(work, { ...data.set, classNames });
   const partPaths: string[] = [];
   for (let part = 0; part < nParts; part++) partPaths.push(await app.files.localPath(files.part(part)));
   const { nFeatures, nClasses } = data.set;
@@ -67,13 +71,14 @@ async function readTrainingData(work: RunWork): Promise<TrainingData> {
   return data;
 }
 
-async function trainParts(work: RunWork, { set }: TrainingData): Promise<number> {
+async function trainParts(work: RunWork, set: TrainingSet): Promise<number> {
   const { app, run, scene, signal, report } = work;
   const files = runFiles(run.id);
   const { classifier, seed } = run.recipe;
   const { nParts } = prepareClassifier(classifier, set.nFeatures);
-  const shares = planShares(classifier, set.nRows, set.nFeatures, scene.grid.width * scene.grid.height);
-  const step = classifier.kind === 'nearest-neighbours' ? 'Arranging training pixels' : 'Training trees';
+  const shares = planShares(classifier, set.nRows, set.nFeatures, set.nClasses, scene.grid.width * scene.grid.height);
+  const step = nameTrainingStep(classifier);
+  const setId = randomUUID();
   const made = new Set(await app.files.list(files.parts));
   const missing = Array.from({ length: nParts }, (_, part) => part).filter((part) => !made.has(files.part(part)));
   let done = nParts - missing.length;
@@ -83,12 +88,30 @@ async function trainParts(work: RunWork, { set }: TrainingData): Promise<number>
   };
   say();
   await forEachLimited(missing, app.workers.compute.threads, signal, async (part, partSignal) => {
-    const bytes = await runComputeTask(app.workers.compute, 'train-part', { set, classifier, seed, part }, partSignal);
+    const bytes = await runComputeTask(
+      app.workers.compute,
+      'train-part',
+      { set, setId, classifier, seed, part },
+      partSignal,
+    );
     await app.files.write(files.part(part), bytes);
     done++;
     say();
   });
   return nParts;
+}
+
+function nameTrainingStep({ kind }: ClassifierRecipe): string {
+  switch (kind) {
+    case 'random-forest':
+    case 'random-subspace-forest':
+      return 'Training trees';
+    case 'nearest-neighbours':
+      return 'Arranging training pixels';
+    case 'gaussian-maximum-likelihood':
+    case 'minimum-distance':
+      return 'Measuring the classes';
+  }
 }
 
 function describeTraining({ run, bands }: RunWork, data: TrainingData): string[] {

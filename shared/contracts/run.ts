@@ -13,9 +13,38 @@ const forestFields = {
   featuresPerTree: z.number().int().min(1).max(512).nullable().default(null),
 };
 export const classifierSchema = z.discriminatedUnion('kind', [
-  z.object({ kind: z.literal('random-forest'), ...forestFields }).strict(),
+  z
+    .object({
+      kind: z.literal('random-forest'),
+      ...forestFields,
+      /** Balanced classes weigh the same however many training pixels they have. */
+      classWeights: z.enum(['none', 'balanced']).default('none'),
+    })
+    .strict(),
   z.object({ kind: z.literal('random-subspace-forest'), ...forestFields }).strict(),
-  z.object({ kind: z.literal('nearest-neighbours'), neighbours: z.number().int().min(1).max(50).default(5) }).strict(),
+  z
+    .object({
+      kind: z.literal('nearest-neighbours'),
+      neighbours: z.number().int().min(1).max(50).default(5),
+      /** Whether bands are first brought to mean 0 and standard deviation 1. */
+      standardise: z.boolean().default(true),
+    })
+    .strict(),
+  z
+    .object({
+      kind: z.literal('gaussian-maximum-likelihood'),
+      /** What is held likely before a pixel is seen: all classes alike, or as their training pixels stand. */
+      priors: z.enum(['equal', 'training']).default('equal'),
+      /** Share of the variance pooled over the classes that is added to each class's own; 0 adds nothing. */
+      ridge: z.number().min(0, 'A ridge is 0 or more.').max(1, 'A ridge is at most 1.').default(0),
+    })
+    .strict(),
+  z
+    .object({
+      kind: z.literal('minimum-distance'),
+      metric: z.enum(['euclidean', 'mahalanobis']).default('mahalanobis'),
+    })
+    .strict(),
 ]);
 export type ClassifierRecipe = z.infer<typeof classifierSchema>;
 
@@ -30,6 +59,8 @@ export const recipeSchema = z
     seed: seedSchema.default(1),
     maxPixelsPerClass: z.number().int().min(10, 'At least 10 pixels a class.').max(200_000).default(1_000),
     classifier: classifierSchema,
+    /** Pixels whose class has a smaller share of the votes, or a smaller chance, stay unclassified (code 0). */
+    minShare: z.number().min(0, 'A share is 0 or more.').max(1, 'A share is at most 1.').default(0),
   })
   .strict();
 export type Recipe = z.infer<typeof recipeSchema>;

@@ -102,6 +102,12 @@ describe('a run', () => {
   it.each([
     { kind: 'random-subspace-forest', trees: 10, maxDepth: 12, minLeaf: 2, featuresPerTree: 2 },
     { kind: 'nearest-neighbours', neighbours: 5 },
+    { kind: 'nearest-neighbours', neighbours: 3, standardise: false },
+    { kind: 'random-forest', trees: 10, classWeights: 'balanced' },
+    { kind: 'gaussian-maximum-likelihood' },
+    { kind: 'gaussian-maximum-likelihood', priors: 'training', ridge: 0.05 },
+    { kind: 'minimum-distance' },
+    { kind: 'minimum-distance', metric: 'euclidean' },
   ])('works with $kind', async (classifier) => {
     const { body } = await start(modeller, { ...ground.recipe, classifier }).expect(201);
     const other = await waitForRun(modeller, (body as Run).id);
@@ -109,6 +115,38 @@ describe('a run', () => {
     // Open water is apart from the others in every band, so any classifier finds its third of the scene.
     expect(other.areas?.[0]?.pixels).toBeGreaterThan(2900);
     expect(other.overallAccuracy).toBeGreaterThan(0.6);
+  });
+
+  it('leaves pixels unclassified whose class has too small a share, and says how many', async () => {
+    const { body } = await start(modeller, { ...ground.recipe, minShare: 0.8 }).expect(201);
+    const cautious = await waitForRun(modeller, (body as Run).id);
+    expect(cautious.job).toMatchObject({ state: 'finished', error: null });
+    const left = cautious.areas?.find(({ code }) => code === 0);
+    expect(left).toMatchObject({ classId: null, name: 'Unclassified' });
+    expect(left?.pixels).toBeGreaterThan(100);
+    expect(cautious.notes.join(' ')).toContain(`${left?.pixels} pixels are left unclassified`);
+    expect(cautious.areas?.reduce((sum, { pixels }) => sum + pixels, 0)).toBe(96 * 96);
+    // No class gains a pixel, and where the votes are clear nothing changes.
+    for (const [i, { code, pixels }] of (finished.areas ?? []).slice(0, 3).entries()) {
+      expect(cautious.areas?.[i]?.code).toBe(code);
+      expect(cautious.areas?.[i]?.pixels).toBeLessThanOrEqual(pixels);
+    }
+    await start(modeller, { ...ground.recipe, minShare: 1.2 }).expect(400);
+  });
+
+  it('fails with the name of the class whose covariance is singular, and not with a ridge', async () => {
+    const other = await makeTeam(test.app);
+    const doubled = await makeRunGround(test.app, other.project, { isFirstBandDoubled: true });
+    const agent = await test.signedIn(other.modeller);
+    const run = async (classifier: object) => {
+      const recipe = { ...doubled.recipe, classifier: { kind: 'gaussian-maximum-likelihood', ...classifier } };
+      const { body } = await agent.post(`/api/v1/projects/${other.project.id}/runs`).send({ recipe }).expect(201);
+      return waitForRun(agent, (body as Run).id);
+    };
+    const failed = await run({});
+    expect(failed.job.state).toBe('failed');
+    expect(failed.job.error).toMatch(/Class “Open water” has a singular covariance.*set a ridge/);
+    expect((await run({ ridge: 0.01 })).job).toMatchObject({ state: 'finished', error: null });
   });
 
   it('lists runs, newest first', async () => {

@@ -43,13 +43,16 @@ const trees = 20;
 const forestFields = { trees, maxDepth: 25, minLeaf: 1, featuresPerTree: null };
 for (const nRows of [1000, 4000, 10_000]) {
   const levels = Math.log2(nRows);
-  const forest = measure({ kind: 'random-forest', ...forestFields }, nRows);
+  const forest = measure({ kind: 'random-forest', ...forestFields, classWeights: 'none' }, nRows);
   const perTreeRowLevel = forest.training / (trees * nRows * levels * Math.sqrt(N_FEATURES));
   const perPixelTreeLevel = forest.mapping / (N_PIXELS * trees * levels);
   const subspace = measure({ kind: 'random-subspace-forest', ...forestFields }, nRows);
-  const neighbours = measure({ kind: 'nearest-neighbours', neighbours: 5 }, nRows);
+  const neighbours = measure({ kind: 'nearest-neighbours', neighbours: 5, standardise: true }, nRows);
+  const gaussian = measure({ kind: 'gaussian-maximum-likelihood', priors: 'equal', ridge: 0 }, nRows);
+  const perPixelClassFeature = gaussian.mapping / (N_PIXELS * N_CLASSES * N_FEATURES);
   console.log(
     `${nRows} rows: treeRowLevel ${perTreeRowLevel.toExponential(2)}, pixelTreeLevel ${perPixelTreeLevel.toExponential(2)}, ` +
-      `subspaceTree ${(subspace.training / trees).toFixed(3)}, neighbourPixel ${(neighbours.mapping / N_PIXELS).toExponential(2)}`,
+      `subspaceTree ${(subspace.training / trees).toFixed(3)}, neighbourPixel ${(neighbours.mapping / N_PIXELS).toExponential(2)}, ` +
+      `gaussianPixelClassFeature ${perPixelClassFeature.toExponential(2)}`,
   );
 }

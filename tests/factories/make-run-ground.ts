@@ -49,12 +49,15 @@ function fixedId(kind: 'class' | 'sample', ground: number, index: number): strin
 export async function makeRunGround(
   app: App,
   project: Project,
-  { width = 96, height = 96, polygonsPerClass = 8, trees = 15 } = {},
+  { width = 96, height = 96, polygonsPerClass = 8, trees = 15, isFirstBandDoubled = false } = {},
 ): Promise<RunGround> {
   grounds++;
   const ground = grounds;
   const bandNames = ['Blue', 'Green', 'Red', 'Near infrared'];
-  const scene = await makeScene(app, project, {}, { width, height, bandNames, value: overlappingCovers(width) });
+  const covers = overlappingCovers(width);
+  const value: RasterSpec['value'] = (band, column, row) =>
+    covers(isFirstBandDoubled && band === 1 ? 0 : band, column, row);
+  const scene = await makeScene(app, project, {}, { width, height, bandNames, value });
   const classes = [
     await makeClass(app, project, { id: fixedId('class', ground, 0), name: 'Open water', code: 3, colour: '#2266aa' }),
     await makeClass(app, project, {
@@ -90,7 +93,15 @@ export async function makeRunGround(
       heldOutShare: 0.4,
       seed: 7,
       maxPixelsPerClass: 120,
-      classifier: { kind: 'random-forest', trees, maxDepth: 25, minLeaf: 1, featuresPerTree: null },
+      classifier: {
+        kind: 'random-forest',
+        trees,
+        maxDepth: 25,
+        minLeaf: 1,
+        featuresPerTree: null,
+        classWeights: 'none',
+      },
+      minShare: 0,
     },
   };
 }

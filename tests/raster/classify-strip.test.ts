@@ -63,6 +63,20 @@ describe('mapping a strip', () => {
     expect(Buffer.compare(strip, expected)).toBe(0);
   });
 
+  it('leaves pixels unclassified whose share is below the limit, not those at it', async () => {
+    const shares = [0.25, 0.7, 0.95];
+    const withShares = (features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array) => {
+      classify(features, n, classIndex);
+      for (let i = 0; i < n; i++) share![i] = shares[classIndex[i]!]!;
+    };
+    const request = { grid, bands, y: 256, height: 44, classify: withShares, codes, nodataCode: 255 };
+    const plain = await classifyStrip({ ...request, classify });
+    const limited = await classifyStrip({ ...request, unclassified: { below: 0.7, code: 0 } });
+    expect(limited).toEqual(plain.map((code) => (code === 5 ? 0 : code)));
+    const strict = await classifyStrip({ ...request, unclassified: { below: 0.71, code: 0 } });
+    expect(strict).toEqual(plain.map((code) => (code === 5 || code === 90 ? 0 : code)));
+  });
+
   it('leaves out what is outside the mask', async () => {
     const inside = Uint8Array.from({ length: WIDTH * 10 }, (_, i) => (i % 3 === 0 ? 1 : 0));
     const strip = await classifyStrip({ grid, bands, y: 20, height: 10, classify, codes, nodataCode: 255, inside });

@@ -3,18 +3,27 @@ import type { TrainingSet } from './classifier.ts';
 import { classifyRow, IN_BAG, type FlatTree } from './tree-part.ts';
 
 /** Draws nDraws rows of 0..nRows−1 with replacement. Source: Breiman 1996, Machine Learning 24:123–140 (bagging). */
-export function drawBootstrap(nRows: number, nDraws: number, rng: Rng): { rows: Int32Array; inBag: Uint8Array } {
+export function drawBootstrap(
+  nRows: number,
+  nDraws: number,
+  rng: Rng,
+): { rows: Int32Array; /** How often each row was drawn. */ timesDrawn: Uint32Array } {
   const rows = new Int32Array(nDraws);
-  const inBag = new Uint8Array(nRows);
+  const timesDrawn = new Uint32Array(nRows);
   for (let i = 0; i < nDraws; i++) {
     const row = rng.nextBelow(nRows);
     rows[i] = row;
-    inBag[row] = 1;
+    timesDrawn[row]++;
   }
-  return { rows, inBag };
+  return { rows, timesDrawn };
 }
 
 /** Classifies the training rows a tree has not seen; the others are marked as in the bag. */
-export function classifyOutOfBag(set: TrainingSet, tree: FlatTree, inBag: Uint8Array): Uint8Array {
-  return inBag.map((seen, row) => (seen ? IN_BAG : classifyRow(tree, set.features, set.nFeatures, row)));
+export function classifyOutOfBag(set: TrainingSet, tree: FlatTree, timesDrawn: Uint32Array): Uint8Array {
+  const { features, nRows, nFeatures } = set;
+  const votes = new Uint8Array(nRows).fill(IN_BAG);
+  for (let row = 0; row < nRows; row++) {
+    if (timesDrawn[row] === 0) votes[row] = classifyRow(tree, features, nFeatures, row);
+  }
+  return votes;
 }

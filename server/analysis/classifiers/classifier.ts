@@ -94,8 +94,13 @@ export function trainModel<P>(
   return { model: classifier.assemble(set, params, parts), parts };
 }
 
-/** Checks a training set at the door. @throws RangeError saying what was got and what is wanted. */
-export function requireTrainingSet({ features, labels, nRows, nFeatures, nClasses }: TrainingSet): void {
+/** Sets found sound, since every part of a training asks again. */
+const soundSets = new WeakSet<TrainingSet>();
+
+/** Checks a training set at the door, once. @throws RangeError saying what was got and what is wanted. */
+export function requireTrainingSet(set: TrainingSet): void {
+  if (soundSets.has(set)) return;
+  const { features, labels, nRows, nFeatures, nClasses } = set;
   if (!Number.isInteger(nFeatures) || nFeatures < 1 || nFeatures > MAX_FEATURES) {
     throw new RangeError(`A training set has 1 to ${MAX_FEATURES} features, got ${nFeatures}.`);
   }
@@ -115,6 +120,7 @@ export function requireTrainingSet({ features, labels, nRows, nFeatures, nClasse
       `Row ${Math.floor(badValue / nFeatures)}, feature ${badValue % nFeatures} is not a finite number.`,
     );
   }
+  soundSets.add(set);
 }
 
 /** Checks the arrays handed to `predictBlock`. @throws RangeError when one is too short. */

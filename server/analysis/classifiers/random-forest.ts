@@ -16,6 +16,11 @@ export interface RandomForestParams {
   maxDepth: number | null;
   /** Whether each tree learns from its own bootstrap sample; without, there is no out-of-bag figure. */
   bootstrap: boolean;
+  /**
+   * `none`: every row counts the same, so that frequent classes pull harder; `balanced`: rows count so that the classes
+   * weigh the same, in splits and in leaves.
+   */
+  classWeights: 'none' | 'balanced';
 }
 
 export const defaultRandomForestParams: RandomForestParams = {
@@ -24,10 +29,11 @@ export const defaultRandomForestParams: RandomForestParams = {
   minLeaf: 1,
   maxDepth: null,
   bootstrap: true,
+  classWeights: 'none',
 };
 
 const kind = 'random-forest';
-/** Ranks and classes share a 32-bit sort key. */
+/** A row's draws and class share a 32-bit number. */
 const MAX_ROWS = 1 << 23;
 
 /**
@@ -47,9 +53,11 @@ export const randomForest: Classifier<RandomForestParams> = {
     requireTrainingSet(set);
     if (set.nRows > MAX_ROWS) throw new RangeError(`At most ${MAX_ROWS} training rows, got ${set.nRows}.`);
     const rng = createRng(seed, part);
-    const { rows, inBag } = params.bootstrap ? drawBootstrap(set.nRows, set.nRows, rng) : takeAllRows(set.nRows);
-    const { tree, impurityDecrease } = growTree(set, rows, resolveOptions(params, set), rng);
-    return packTreePart(kind, { part, tree, impurityDecrease, outOfBag: classifyOutOfBag(set, tree, inBag) });
+    const timesDrawn = params.bootstrap
+      ? drawBootstrap(set.nRows, set.nRows, rng).timesDrawn
+      : new Uint32Array(set.nRows).fill(1);
+    const { tree, impurityDecrease } = growTree(set, timesDrawn, resolveOptions(params, set), rng);
+    return packTreePart(kind, { part, tree, impurityDecrease, outOfBag: classifyOutOfBag(set, tree, timesDrawn) });
   },
 
   assemble(shape, params, parts) {
@@ -71,16 +79,21 @@ export function readRandomForestPart(bytes: Uint8Array): ReturnType<typeof unpac
   return unpackTreePart(kind, bytes);
 }
 
-function takeAllRows(nRows: number): { rows: Int32Array; inBag: Uint8Array } {
-  return { rows: Int32Array.from({ length: nRows }, (_, row) => row), inBag: new Uint8Array(nRows).fill(1) };
-}
-
-function resolveOptions(params: RandomForestParams, { nFeatures }: TrainingSet): Parameters<typeof growTree>[2] {
+function resolveOptions(params: RandomForestParams, set: TrainingSet): Parameters<typeof growTree>[2] {
   return {
-    featuresPerSplit: Math.min(nFeatures, params.featuresPerSplit ?? Math.floor(Math.sqrt(nFeatures))),
+    featuresPerSplit: Math.min(set.nFeatures, params.featuresPerSplit ?? Math.floor(Math.sqrt(set.nFeatures))),
     minLeaf: params.minLeaf,
     maxDepth: params.maxDepth ?? Number.POSITIVE_INFINITY,
+    classWeights: params.classWeights === 'balanced' ? balanceClasses(set) : new Float64Array(set.nClasses).fill(1),
   };
+}
+
+/** Weights that give every class with rows the same sum: nRows / (classes with rows · rows of the class). */
+function balanceClasses({ labels, nRows, nClasses }: TrainingSet): Float64Array {
+  const counts = new Float64Array(nClasses);
+  for (const label of labels) counts[label]++;
+  const nPresent = counts.filter((count) => count > 0).length;
+  return counts.map((count) => (count > 0 ? nRows / (nPresent * count) : 0));
 }
 
 function requireParams({ trees, featuresPerSplit, minLeaf, maxDepth }: RandomForestParams): void {

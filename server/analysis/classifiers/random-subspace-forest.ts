@@ -53,11 +53,11 @@ export const randomSubspaceForest: Classifier<RandomSubspaceForestParams> = {
     requireTrainingSet(set);
     const rng = createRng(seed, part);
     const nDraws = Math.min(set.nRows, params.rowsPerTree ?? set.nRows);
-    const { rows, inBag } = drawBootstrap(set.nRows, nDraws, rng);
+    const { rows, timesDrawn } = drawBootstrap(set.nRows, nDraws, rng);
     const { root, usedFeatures } = trainTree(set, params, rows, rng.nextUint32() | 0);
     const tree = flattenCartTree(root, usedFeatures);
     const impurityDecrease = sumGains(root, usedFeatures, set.nFeatures, nDraws);
-    return packTreePart(kind, { part, tree, impurityDecrease, outOfBag: classifyOutOfBag(set, tree, inBag) });
+    return packTreePart(kind, { part, tree, impurityDecrease, outOfBag: classifyOutOfBag(set, tree, timesDrawn) });
   },
 
   assemble(shape, params, parts) {

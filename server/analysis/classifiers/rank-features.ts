@@ -5,12 +5,13 @@ import type { TrainingSet } from './classifier.ts';
  * range.
  */
 export interface RankedFeatures {
-  /** For each feature the rank (0 = lowest) of each row. */
-  ranks: readonly Int32Array[];
+  /** For each feature the rank (0 = lowest) of each row; all arrays are of one type, 16 bits where they suffice. */
+  ranks: readonly Uint16Array[] | readonly Int32Array[];
   /** For each feature its distinct values, ascending. */
   levels: readonly Float32Array[];
 }
 
+const MAX_16_BIT_LEVELS = 65536;
 const ranked = new WeakMap<TrainingSet, RankedFeatures>();
 
 /**
@@ -20,28 +21,34 @@ export function rankFeatures(set: TrainingSet): RankedFeatures {
   const known = ranked.get(set);
   if (known) return known;
   const { features, nRows, nFeatures } = set;
-  const ranks: Int32Array[] = [];
+  const columns: Float32Array[] = [];
   const levels: Float32Array[] = [];
   for (let f = 0; f < nFeatures; f++) {
     const column = new Float32Array(nRows);
     for (let row = 0; row < nRows; row++) column[row] = features[row * nFeatures + f];
     const sorted = column.slice().sort();
-    const distinct = sorted.filter((value, i) => i === 0 || value !== sorted[i - 1]);
-    levels.push(distinct);
-    ranks.push(Int32Array.from(column, (value) => indexIn(distinct, value)));
+    columns.push(column);
+    levels.push(sorted.filter((value, i) => i === 0 || value !== sorted[i - 1]));
   }
+  const ranks = levels.every(({ length }) => length <= MAX_16_BIT_LEVELS)
+    ? columns.map((column, f) => fillRanks(new Uint16Array(nRows), column, levels[f]))
+    : columns.map((column, f) => fillRanks(new Int32Array(nRows), column, levels[f]));
   const result = { ranks, levels };
   ranked.set(set, result);
   return result;
 }
 
-function indexIn(sorted: Float32Array, value: number): number {
-  let lo = 0;
-  let hi = sorted.length - 1;
-  while (lo < hi) {
-    const middle = (lo + hi) >> 1;
-    if (sorted[middle] < value) lo = middle + 1;
-    else hi = middle;
+function fillRanks<T extends Uint16Array | Int32Array>(ranks: T, column: Float32Array, sorted: Float32Array): T {
+  for (let row = 0; row < column.length; row++) {
+    const value = column[row];
+    let lo = 0;
+    let hi = sorted.length - 1;
+    while (lo < hi) {
+      const middle = (lo + hi) >> 1;
+      if (sorted[middle] < value) lo = middle + 1;
+      else hi = middle;
+    }
+    ranks[row] = lo;
   }
-  return lo;
+  return ranks;
 }

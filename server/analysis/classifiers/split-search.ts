@@ -4,184 +4,255 @@ export interface Split {
   rank: number;
   /** Lowest rank on the right that occurs in the node; the threshold lies midway between the two values. */
   nextRank: number;
-  /** Σ(left class counts)²/nLeft + Σ(right class counts)²/nRight: the greater, the lower the Gini impurity left. */
+  /**
+   * Σ(left class weights)²/left weight + Σ(right class weights)²/right weight: the greater, the lower the Gini impurity
+   * left.
+   */
   score: number;
 }
 
+/** The rows of a tree, each with how often it was drawn; a node is a stretch of them. */
+export interface NodeRows {
+  /** Row numbers of the training set. */
+  rows: Int32Array;
+  /** Times drawn · 256 + class, of each entry of `rows`. */
+  tags: Int32Array;
+}
+
+/** Sums over the rows of a node. */
+export interface NodeSums {
+  /** Rows, as often as they were drawn. */
+  nRows: number;
+  weight: number;
+  /** Weight of each class. */
+  classWeights: Float64Array;
+  /** Σ(class weights)². */
+  squares: number;
+}
+
+/** Cells of a histogram that cost as much as a row put in order. */
+const CELLS_PER_ROW = 4;
+
 /**
  * Finds the best Gini split of a node on one feature at a time. Scratch memory is kept for one tree.
+ *
+ * In a node with many rows for the feature's levels, rows are counted by rank and class. Elsewhere they are put in order by
+ * counting them into buckets of ranks, about as many as rows, and mending what is out of order within a bucket. Both take
+ * time proportional to the rows, and hardly a branch that depends on the data. Weights are sums of whole numbers unless
+ * classes are weighted, so that scores are exact.
  * Source: Breiman, Friedman, Olshen & Stone 1984, Classification and Regression Trees (Gini index).
  */
 export class SplitSearch {
-  readonly #labels: Uint8Array;
-  readonly #nClasses: number;
   readonly #minLeaf: number;
+  /** Weight of a row of each class. */
+  readonly #weights: Float64Array;
+  readonly #ranks: Int32Array;
+  /** Rows in each bucket, then where the bucket's next row goes. */
+  readonly #places: Int32Array;
+  readonly #sortedRanks: Int32Array;
+  readonly #sortedTags: Int32Array;
+  readonly #left: Float64Array;
+  /** Rows by rank and class. */
   readonly #histogram: Int32Array;
-  readonly #keys: Int32Array;
-  readonly #left: Int32Array;
 
-  constructor(labels: Uint8Array, nClasses: number, minLeaf: number, maxNodeRows: number) {
-    this.#labels = labels;
-    this.#nClasses = nClasses;
+  constructor(weights: Float64Array, minLeaf: number, maxNodeRows: number) {
+    this.#weights = weights;
     this.#minLeaf = minLeaf;
-    this.#histogram = new Int32Array(4 * maxNodeRows + 64);
-    this.#keys = new Int32Array(maxNodeRows);
-    this.#left = new Int32Array(nClasses);
+    this.#ranks = new Int32Array(maxNodeRows);
+    this.#places = new Int32Array(2 * maxNodeRows + 2);
+    this.#sortedRanks = new Int32Array(maxNodeRows);
+    this.#sortedTags = new Int32Array(maxNodeRows);
+    this.#left = new Float64Array(weights.length);
+    this.#histogram = new Int32Array(CELLS_PER_ROW * maxNodeRows);
   }
 
   /**
-   * Looks for a better split than `best` of rows[lo..hi) on a feature with the given ranks.
+   * Looks for a better split than `best` of the node lo..hi on a feature with the given ranks, all below nLevels.
    * @returns false when the feature is constant in the node.
    */
   improve(
     best: Split,
     feature: number,
-    ranks: Int32Array,
-    rows: Int32Array,
+    featureRanks: Uint16Array | Int32Array,
+    nLevels: number,
+    drawn: NodeRows,
     lo: number,
     hi: number,
-    counts: Int32Array,
+    node: NodeSums,
   ): boolean {
-    let min = ranks[rows[lo]];
+    const { rows, tags } = drawn;
+    const ranks = this.#ranks;
+    const n = hi - lo;
+    if (nLevels * this.#weights.length <= CELLS_PER_ROW * n) {
+      this.#count(featureRanks, nLevels, drawn, lo, hi);
+      return this.#scanHistogram(best, feature, nLevels, node);
+    }
+    let min = featureRanks[rows[lo]];
     let max = min;
-    for (let i = lo + 1; i < hi; i++) {
-      const rank = ranks[rows[i]];
+    for (let i = 0; i < n; i++) {
+      const rank = featureRanks[rows[lo + i]];
+      ranks[i] = rank;
       if (rank < min) min = rank;
-      else if (rank > max) max = rank;
+      if (rank > max) max = rank;
     }
     if (min === max) return false;
-    // A histogram costs its own length, a sort n log n: the histogram pays while it is not much longer than the node.
-    if ((max - min + 1) * this.#nClasses <= 4 * (hi - lo) + 64) {
-      this.#scanHistogram(best, feature, ranks, rows, lo, hi, counts, min, max);
-    } else {
-      this.#scanSorted(best, feature, ranks, rows, lo, hi, counts, min);
-    }
+    let shift = 0;
+    while ((max - min) >> shift >= 2 * n) shift++;
+    this.#sortIntoBuckets(tags, lo, n, min, shift, (max - min) >> shift);
+    if (shift > 0) this.#mend(n);
+    this.#scanSorted(best, feature, n, node);
     return true;
   }
 
-  #scanHistogram(
-    best: Split,
-    feature: number,
-    ranks: Int32Array,
-    rows: Int32Array,
+  #count(
+    featureRanks: Uint16Array | Int32Array,
+    nLevels: number,
+    { rows, tags }: NodeRows,
     lo: number,
     hi: number,
-    counts: Int32Array,
-    min: number,
-    max: number,
   ): void {
-    const nClasses = this.#nClasses;
     const histogram = this.#histogram;
-    const labels = this.#labels;
-    const left = this.#left;
-    histogram.fill(0, 0, (max - min + 1) * nClasses);
+    const nClasses = this.#weights.length;
+    histogram.fill(0, 0, nLevels * nClasses);
     for (let i = lo; i < hi; i++) {
-      const row = rows[i];
-      histogram[(ranks[row] - min) * nClasses + labels[row]]++;
+      const tag = tags[i];
+      histogram[featureRanks[rows[i]] * nClasses + (tag & 255)] += tag >> 8;
     }
-    left.fill(0);
-    const n = hi - lo;
+  }
+
+  /** @returns false when all rows have one rank. */
+  #scanHistogram(best: Split, feature: number, nLevels: number, node: NodeSums): boolean {
+    const histogram = this.#histogram;
+    const left = this.#left;
+    const weights = this.#weights;
+    const minLeaf = this.#minLeaf;
+    const nClasses = weights.length;
+    const { nRows, weight, classWeights, squares } = node;
+    const lastLeft = nRows - minLeaf;
     let nLeft = 0;
+    let leftWeight = 0;
     let leftSquares = 0;
-    let rightSquares = sumOfSquares(counts);
+    let product = 0;
     let previous = -1;
-    for (let rank = min; rank <= max; rank++) {
-      const nLeftBefore = nLeft;
-      const leftSquaresBefore = leftSquares;
-      const rightSquaresBefore = rightSquares;
-      const at = (rank - min) * nClasses;
-      for (let c = 0; c < nClasses; c++) {
-        const add = histogram[at + c];
-        if (add === 0) continue;
-        leftSquares += add * (2 * left[c] + add);
-        rightSquares -= add * (2 * (counts[c] - left[c]) - add);
-        left[c] += add;
-        nLeft += add;
+    let isConstant = true;
+    left.fill(0);
+    for (let rank = 0, at = 0; rank < nLevels && nLeft < nRows; rank++) {
+      const nBefore = nLeft;
+      const weightBefore = leftWeight;
+      const squaresBefore = leftSquares;
+      const productBefore = product;
+      for (let c = 0; c < nClasses; c++, at++) {
+        const times = histogram[at];
+        if (times === 0) continue;
+        const add = times * weights[c];
+        const before = left[c];
+        leftSquares += add * (2 * before + add);
+        product += add * classWeights[c];
+        left[c] = before + add;
+        leftWeight += add;
+        nLeft += times;
       }
-      if (nLeft === nLeftBefore) continue;
-      if (previous >= 0) {
-        this.#consider(best, feature, previous, rank, nLeftBefore, n, leftSquaresBefore, rightSquaresBefore);
+      if (nLeft === nBefore) continue;
+      if (nBefore > 0) isConstant = false;
+      if (nBefore >= minLeaf && nBefore <= lastLeft) {
+        const rightSquares = squares - 2 * productBefore + squaresBefore;
+        const score = squaresBefore / weightBefore + rightSquares / (weight - weightBefore);
+        if (score > best.score) {
+          best.score = score;
+          best.feature = feature;
+          best.rank = previous;
+          best.nextRank = rank;
+        }
       }
       previous = rank;
     }
+    return !isConstant;
   }
 
-  #scanSorted(
-    best: Split,
-    feature: number,
-    ranks: Int32Array,
-    rows: Int32Array,
-    lo: number,
-    hi: number,
-    counts: Int32Array,
-    min: number,
-  ): void {
-    const labels = this.#labels;
-    const left = this.#left;
-    const n = hi - lo;
-    const keys = this.#keys;
-    for (let i = 0; i < n; i++) {
-      const row = rows[lo + i];
-      keys[i] = ((ranks[row] - min) << 8) | labels[row];
+  #sortIntoBuckets(tags: Int32Array, lo: number, n: number, min: number, shift: number, lastBucket: number): void {
+    const ranks = this.#ranks;
+    const places = this.#places;
+    const sortedRanks = this.#sortedRanks;
+    const sortedTags = this.#sortedTags;
+    places.fill(0, 0, lastBucket + 1);
+    for (let i = 0; i < n; i++) places[(ranks[i] - min) >> shift]++;
+    let next = 0;
+    for (let bucket = 0; bucket <= lastBucket; bucket++) {
+      const count = places[bucket];
+      places[bucket] = next;
+      next += count;
     }
-    sortKeys(keys, n);
-    left.fill(0);
-    let leftSquares = 0;
-    let rightSquares = sumOfSquares(counts);
-    let previous = keys[0] >> 8;
     for (let i = 0; i < n; i++) {
-      const rank = keys[i] >> 8;
+      const rank = ranks[i];
+      const place = places[(rank - min) >> shift]++;
+      sortedRanks[place] = rank;
+      sortedTags[place] = tags[lo + i];
+    }
+  }
+
+  /** Insertion sort of what is nearly sorted. */
+  #mend(n: number): void {
+    const sortedRanks = this.#sortedRanks;
+    const sortedTags = this.#sortedTags;
+    for (let i = 1; i < n; i++) {
+      const rank = sortedRanks[i];
+      if (sortedRanks[i - 1] <= rank) continue;
+      const tag = sortedTags[i];
+      let j = i - 1;
+      while (j >= 0 && sortedRanks[j] > rank) {
+        sortedRanks[j + 1] = sortedRanks[j];
+        sortedTags[j + 1] = sortedTags[j];
+        j--;
+      }
+      sortedRanks[j + 1] = rank;
+      sortedTags[j + 1] = tag;
+    }
+  }
+
+  #scanSorted(best: Split, feature: number, n: number, node: NodeSums): void {
+    const sortedRanks = this.#sortedRanks;
+    const sortedTags = this.#sortedTags;
+    const left = this.#left;
+    const weights = this.#weights;
+    const minLeaf = this.#minLeaf;
+    const { nRows, weight, classWeights, squares } = node;
+    const lastLeft = nRows - minLeaf;
+    let bestScore = best.score;
+    let bestAt = -1;
+    let nLeft = 0;
+    let leftWeight = 0;
+    let leftSquares = 0;
+    // Σ(class weight in the node · on the left), from which the right side's squares follow.
+    let product = 0;
+    let previous = sortedRanks[0];
+    left.fill(0);
+    for (let i = 0; i < n; i++) {
+      const rank = sortedRanks[i];
       if (rank !== previous) {
-        this.#consider(best, feature, previous + min, rank + min, i, n, leftSquares, rightSquares);
+        if (nLeft >= minLeaf && nLeft <= lastLeft) {
+          const rightSquares = squares - 2 * product + leftSquares;
+          const score = leftSquares / leftWeight + rightSquares / (weight - leftWeight);
+          if (score > bestScore) {
+            bestScore = score;
+            bestAt = i;
+          }
+        }
         previous = rank;
       }
-      const c = keys[i] & 255;
-      leftSquares += 2 * left[c] + 1;
-      rightSquares -= 2 * (counts[c] - left[c]) - 1;
-      left[c]++;
+      const tag = sortedTags[i];
+      const c = tag & 255;
+      const add = (tag >> 8) * weights[c];
+      const before = left[c];
+      leftSquares += add * (2 * before + add);
+      product += add * classWeights[c];
+      left[c] = before + add;
+      leftWeight += add;
+      nLeft += tag >> 8;
     }
-  }
-
-  #consider(
-    best: Split,
-    feature: number,
-    rank: number,
-    nextRank: number,
-    nLeft: number,
-    n: number,
-    leftSquares: number,
-    rightSquares: number,
-  ): void {
-    if (nLeft < this.#minLeaf || n - nLeft < this.#minLeaf) return;
-    const score = leftSquares / nLeft + rightSquares / (n - nLeft);
-    if (score > best.score) {
-      best.score = score;
-      best.feature = feature;
-      best.rank = rank;
-      best.nextRank = nextRank;
-    }
-  }
-}
-
-/** Σ counts² of the classes of a node. */
-export function sumOfSquares(counts: Int32Array): number {
-  let sum = 0;
-  for (let c = 0; c < counts.length; c++) sum += counts[c] * counts[c];
-  return sum;
-}
-
-function sortKeys(keys: Int32Array, n: number): void {
-  if (n > 48) {
-    keys.subarray(0, n).sort();
-    return;
-  }
-  for (let i = 1; i < n; i++) {
-    const key = keys[i];
-    let j = i - 1;
-    while (j >= 0 && keys[j] > key) {
-      keys[j + 1] = keys[j];
-      j--;
-    }
-    keys[j + 1] = key;
+    if (bestAt < 0) return;
+    best.score = bestScore;
+    best.feature = feature;
+    best.rank = sortedRanks[bestAt - 1];
+    best.nextRank = sortedRanks[bestAt];
   }
 }

@@ -43,9 +43,12 @@ export function createRngFromState(s0: number, s1: number, s2: number, s3: numbe
     if (!Number.isInteger(n) || n < 1 || n > 0x100000000) {
       throw new RangeError(`A whole number from 1 to 2^32 is needed, got ${n}.`);
     }
+    const first = nextUint32();
+    // Most draws lie before the last full multiple of n for sure; one whole-number division is all they take.
+    if (first < 0x100000000 - n) return first % n;
     // Values past the last full multiple of n would favour the small results, so they are drawn again.
     const limit = 0x100000000 - (0x100000000 % n);
-    let value = nextUint32();
+    let value = first;
     while (value >= limit) value = nextUint32();
     return value % n;
   }

@@ -1,5 +1,7 @@
 import type { ClassifierRecipe } from '../../../shared/contracts/run.ts';
 import type { TrainedModel, TrainingSet } from '../../analysis/classifiers/classifier.ts';
+import { gaussianMaximumLikelihood } from '../../analysis/classifiers/gaussian-maximum-likelihood.ts';
+import { minimumDistance } from '../../analysis/classifiers/minimum-distance.ts';
 import { nearestNeighbours } from '../../analysis/classifiers/nearest-neighbours.ts';
 import { randomForest } from '../../analysis/classifiers/random-forest.ts';
 import {
@@ -32,6 +34,7 @@ export function prepareClassifier(recipe: ClassifierRecipe, nFeatures: number): 
         minLeaf: recipe.minLeaf,
         maxDepth: recipe.maxDepth,
         bootstrap: true,
+        classWeights: recipe.classWeights,
       });
     case 'random-subspace-forest':
       return fill(randomSubspaceForest, {
@@ -43,7 +46,11 @@ export function prepareClassifier(recipe: ClassifierRecipe, nFeatures: number): 
         maxDepth: recipe.maxDepth,
       });
     case 'nearest-neighbours':
-      return fill(nearestNeighbours, { k: recipe.neighbours, standardise: true });
+      return fill(nearestNeighbours, { k: recipe.neighbours, standardise: recipe.standardise });
+    case 'gaussian-maximum-likelihood':
+      return fill(gaussianMaximumLikelihood, { priors: recipe.priors, ridge: recipe.ridge });
+    case 'minimum-distance':
+      return fill(minimumDistance, { metric: recipe.metric });
   }
 }
 

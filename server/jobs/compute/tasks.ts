@@ -59,7 +59,14 @@ export interface ComputeTasks {
     result: TrainingData;
   };
   'train-part': {
-    input: { set: TrainingSet; classifier: ClassifierRecipe; seed: number; part: number };
+    input: {
+      set: TrainingSet;
+      /** The same for all parts of one training, so that a thread prepares the set once. */
+      setId: string;
+      classifier: ClassifierRecipe;
+      seed: number;
+      part: number;
+    };
     result: Uint8Array;
   };
   'assemble-model': {
@@ -72,7 +79,15 @@ export interface ComputeTasks {
   };
   /** The result is the strip's class codes, deflated without a header. */
   'map-strip': {
-    input: { scene: SceneInput; modelPath: string; y: number; height: number; codes: readonly number[] };
+    input: {
+      scene: SceneInput;
+      modelPath: string;
+      y: number;
+      height: number;
+      codes: readonly number[];
+      /** Pixels whose class has a smaller share stay unclassified. */
+      minShare: number;
+    };
     result: Uint8Array;
   };
   /** Joins the strips into one raw file at `rawPath` and counts what is on the map. */

@@ -186,6 +186,33 @@ describe('forests', () => {
     }
   });
 
+  it('find a rare class in the overlap once classes are balanced, and weigh rows as copies of them would', () => {
+    const rng = createRng(21);
+    const labels = Uint8Array.from({ length: 1100 }, (_, i) => (i < 1000 ? 0 : 1));
+    const features = Float32Array.from(labels, (label) => (label ? 0.6 + 0.3 * rng.nextFloat() : rng.nextFloat()));
+    const set = { features, labels, nRows: 1100, nFeatures: 1, nClasses: 2 };
+    const p = { ...defaultRandomForestParams, trees: 25, minLeaf: 40 };
+    // There ten rows of class 0 stand to three of class 1, and three to ten once balanced.
+    const between = Float32Array.of(0.7, 0.75, 0.8);
+    const mapped = (classWeights: 'none' | 'balanced') => {
+      const got = new Uint8Array(3);
+      trainModel(randomForest, set, { ...p, classWeights }, 4).model.predictBlock(between, 3, got);
+      return [...got];
+    };
+    expect(mapped('none')).toEqual([0, 0, 0]);
+    expect(mapped('balanced')).toEqual([1, 1, 1]);
+
+    // Ten copies of each rare row are the same to a tree as a weight of ten, but for the least rows of a leaf.
+    const rare = Array.from({ length: 100 }, (_, i) => 1000 + i);
+    const rows = [...Array(1000).keys(), ...rare.flatMap((row) => Array<number>(10).fill(row))];
+    const copied = { ...set, nRows: 2000, features: Float32Array.from(rows, (row) => features[row]), labels: Uint8Array.from(rows, (row) => labels[row]) }; // prettier-ignore
+    const whole = { ...p, trees: 1, bootstrap: false, minLeaf: 1, maxDepth: 6 };
+    const weighted = readRandomForestPart(randomForest.trainPart(set, { ...whole, classWeights: 'balanced' }, 1, 0));
+    const repeated = readRandomForestPart(randomForest.trainPart(copied, whole, 1, 0));
+    expect(weighted.tree).toEqual(repeated.tree);
+    expect(weighted.impurityDecrease[0]).toBeCloseTo(repeated.impurityDecrease[0], 9);
+  });
+
   it('refuse parameters out of range', () => {
     expect(() => randomForest.partCount({ ...defaultRandomForestParams, trees: 0 })).toThrow(/trees/);
     expect(() => randomForest.partCount({ ...defaultRandomForestParams, minLeaf: 0.5 })).toThrow(/leaf/);

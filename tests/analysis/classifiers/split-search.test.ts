@@ -1,68 +1,111 @@
 import { describe, expect, it } from 'vitest';
-import { SplitSearch, type Split } from '../../../server/analysis/classifiers/split-search.ts';
+import {
+  SplitSearch,
+  type NodeRows,
+  type NodeSums,
+  type Split,
+} from '../../../server/analysis/classifiers/split-search.ts';
 import { createRng } from '../../../server/analysis/sampling/rng.ts';
 
-/** Best score over all cuts between ranks, from the class counts on both sides. */
+/** Best score over all cuts between ranks, from the class weights on both sides. */
 function searchByBruteForce(
   ranks: Int32Array,
   labels: Uint8Array,
-  rows: Int32Array,
-  nClasses: number,
+  rows: number[],
+  weights: Float64Array,
   minLeaf: number,
 ) {
   let best = { score: -1, rank: -1, nextRank: -1 };
-  const present = [...new Set(Array.from(rows, (row) => ranks[row]))].sort((a, b) => a - b);
+  const present = [...new Set(rows.map((row) => ranks[row]))].sort((a, b) => a - b);
   present.slice(0, -1).forEach((rank, i) => {
     const sides = [true, false].map((isLeft) => rows.filter((row) => ranks[row] <= rank === isLeft));
     if (sides.some((side) => side.length < minLeaf)) return;
     const score = sides.reduce((sum, side) => {
-      const counts = new Array<number>(nClasses).fill(0);
-      for (const row of side) counts[labels[row]]++;
-      return sum + counts.reduce((squares, count) => squares + count * count, 0) / side.length;
+      const sums = new Array<number>(weights.length).fill(0);
+      for (const row of side) sums[labels[row]] += weights[labels[row]];
+      const total = sums.reduce((a, b) => a + b, 0);
+      return sum + sums.reduce((squares, value) => squares + value * value, 0) / total;
     }, 0);
     if (score > best.score) best = { score, rank, nextRank: present[i + 1] };
   });
   return best;
 }
 
+/** The node of all the rows named, each as often as it is named. */
+function makeNode(rows: number[], labels: Uint8Array, weights: Float64Array): { drawn: NodeRows; sums: NodeSums } {
+  const distinct = [...new Set(rows)];
+  const tags = distinct.map((row) => (rows.filter((other) => other === row).length << 8) | labels[row]);
+  const classWeights = new Float64Array(weights.length);
+  for (const row of rows) classWeights[labels[row]] += weights[labels[row]];
+  return {
+    drawn: { rows: Int32Array.from(distinct), tags: Int32Array.from(tags) },
+    sums: {
+      nRows: rows.length,
+      weight: classWeights.reduce((a, b) => a + b, 0),
+      classWeights,
+      squares: classWeights.reduce((sum, value) => sum + value * value, 0),
+    },
+  };
+}
+
+const nothing = (): Split => ({ feature: -1, rank: -1, nextRank: -1, score: -1 });
+
 describe('the best split on one feature', () => {
-  // Few levels take the way over a histogram, many the way over sorting; long nodes sort with the built-in sort.
+  // Few levels are counted, many are sorted into buckets; crowded levels leave most of the sorting within buckets.
   it.each([
-    ['few levels', 6, 60],
-    ['many levels in a short node', 5000, 40],
-    ['many levels in a long node', 5000, 300],
-    ['about as many levels as the two ways are chosen by', 60, 60],
-  ])('equals trying every cut: %s', (_, nLevels, nRows) => {
+    ['few levels', 6, 60, 1],
+    ['many levels in a short node', 5000, 40, 1],
+    ['many levels in a long node', 5000, 300, 1],
+    ['about as many levels as the two ways are chosen by', 60, 60, 1],
+    ['many levels, most rows in few of them', 60_000, 200, 6],
+  ])('equals trying every cut: %s', (_, nLevels, nRows, crowding) => {
     const rng = createRng(nLevels + nRows);
-    const nClasses = 4;
+    const searches = [[1, 1, 1, 1], [3, 0.5, 1.25, 2]].map((w) => Float64Array.from(w)); // prettier-ignore
     for (let round = 0; round < 60; round++) {
       const minLeaf = 1 + (round % 3) * 4;
-      const ranks = Int32Array.from({ length: nRows }, () => rng.nextBelow(nLevels));
+      const ranks = Int32Array.from({ length: nRows }, () => Math.floor(nLevels * rng.nextFloat() ** crowding));
       const labels = Uint8Array.from(ranks, (rank) =>
         rng.nextBelow(3) ? Math.floor((rank * 4) / nLevels) : rng.nextBelow(4),
       );
-      // A bootstrap: rows repeat; the node is a stretch of it.
-      const rows = Int32Array.from({ length: nRows + 20 }, () => rng.nextBelow(nRows));
-      const [lo, hi] = [7, nRows + 11];
-      const counts = new Int32Array(nClasses);
-      for (let i = lo; i < hi; i++) counts[labels[rows[i]]]++;
-      const best: Split = { feature: -1, rank: -1, nextRank: -1, score: -1 };
-      const search = new SplitSearch(labels, nClasses, minLeaf, rows.length);
-      expect(search.improve(best, 3, ranks, rows, lo, hi, counts)).toBe(true);
-      const wanted = searchByBruteForce(ranks, labels, rows.slice(lo, hi), nClasses, minLeaf);
-      expect(best.score).toBeCloseTo(wanted.score, 9);
-      expect([best.feature, best.rank, best.nextRank]).toEqual([3, wanted.rank, wanted.nextRank]);
+      // A bootstrap: rows repeat.
+      const rows = Array.from({ length: nRows }, () => rng.nextBelow(nRows));
+      for (const weights of searches) {
+        const { drawn, sums } = makeNode(rows, labels, weights);
+        const search = new SplitSearch(weights, minLeaf, drawn.rows.length);
+        // Twice, since scratch memory is used again.
+        for (let again = 0; again < 2; again++) {
+          const best = nothing();
+          expect(search.improve(best, 3, ranks, nLevels, drawn, 0, drawn.rows.length, sums)).toBe(true);
+          const wanted = searchByBruteForce(ranks, labels, rows, weights, minLeaf);
+          expect(best.score).toBeCloseTo(wanted.score, 9);
+          if (wanted.rank >= 0) expect([best.feature, best.rank, best.nextRank]).toEqual([3, wanted.rank, wanted.nextRank]); // prettier-ignore
+        }
+      }
     }
   });
 
   it('says when a feature is constant and keeps a better split found before', () => {
     const labels = Uint8Array.of(0, 1, 0, 1);
-    const search = new SplitSearch(labels, 2, 1, 4);
+    const weights = Float64Array.of(1, 1);
+    const { drawn, sums } = makeNode([0, 1, 2, 3], labels, weights);
+    const search = new SplitSearch(weights, 1, 4);
     const best: Split = { feature: 8, rank: 1, nextRank: 2, score: 4 };
-    const rows = Int32Array.of(0, 1, 2, 3);
-    const counts = Int32Array.of(2, 2);
-    expect(search.improve(best, 0, Int32Array.of(5, 5, 5, 5), rows, 0, 4, counts)).toBe(false);
-    expect(search.improve(best, 1, Int32Array.of(0, 1, 2, 3), rows, 0, 4, counts)).toBe(true);
+    for (const nLevels of [6, 1000]) {
+      expect(search.improve(best, 0, Int32Array.of(5, 5, 5, 5), nLevels, drawn, 0, 4, sums)).toBe(false);
+      expect(search.improve(best, 1, Int32Array.of(0, 1, 2, 3), nLevels, drawn, 0, 4, sums)).toBe(true);
+    }
     expect(best.feature).toBe(8);
+  });
+
+  it('looks at a stretch of the rows only', () => {
+    const labels = Uint8Array.of(0, 0, 1, 1, 0, 0);
+    const weights = Float64Array.of(1, 1);
+    const all = makeNode([0, 1, 2, 3, 4, 5], labels, weights).drawn;
+    const { sums } = makeNode([1, 2, 3], labels, weights);
+    for (const nLevels of [6, 1000]) {
+      const best = nothing();
+      new SplitSearch(weights, 1, 6).improve(best, 0, Int32Array.of(5, 2, 3, 4, 0, 1), nLevels, all, 1, 4, sums);
+      expect(best).toEqual({ feature: 0, rank: 2, nextRank: 3, score: 3 });
+    }
   });
 });

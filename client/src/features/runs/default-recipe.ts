@@ -49,6 +49,7 @@ export function defaultDraft(scenes: readonly Scene[], classes: readonly LandCla
       seed: 1,
       maxPixelsPerClass: 1000,
       classifier: defaultClassifier('random-forest'),
+      minShare: 0,
     },
   };
 }

@@ -14,6 +14,7 @@ export function RecipeSummary({ run, scene }: { run: Run; scene: Scene | null })
     { name: 'Bands', value: describeBands(recipe.bandIds, scene) },
     { name: 'Classifier', value: CLASSIFIER_NAME[recipe.classifier.kind] },
     ...listClassifierSettings(recipe.classifier),
+    ...(recipe.minShare > 0 ? [{ name: 'Unclassified', value: `below ${formatPercent(recipe.minShare)}` }] : []),
     { name: 'Held out', value: `${formatPercent(recipe.heldOutShare)} of each class’s polygons` },
     { name: 'Pixels a class', value: `at most ${formatNumber(recipe.maxPixelsPerClass)}` },
     { name: 'Seed', value: recipe.seed },

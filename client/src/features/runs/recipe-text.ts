@@ -2,12 +2,15 @@ import type { ClassifierRecipe, Recipe, Run } from '../../../../shared/contracts
 import { formatCount, formatNumber, formatPercent } from '../../lib/format.ts';
 
 export type ClassifierKind = ClassifierRecipe['kind'];
+export type ForestKind = Extract<ClassifierKind, 'random-forest' | 'random-subspace-forest'>;
 
 /** What each classifier is called, in a sentence and alone. */
 export const CLASSIFIER_NAME: Record<ClassifierKind, string> = {
   'random-forest': 'random forest',
   'random-subspace-forest': 'random-subspace forest',
   'nearest-neighbours': 'k-nearest neighbours',
+  'gaussian-maximum-likelihood': 'Gaussian maximum likelihood',
+  'minimum-distance': 'minimum distance',
 };
 
 /** A run as people call it: "Run 3". */
@@ -17,9 +20,30 @@ export function runTitle(run: Pick<Run, 'number'>): string {
 
 /** The settings of a classifier as name and figure, in the order of the form. */
 export function listClassifierSettings(classifier: ClassifierRecipe): { name: string; value: string }[] {
-  if (classifier.kind === 'nearest-neighbours') {
-    return [{ name: 'Neighbours', value: formatNumber(classifier.neighbours) }];
+  switch (classifier.kind) {
+    case 'nearest-neighbours':
+      return [
+        { name: 'Neighbours', value: formatNumber(classifier.neighbours) },
+        { name: 'Bands', value: classifier.standardise ? 'on one scale' : 'as stored' },
+      ];
+    case 'gaussian-maximum-likelihood':
+      return [
+        { name: 'Priors', value: classifier.priors === 'equal' ? 'equal' : 'by training pixels' },
+        { name: 'Ridge', value: formatPercent(classifier.ridge) },
+      ];
+    case 'minimum-distance':
+      return [{ name: 'Distance', value: classifier.metric === 'euclidean' ? 'Euclidean' : 'Mahalanobis' }];
+    case 'random-forest':
+      return [
+        ...listForestSettings(classifier),
+        { name: 'Class weights', value: classifier.classWeights === 'balanced' ? 'balanced' : 'by training pixels' },
+      ];
+    case 'random-subspace-forest':
+      return listForestSettings(classifier);
   }
+}
+
+function listForestSettings(classifier: Extract<ClassifierRecipe, { kind: ForestKind }>) {
   return [
     { name: 'Trees', value: formatNumber(classifier.trees) },
     { name: 'Deepest level', value: formatNumber(classifier.maxDepth) },
@@ -32,7 +56,7 @@ export function listClassifierSettings(classifier: ClassifierRecipe): { name: st
 }
 
 /** What `featuresPerTree` counts: a random forest draws bands anew at each split, a random-subspace forest once a tree. */
-export function featuresLabel(kind: Exclude<ClassifierKind, 'nearest-neighbours'>): string {
+export function featuresLabel(kind: ForestKind): string {
   return kind === 'random-forest' ? 'Bands a split' : 'Bands a tree';
 }
 

@@ -68,12 +68,38 @@ describe('the recipe form', () => {
     const trees = screen.getByRole('textbox', { name: 'Trees' });
     await userEvent.clear(trees);
     await userEvent.type(trees, '300');
-    await userEvent.click(screen.getByRole('radio', { name: 'k-nearest neighbours' }));
+    await userEvent.click(screen.getByRole('radio', { name: 'Random-subspace forest' }));
     expect(screen.getByText('Slow.')).toBeInTheDocument();
+    await userEvent.click(screen.getByRole('radio', { name: 'k-nearest neighbours' }));
+    expect(screen.queryByText('Slow.')).toBeNull();
     expect(screen.queryByRole('textbox', { name: 'Trees' })).toBeNull();
-    await waitFor(() => expect(last()?.classifier).toEqual({ kind: 'nearest-neighbours', neighbours: 5 }));
+    await waitFor(() =>
+      expect(last()?.classifier).toEqual({ kind: 'nearest-neighbours', neighbours: 5, standardise: true }),
+    );
     await userEvent.click(screen.getByRole('radio', { name: 'Random forest' }));
     expect(screen.getByRole('textbox', { name: 'Trees' })).toHaveValue('300');
+  });
+
+  it('offers what each classifier can be told, and a share below which pixels stay unclassified', async () => {
+    const { last } = show();
+    await userEvent.click(screen.getByRole('radio', { name: 'All the same' }));
+    await waitFor(() => expect(last()?.classifier).toMatchObject({ classWeights: 'balanced' }));
+    await userEvent.click(screen.getByRole('radio', { name: 'Gaussian maximum likelihood' }));
+    const ridge = screen.getByRole('textbox', { name: /Ridge/ });
+    await userEvent.clear(ridge);
+    await userEvent.type(ridge, '5');
+    await userEvent.click(screen.getByRole('radio', { name: 'As training pixels stand' }));
+    await waitFor(() =>
+      expect(last()?.classifier).toEqual({ kind: 'gaussian-maximum-likelihood', priors: 'training', ridge: 0.05 }),
+    );
+    await userEvent.click(screen.getByRole('radio', { name: 'Minimum distance' }));
+    await userEvent.click(screen.getByRole('radio', { name: 'Euclidean' }));
+    const share = screen.getByRole('textbox', { name: /Leave unclassified below/ });
+    await userEvent.clear(share);
+    await userEvent.type(share, '60');
+    await waitFor(() =>
+      expect(last()).toMatchObject({ minShare: 0.6, classifier: { kind: 'minimum-distance', metric: 'euclidean' } }),
+    );
   });
 
   it('takes an empty number of bands for the square root', async () => {
