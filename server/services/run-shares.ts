@@ -13,11 +13,11 @@ const FINISHING_SHARE = 0.05;
 
 /** Seconds of one thread for each step of work, from tests/bench/run-shares.ts; only their ratio matters. */
 const SECONDS = {
-  treeRowLevel: 1e-7,
-  pixelTreeLevel: 4e-9,
-  subspaceTree: 0.15,
-  neighbourPixel: 5e-6,
-  gaussianPixelClassFeature: 4e-9,
+  treeRowLevel: 3e-8,
+  pixelTreeLevel: 2e-9,
+  subspaceTree: 0.13,
+  neighbourPixel: 1e-5,
+  gaussianPixelClassFeature: 1e-8,
 };
 
 /** Shares out the time between training and mapping by what each is expected to take. */

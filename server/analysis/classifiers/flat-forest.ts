@@ -28,6 +28,8 @@ export class FlatForest implements TrainedModel {
   /** The nodes as `walkTree` wants them. */
   readonly #steps: Int32Array;
   readonly #block: WalkBlock;
+  /** Where the class of each row of the block goes. */
+  readonly #places = new Int32Array(BLOCK_ROWS);
 
   constructor(
     kind: string,
@@ -117,18 +119,64 @@ export class FlatForest implements TrainedModel {
 
   predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
     requireBlock(this.nFeatures, features, n, classIndex, share);
-    const { ranks, votes, best, winner } = this.#block;
     for (let from = 0; from < n; from += BLOCK_ROWS) {
       const nHere = Math.min(BLOCK_ROWS, n - from);
-      this.#ranks.rankRows(features, from, nHere, ranks);
-      votes.fill(0);
-      best.fill(0);
-      for (const root of this.#roots) {
-        walkTree(this.#steps, this.#nodes.leafClass, root, this.#block, nHere, this.nFeatures, this.nClasses);
-      }
-      classIndex.set(winner.subarray(0, nHere), from);
-      if (share) for (let i = 0; i < nHere; i++) share[from + i] = best[i] / this.nTrees;
+      this.#ranks.rankRows(features, from, nHere, this.#block.ranks);
+      this.#block.votes.fill(0);
+      this.#block.best.fill(0);
+      if (share) this.#countAllVotes(from, nHere, classIndex, share);
+      else this.#settle(from, nHere, classIndex);
     }
+  }
+
+  #countAllVotes(from: number, nRows: number, classIndex: Uint8Array, share: Float32Array): void {
+    const { best, winner } = this.#block;
+    for (const root of this.#roots) this.#walk(root, nRows);
+    classIndex.set(winner.subarray(0, nRows), from);
+    for (let i = 0; i < nRows; i++) share[from + i] = best[i] / this.nTrees;
+  }
+
+  /**
+   * Asks the trees until no class can still overtake: from half of the trees on, rows whose lead is not smaller than the
+   * number of trees left are done and the others move together. The classes are those of all the votes.
+   */
+  #settle(from: number, nRows: number, classIndex: Uint8Array): void {
+    const { ranks, votes, best, winner } = this.#block;
+    const { nFeatures, nClasses, nTrees } = this;
+    const places = this.#places;
+    const stride = Math.max(1, nTrees >> 4);
+    let nOpen = nRows;
+    for (let i = 0; i < nRows; i++) places[i] = from + i;
+    for (let tree = 0; tree < nTrees && nOpen > 0; tree++) {
+      this.#walk(this.#roots[tree], nOpen);
+      const nLeft = nTrees - 1 - tree;
+      if (nLeft > 0 && (2 * nLeft > nTrees || nLeft % stride > 0)) continue;
+      let kept = 0;
+      for (let i = 0; i < nOpen; i++) {
+        let second = 0;
+        for (let c = 0; c < nClasses; c++) {
+          const count = votes[i * nClasses + c];
+          if (count > second && c !== winner[i]) second = count;
+        }
+        if (best[i] - second >= nLeft) {
+          classIndex[places[i]] = winner[i];
+          continue;
+        }
+        if (kept < i) {
+          places[kept] = places[i];
+          best[kept] = best[i];
+          winner[kept] = winner[i];
+          for (let f = 0; f < nFeatures; f++) ranks[kept * nFeatures + f] = ranks[i * nFeatures + f];
+          for (let c = 0; c < nClasses; c++) votes[kept * nClasses + c] = votes[i * nClasses + c];
+        }
+        kept++;
+      }
+      nOpen = kept;
+    }
+  }
+
+  #walk(root: number, nRows: number): void {
+    walkTree(this.#steps, this.#nodes.leafClass, root, this.#block, nRows, this.nFeatures, this.nClasses);
   }
 }
 

@@ -1,6 +1,6 @@
 import { RandomForestClassifier } from 'ml-random-forest';
 import { describe, expect, it } from 'vitest';
-import type { TrainingSet } from '../../../server/analysis/classifiers/classifier.ts';
+import { trainModel, type TrainingSet } from '../../../server/analysis/classifiers/classifier.ts';
 import { FlatForest } from '../../../server/analysis/classifiers/flat-forest.ts';
 import { flattenCartTree, type CartNode } from '../../../server/analysis/classifiers/flatten-cart-tree.ts';
 import {
@@ -8,6 +8,7 @@ import {
   lessThanThreshold,
   nextFloat32,
 } from '../../../server/analysis/classifiers/float32-threshold.ts';
+import { defaultRandomForestParams, randomForest } from '../../../server/analysis/classifiers/random-forest.ts';
 import { createThresholdRanks } from '../../../server/analysis/classifiers/threshold-ranks.ts';
 import { classifyRow, type FlatTree, type TreePart } from '../../../server/analysis/classifiers/tree-part.ts';
 import { createRng } from '../../../server/analysis/sampling/rng.ts';
@@ -173,5 +174,28 @@ describe('the block walk', () => {
     expect([...classIndex]).toEqual([1, 2, 2, 9, 9, 9]);
     expect(() => forest.predictBlock(Float32Array.of(1), 2, classIndex)).toThrow(RangeError);
     expect(() => forest.predictBlock(Float32Array.of(1, 2), 2, classIndex, new Float32Array(1))).toThrow(/shares/);
+  });
+});
+
+describe('asking no more trees than are needed', () => {
+  it.each([1, 2, 3, 8, 17, 40, 101])('gives the classes of all the votes, with %d trees', (nTrees) => {
+    const rng = createRng(nTrees);
+    // Labels with little to go by, so that votes are close and ties many; sizes that fill no group of eight.
+    const set: TrainingSet = {
+      features: Float32Array.from({ length: 200 * 3 }, () => rng.nextBelow(9)),
+      labels: Uint8Array.from({ length: 200 }, () => rng.nextBelow(4)),
+      nRows: 200,
+      nFeatures: 3,
+      nClasses: 4,
+    };
+    const { model } = trainModel(randomForest, set, { ...defaultRandomForestParams, trees: nTrees }, 2);
+    const n = 4609;
+    const pixels = Float32Array.from({ length: n * 3 }, () => rng.nextBelow(11) - 1);
+    const [wanted, got] = [new Uint8Array(n), new Uint8Array(n)];
+    const share = new Float32Array(n);
+    model.predictBlock(pixels, n, wanted, share);
+    model.predictBlock(pixels, n, got);
+    expect(got).toEqual(wanted);
+    if (nTrees > 8) expect(share.filter((value) => value < 0.5).length).toBeGreaterThan(500);
   });
 });
