@@ -1,7 +1,9 @@
 import { execFileSync } from 'node:child_process';
+import { once } from 'node:events';
 import { createWriteStream, existsSync, readFileSync } from 'node:fs';
 import { rm } from 'node:fs/promises';
 import { join } from 'node:path';
+import { finished } from 'node:stream/promises';
 import { fileURLToPath } from 'node:url';
 import type { TrainingSet } from '../../server/analysis/classifiers/classifier.ts';
 import { createRng } from '../../server/analysis/sampling/rng.ts';
@@ -129,7 +131,8 @@ async function writeRows(
   for (let row = 0; row < height; row++) {
     const values = new Uint16Array(width);
     for (let column = 0; column < width; column++) values[column] = valueOf(column, row);
-    if (!out.write(new Uint8Array(values.buffer))) await new Promise((resolve) => out.once('drain', resolve));
+    if (!out.write(new Uint8Array(values.buffer))) await once(out, 'drain');
   }
-  await new Promise<void>((resolve, reject) => out.end((error?: Error | null) => (error ? reject(error) : resolve())));
+  out.end();
+  await finished(out);
 }

@@ -144,7 +144,7 @@ export class FlatForest implements TrainedModel {
     const { ranks, votes, best, winner } = this.#block;
     const { nFeatures, nClasses, nTrees } = this;
     const places = this.#places;
-    const stride = Math.max(1, nTrees >> 4);
+    const stride = Math.max(1, nTrees >> 5);
     let nOpen = nRows;
     for (let i = 0; i < nRows; i++) places[i] = from + i;
     for (let tree = 0; tree < nTrees && nOpen > 0; tree++) {
