@@ -167,7 +167,10 @@ export class JobRunner {
 
   private endingOf(job: Job, signal: AbortSignal, error: unknown): Partial<Job> {
     const reason = signal.aborted ? (signal.reason as StopReason) : null;
-    if (reason === 'shutdown') return { state: 'queued', step: 'Waiting to go on', owner: null };
+    // An orderly stop is no failed attempt.
+    if (reason === 'shutdown') {
+      return { state: 'queued', step: 'Waiting to go on', owner: null, attempts: job.attempts - 1 };
+    }
     if (reason === 'cancelled') return { state: 'cancelled', step: 'Cancelled', secondsLeft: null };
     this.log.error({ err: error, job: job.id, kind: job.kind }, 'job failed');
     return {
