@@ -32,9 +32,11 @@ async function openModel(path: string): Promise<TrainedModel> {
   return loaded.model;
 }
 
-function trainPart(input: ComputeTasks['train-part']['input']): Uint8Array {
+function trainParts(input: ComputeTasks['train-parts']['input']): Uint8Array[] {
   if (taught?.id !== input.setId) taught = { id: input.setId, set: input.set };
-  return prepareClassifier(input.classifier, taught.set.nFeatures).trainPart(taught.set, input.seed, input.part);
+  const { set } = taught;
+  const classifier = prepareClassifier(input.classifier, set.nFeatures);
+  return input.parts.map((part) => classifier.trainPart(set, input.seed, part));
 }
 
 async function assembleModel(input: ComputeTasks['assemble-model']['input']): Promise<Uint8Array> {
@@ -66,8 +68,8 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
   switch (task.kind) {
     case 'read-training':
       return readTraining(task, await openBands(task.scene.bandPaths));
-    case 'train-part':
-      return trainPart(task);
+    case 'train-parts':
+      return trainParts(task);
     case 'assemble-model':
       return assembleModel(task);
     case 'map-strip':

@@ -11,7 +11,7 @@ export interface RunShares {
 export const READING_SHARE = 0.03;
 const FINISHING_SHARE = 0.05;
 
-/** Seconds of one thread for each step of work, from tests/bench/run-shares.ts; only their ratio matters. */
+/** Seconds of one thread for each step of work, from tests/bench/run-shares.ts; what matters is their order of magnitude. */
 const SECONDS = {
   treeRowLevel: 3e-8,
   pixelTreeLevel: 2e-9,
@@ -36,6 +36,23 @@ export function planShares(
     mapping: READING_SHARE + between * Math.min(0.98, Math.max(0.02, split)),
     finishing: 1 - FINISHING_SHARE,
   };
+}
+
+/** A task of training is meant to take about so long: enough to outweigh handing over, little to lose or wait for. */
+const TASK_SECONDS = 0.1;
+
+/** Puts the parts still to be trained into tasks; each thread gets several, so that none is left waiting at the end. */
+export function planTrainingTasks(
+  classifier: ClassifierRecipe,
+  { nRows, nFeatures, nClasses }: { nRows: number; nFeatures: number; nClasses: number },
+  nParts: number,
+  missing: readonly number[],
+  threads: number,
+): number[][] {
+  const { training } = estimateSeconds(classifier, Math.max(2, nRows), nFeatures, nClasses, 0);
+  const fitting = Math.floor((TASK_SECONDS * nParts) / training);
+  const size = Math.max(1, Math.min(fitting, Math.floor(missing.length / (4 * threads))));
+  return Array.from({ length: Math.ceil(missing.length / size) }, (_, i) => missing.slice(i * size, (i + 1) * size));
 }
 
 function estimateSeconds(

@@ -7,7 +7,7 @@ import { runComputeTask, runWatched } from '../jobs/compute/run-compute-task.ts'
 import type { TrainingData } from '../jobs/compute/tasks.ts';
 import { forEachLimited } from '../jobs/for-each-limited.ts';
 import { runFiles } from './run-files.ts';
-import { planShares, READING_SHARE } from './run-shares.ts';
+import { planShares, planTrainingTasks, READING_SHARE } from './run-shares.ts';
 import type { RunWork } from './run-work.ts';
 
 /** What is known of the training once the model stands; kept with it, so that a resumed run need not read again. */
@@ -87,15 +87,21 @@ async function trainParts(work: RunWork, set: TrainingSet): Promise<number> {
     report(step, done, nParts, share);
   };
   say();
-  await forEachLimited(missing, app.workers.compute.threads, signal, async (part, partSignal) => {
-    const bytes = await runComputeTask(
+  const { threads } = app.workers.compute;
+  const tasks = planTrainingTasks(classifier, set, nParts, missing, threads);
+  await forEachLimited(tasks, threads, signal, async (parts, taskSignal) => {
+    const trained = await runComputeTask(
       app.workers.compute,
-      'train-part',
-      { set, setId, classifier, seed, part },
-      partSignal,
+      'train-parts',
+      { set, setId, classifier, seed, parts },
+      taskSignal,
     );
-    await app.files.write(files.part(part), bytes);
-    done++;
+    for (const [i, part] of parts.entries()) {
+      const bytes = trained[i];
+      if (!bytes) throw new Error(`Part ${part} of the training did not come back.`);
+      await app.files.write(files.part(part), bytes);
+    }
+    done += parts.length;
     say();
   });
   return nParts;

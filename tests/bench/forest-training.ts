@@ -13,6 +13,7 @@ import { runComputeTask } from '../../server/jobs/compute/run-compute-task.ts';
 import { forEachLimited } from '../../server/jobs/for-each-limited.ts';
 import { openWorkerPools } from '../../server/jobs/open-worker-pools.ts';
 import type { WorkerPools } from '../../server/jobs/worker-pools.ts';
+import { planTrainingTasks } from '../../server/services/run-shares.ts';
 import type { ClassifierRecipe } from '../../shared/contracts/run.ts';
 import { loadSatellite } from '../fixtures/satellite.ts';
 import { describeMachine, printRatio, readOption, runReference } from './reference-run.ts';
@@ -39,8 +40,10 @@ async function trainOurs(pools: WorkerPools, set: TrainingSet, trees: number, se
   };
   const setId = randomUUID();
   const began = performance.now();
-  await forEachLimited([...Array(trees).keys()], pools.compute.threads, never, async (part) => {
-    await runComputeTask(pools.compute, 'train-part', { set, setId, classifier, seed, part }, never);
+  const { threads } = pools.compute;
+  const tasks = planTrainingTasks(classifier, set, trees, [...Array(trees).keys()], threads);
+  await forEachLimited(tasks, threads, never, async (parts) => {
+    await runComputeTask(pools.compute, 'train-parts', { set, setId, classifier, seed, parts }, never);
   });
   return (performance.now() - began) / 1000;
 }

@@ -26,9 +26,8 @@ export function rankFeatures(set: TrainingSet): RankedFeatures {
   for (let f = 0; f < nFeatures; f++) {
     const column = new Float32Array(nRows);
     for (let row = 0; row < nRows; row++) column[row] = features[row * nFeatures + f];
-    const sorted = column.slice().sort();
     columns.push(column);
-    levels.push(sorted.filter((value, i) => i === 0 || value !== sorted[i - 1]));
+    levels.push(listWholeLevels(column) ?? listLevels(column));
   }
   const ranks = levels.every(({ length }) => length <= MAX_16_BIT_LEVELS)
     ? columns.map((column, f) => fillRanks(new Uint16Array(nRows), column, levels[f]))
@@ -36,6 +35,27 @@ export function rankFeatures(set: TrainingSet): RankedFeatures {
   const result = { ranks, levels };
   ranked.set(set, result);
   return result;
+}
+
+function listLevels(column: Float32Array): Float32Array {
+  const sorted = column.slice().sort();
+  return sorted.filter((value, i) => i === 0 || value !== sorted[i - 1]);
+}
+
+/** Distinct values of whole numbers in 0..65535, as most bands have them; `null` for any other. */
+function listWholeLevels(column: Float32Array): Float32Array | null {
+  const isPresent = new Uint8Array(MAX_16_BIT_LEVELS);
+  let nLevels = 0;
+  for (const value of column) {
+    const level = value & 0xffff;
+    if (level !== value) return null;
+    if (isPresent[level] === 0) nLevels++;
+    isPresent[level] = 1;
+  }
+  const levels = new Float32Array(nLevels);
+  let next = 0;
+  for (let level = 0; next < nLevels; level++) if (isPresent[level] === 1) levels[next++] = level;
+  return levels;
 }
 
 function fillRanks<T extends Uint16Array | Int32Array>(ranks: T, column: Float32Array, sorted: Float32Array): T {

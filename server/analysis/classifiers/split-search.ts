@@ -30,6 +30,9 @@ export interface NodeSums {
   squares: number;
 }
 
+/** Rows up to which inserting one by one beats counting into buckets. */
+const INSERTION_ROWS = 16;
+
 /** Cells of a histogram that cost as much as a row put in order. */
 const CELLS_PER_ROW = 4;
 
@@ -96,10 +99,14 @@ export class SplitSearch {
       if (rank > max) max = rank;
     }
     if (min === max) return false;
-    let shift = 0;
-    while ((max - min) >> shift >= 2 * n) shift++;
-    this.#sortIntoBuckets(tags, lo, n, min, shift, (max - min) >> shift);
-    if (shift > 0) this.#mend(n);
+    if (n <= INSERTION_ROWS) {
+      this.#sortByInsertion(tags, lo, n);
+    } else {
+      let shift = 0;
+      while ((max - min) >> shift >= 2 * n) shift++;
+      this.#sortIntoBuckets(tags, lo, n, min, shift, (max - min) >> shift);
+      if (shift > 0) this.#mend(n);
+    }
     this.#scanSorted(best, feature, n, node);
     return true;
   }
@@ -135,7 +142,7 @@ export class SplitSearch {
     let product = 0;
     let previous = -1;
     let isConstant = true;
-    left.fill(0);
+    for (let c = 0; c < left.length; c++) left[c] = 0;
     for (let rank = 0, at = 0; rank < nLevels && nLeft < nRows; rank++) {
       const nBefore = nLeft;
       const weightBefore = leftWeight;
@@ -167,6 +174,23 @@ export class SplitSearch {
       previous = rank;
     }
     return !isConstant;
+  }
+
+  #sortByInsertion(tags: Int32Array, lo: number, n: number): void {
+    const ranks = this.#ranks;
+    const sortedRanks = this.#sortedRanks;
+    const sortedTags = this.#sortedTags;
+    for (let i = 0; i < n; i++) {
+      const rank = ranks[i];
+      let j = i - 1;
+      while (j >= 0 && sortedRanks[j] > rank) {
+        sortedRanks[j + 1] = sortedRanks[j];
+        sortedTags[j + 1] = sortedTags[j];
+        j--;
+      }
+      sortedRanks[j + 1] = rank;
+      sortedTags[j + 1] = tags[lo + i];
+    }
   }
 
   #sortIntoBuckets(tags: Int32Array, lo: number, n: number, min: number, shift: number, lastBucket: number): void {
@@ -225,7 +249,7 @@ export class SplitSearch {
     // Σ(class weight in the node · on the left), from which the right side's squares follow.
     let product = 0;
     let previous = sortedRanks[0];
-    left.fill(0);
+    for (let c = 0; c < left.length; c++) left[c] = 0;
     for (let i = 0; i < n; i++) {
       const rank = sortedRanks[i];
       if (rank !== previous) {

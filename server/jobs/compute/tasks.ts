@@ -58,16 +58,17 @@ export interface ComputeTasks {
     };
     result: TrainingData;
   };
-  'train-part': {
+  /** Several parts at a time, so that small ones are not all handing over. The results are in the order of `parts`. */
+  'train-parts': {
     input: {
       set: TrainingSet;
       /** The same for all parts of one training, so that a thread prepares the set once. */
       setId: string;
       classifier: ClassifierRecipe;
       seed: number;
-      part: number;
+      parts: readonly number[];
     };
-    result: Uint8Array;
+    result: Uint8Array[];
   };
   'assemble-model': {
     input: {

@@ -54,6 +54,7 @@ describe('the best split on one feature', () => {
   // Few levels are counted, many are sorted into buckets; crowded levels leave most of the sorting within buckets.
   it.each([
     ['few levels', 6, 60, 1],
+    ['many levels in a very short node', 5000, 11, 1],
     ['many levels in a short node', 5000, 40, 1],
     ['many levels in a long node', 5000, 300, 1],
     ['about as many levels as the two ways are chosen by', 60, 60, 1],
