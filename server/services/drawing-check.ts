@@ -86,6 +86,12 @@ const SHAPE_REFUSALS: Record<ShapeProblem, RefusalText> = {
   'self-crossing': CROSSING,
   'hole-crossing': { ...CROSSING, found: 'a hole that crosses or touches another ring here' },
   'hole-outside': { ...CROSSING, found: 'a hole outside the outline', wanted: 'holes inside the outline' },
+  'too-intricate': {
+    reason: 'too-large',
+    found: 'too many long sides beside each other to check for crossings',
+    wanted: 'an outline of a place',
+    advice: 'Draw a simpler outline.',
+  },
 };
 const OUTSIDE_SCENE: RefusalText = {
   reason: 'outside-scene',

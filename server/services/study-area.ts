@@ -1,4 +1,4 @@
-import { kinks } from '@turf/turf';
+import { findRingCrossing } from '../analysis/sampling/polygon-shape.ts';
 import type { ArealGeometry } from '../../shared/contracts/geometry.ts';
 import { InvalidInput } from '../errors.ts';
 
@@ -16,13 +16,23 @@ export function checkStudyArea(geometry: ArealGeometry): void {
       });
     }
   }
-  const crossing = kinks(geometry).features[0];
-  if (crossing) {
-    const [lon, lat] = crossing.geometry.coordinates;
-    throw new InvalidInput('The study area crosses itself.', {
-      found: `a crossing at ${lat?.toFixed(5)}, ${lon?.toFixed(5)}`,
-      wanted: 'rings that do not cross themselves',
-      advice: 'Mend the outline there and send again.',
-    });
+  for (const polygon of polygons) {
+    const crossing = findRingCrossing(polygon);
+    if (crossing === 'too-intricate') {
+      throw new InvalidInput('The study area is too intricate.', {
+        found: 'too many long sides beside each other to check for crossings',
+        wanted: 'an outline of a place',
+        advice: 'Simplify the outline and send again.',
+      });
+    }
+    if (crossing) {
+      const [lon, lat] = crossing.at;
+      throw new InvalidInput('The study area crosses itself.', {
+        found: `a crossing at ${lat.toFixed(5)}, ${lon.toFixed(5)}`,
+        wanted: 'rings that do not cross or touch themselves or each other',
+        advice: 'Mend the outline there and send again.',
+        at: [lon, lat],
+      });
+    }
   }
 }

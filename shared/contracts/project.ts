@@ -1,7 +1,7 @@
 import { z } from 'zod';
 import { PROJECT_ROLES } from '../constants/roles.ts';
 import { emailSchema, idSchema, instantSchema, personSchema } from './common.ts';
-import { arealGeometrySchema, boundsSchema } from './geometry.ts';
+import { arealGeometrySchema, boundsSchema, studyAreaSchema } from './geometry.ts';
 
 export const projectRoleSchema = z.enum(PROJECT_ROLES);
 
@@ -76,7 +76,7 @@ export const updateProjectSchema = z
 export const deleteProjectSchema = z.object({ confirmName: z.string() }).strict();
 
 export const setStudyAreaSchema = z
-  .object({ geometry: arealGeometrySchema.nullable(), version: z.number().int() })
+  .object({ geometry: studyAreaSchema.nullable(), version: z.number().int() })
   .strict();
 
 export const memberSchema = z.object({

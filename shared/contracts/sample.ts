@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { idSchema, instantSchema, personSchema } from './common.ts';
-import { polygonSchema } from './geometry.ts';
+import { drawingSchema, polygonSchema } from './geometry.ts';
 
 export const confidenceSchema = z.enum(['low', 'medium', 'high']);
 export type Confidence = z.infer<typeof confidenceSchema>;
@@ -40,7 +40,7 @@ export const createSampleSchema = z
     id: idSchema,
     sceneId: idSchema,
     classId: idSchema,
-    geometry: polygonSchema,
+    geometry: drawingSchema,
     confidence: confidenceSchema.default('medium'),
     note: noteSchema.default(''),
   })
@@ -50,7 +50,7 @@ export const updateSampleSchema = z
   .object({
     version: z.number().int(),
     classId: idSchema.optional(),
-    geometry: polygonSchema.optional(),
+    geometry: drawingSchema.optional(),
     confidence: confidenceSchema.optional(),
     note: noteSchema.optional(),
   })
@@ -79,7 +79,7 @@ export const drawingRefusalSchema = z.object({
 export type DrawingRefusal = z.infer<typeof drawingRefusalSchema>;
 
 /** What a drawing would hold, asked while it is drawn; nothing is stored. */
-export const measureDrawingSchema = z.object({ sceneId: idSchema, geometry: polygonSchema }).strict();
+export const measureDrawingSchema = z.object({ sceneId: idSchema, geometry: drawingSchema }).strict();
 export const drawingMeasureSchema = z.object({
   refusal: drawingRefusalSchema.nullable(),
   pixelCount: z.number().int(),

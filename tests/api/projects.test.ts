@@ -116,6 +116,25 @@ describe('the study area', () => {
     expect(removed.body.studyArea).toBeNull();
   });
 
+  it('is refused with more positions than browsers can carry about', async () => {
+    const path = `/api/v1/projects/${team.project.id}`;
+    const { version } = (await lead.get(path)).body;
+    const ringOf = (n: number, west: number): [number, number][] => {
+      const corners = Array.from({ length: n }, (_, i): [number, number] => [
+        west + Math.cos((2 * Math.PI * i) / n),
+        59 + Math.sin((2 * Math.PI * i) / n),
+      ]);
+      return [...corners, [...(corners[0] ?? [0, 0])]];
+    };
+    const geometry = { type: 'MultiPolygon', coordinates: [-20, -16, -12].map((west) => [ringOf(17_000, west)]) };
+    const refused = await lead.put(`${path}/study-area`).send({ version, geometry }).expect(400);
+    expect(refused.body.errors).toMatchObject([
+      { path: 'geometry', message: expect.stringContaining('50000 positions') },
+    ]);
+    geometry.coordinates.pop();
+    await lead.put(`${path}/study-area`).send({ version, geometry }).expect(200);
+  });
+
   it('is refused when it crosses itself or is not closed, and says where', async () => {
     const path = `/api/v1/projects/${team.project.id}`;
     const { version } = (await lead.get(path)).body;

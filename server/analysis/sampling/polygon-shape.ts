@@ -1,7 +1,17 @@
 import type { Polygon, Position, Ring } from './polygon.ts';
 
 export type ShapeProblem =
-  'too-few-positions' | 'not-finite' | 'not-closed' | 'zero-area' | 'self-crossing' | 'hole-outside' | 'hole-crossing';
+  | 'too-few-positions'
+  | 'not-finite'
+  | 'not-closed'
+  | 'zero-area'
+  | 'self-crossing'
+  | 'hole-outside'
+  | 'hole-crossing'
+  | 'too-intricate';
+
+/** Pairs of segments looked at for crossings: about half a second of work, a thousand times what a lake of islands needs. */
+const maxPairs = 100_000_000;
 
 /** A rejected drawing is a result, not an exception; `at` is where the fault lies, `ringIndex` 0 is the outer ring. */
 export type ShapeCheck = { ok: true } | { ok: false; reason: ShapeProblem; ringIndex: number; at: [number, number] };
@@ -16,7 +26,8 @@ export function checkPolygonShape(polygon: Polygon): ShapeCheck {
     const check = checkRing(polygon[r], r);
     if (!check.ok) return check;
   }
-  const crossing = findCrossing(polygon);
+  const crossing = findRingCrossing(polygon);
+  if (crossing === 'too-intricate') return fail('too-intricate', 0, polygon[0][0]);
   if (crossing) {
     const reason = crossing.sameRing ? 'self-crossing' : 'hole-crossing';
     return fail(reason, crossing.ringIndex, crossing.at);
@@ -73,25 +84,55 @@ interface Segment {
   index: number;
   /** Index of the segment after this one in its ring. */
   next: number;
-  minX: number;
-  maxX: number;
 }
 
-/** Sweeps segments by their left end and tests only those whose x ranges overlap. */
-function findCrossing(polygon: Polygon): { ringIndex: number; at: Position; sameRing: boolean } | null {
-  const segments = polygon.flatMap(segmentsOf).sort((a, b) => a.minX - b.minX);
-  let active: Segment[] = [];
-  for (const segment of segments) {
-    active = active.filter((other) => other.maxX >= segment.minX);
-    for (const other of active) {
+/** Where the rings of a polygon meet; `sameRing` when one crosses or touches itself. */
+export interface RingCrossing {
+  ringIndex: number;
+  at: Position;
+  sameRing: boolean;
+}
+
+/**
+ * Finds where closed rings cross or touch themselves or each other; null when they do not. Sweeps segments by their left end and
+ * tests those whose boxes overlap: quick for outlines of real things, quadratic for combs of long teeth, so it
+ * gives up on those after `maxPairs` pairs.
+ */
+export function findRingCrossing(polygon: Polygon): RingCrossing | 'too-intricate' | null {
+  const segments = polygon.flatMap(segmentsOf).sort((a, b) => leftOf(a) - leftOf(b));
+  const n = segments.length;
+  const [right, low, high] = [new Float64Array(n), new Float64Array(n), new Float64Array(n)];
+  const active = new Int32Array(n);
+  let nActive = 0;
+  let nPairs = 0;
+  for (let i = 0; i < n; i++) {
+    const segment = segments[i];
+    const left = leftOf(segment);
+    right[i] = Math.max(segment.from[0], segment.to[0]);
+    low[i] = Math.min(segment.from[1], segment.to[1]);
+    high[i] = Math.max(segment.from[1], segment.to[1]);
+    nPairs += nActive;
+    if (nPairs > maxPairs) return 'too-intricate';
+    let nKept = 0;
+    for (let k = 0; k < nActive; k++) {
+      const j = active[k];
+      if (right[j] < left) continue;
+      active[nKept++] = j;
+      if (high[j] < low[i] || low[j] > high[i]) continue;
+      const other = segments[j];
       const at = meetingPoint(segment, other);
       if (!at) continue;
       const ringIndex = Math.max(segment.ringIndex, other.ringIndex);
       return { ringIndex, at, sameRing: segment.ringIndex === other.ringIndex };
     }
-    active.push(segment);
+    active[nKept++] = i;
+    nActive = nKept;
   }
   return null;
+}
+
+function leftOf({ from, to }: Segment): number {
+  return Math.min(from[0], to[0]);
 }
 
 function segmentsOf(ring: Ring, ringIndex: number): Segment[] {
@@ -99,23 +140,12 @@ function segmentsOf(ring: Ring, ringIndex: number): Segment[] {
   const positions = ring.filter(([x, y], i) => i === 0 || x !== ring[i - 1][0] || y !== ring[i - 1][1]);
   const count = positions.length - 1;
   return Array.from({ length: count }, (_, index) => {
-    const [from, to] = [positions[index], positions[index + 1]];
-    return {
-      from,
-      to,
-      ringIndex,
-      index,
-      next: (index + 1) % count,
-      minX: Math.min(from[0], to[0]),
-      maxX: Math.max(from[0], to[0]),
-    };
+    return { from: positions[index], to: positions[index + 1], ringIndex, index, next: (index + 1) % count };
   });
 }
 
 /** Where two segments meet although they should not; neighbours may share their common end but nothing more. */
 function meetingPoint(s: Segment, t: Segment): Position | null {
-  if (Math.max(s.from[1], s.to[1]) < Math.min(t.from[1], t.to[1])) return null;
-  if (Math.max(t.from[1], t.to[1]) < Math.min(s.from[1], s.to[1])) return null;
   const sameRing = s.ringIndex === t.ringIndex;
   if (sameRing && (s.next === t.index || t.next === s.index)) {
     const [first, second] = s.next === t.index ? [s, t] : [t, s];
@@ -145,8 +175,13 @@ function foldsBack(first: Segment, second: Segment): boolean {
   return dot < 0;
 }
 
-function isWithinBox([x, y]: Position, { from, to, minX, maxX }: Segment): boolean {
-  return x >= minX && x <= maxX && y >= Math.min(from[1], to[1]) && y <= Math.max(from[1], to[1]);
+function isWithinBox([x, y]: Position, { from, to }: Segment): boolean {
+  return (
+    x >= Math.min(from[0], to[0]) &&
+    x <= Math.max(from[0], to[0]) &&
+    y >= Math.min(from[1], to[1]) &&
+    y <= Math.max(from[1], to[1])
+  );
 }
 
 /** Twice the signed area of the triangle a, b, p: positive when p is left of a → b with y upwards. */

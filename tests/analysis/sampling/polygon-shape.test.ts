@@ -81,6 +81,20 @@ describe('the shape of a drawn polygon', () => {
     expect(performance.now() - start).toBeLessThan(2000);
   });
 
+  it('checks a comb of 10,000 positions quickly, and gives up on one so large that it would hold the server up', () => {
+    const comb = (nTeeth: number): Ring => {
+      const teeth = Array.from({ length: nTeeth }, (_, i): [number, number][] => [
+        [0, i],
+        [1000, i + 0.5],
+      ]);
+      return [...teeth.flat(), [1001, nTeeth + 1], [1001, -1], [0, 0]];
+    };
+    const start = performance.now();
+    expect(checkPolygonShape([comb(4_990)])).toEqual({ ok: true });
+    expect(checkPolygonShape([comb(100_000)])).toMatchObject({ ok: false, reason: 'too-intricate' });
+    expect(performance.now() - start).toBeLessThan(5000);
+  });
+
   it('has its signed area without loss far from the origin', () => {
     expect(signedRingArea(square)).toBe(100);
     expect(signedRingArea(square.map(([x, y]) => [x + 2 ** 40, y + 2 ** 40]))).toBe(100);

@@ -2,7 +2,7 @@ import {
   type ArealGeometry,
   type MultiPolygon,
   type Position,
-  arealGeometrySchema,
+  studyAreaSchema,
 } from '../../../../shared/contracts/geometry.ts';
 
 /** Why a file is no study area: what was found, what is wanted, what to do. */
@@ -47,11 +47,11 @@ function readDocument(text: string): ArealGeometry {
     polygons.length === 1
       ? { type: 'Polygon', coordinates: polygons[0] ?? [] }
       : { type: 'MultiPolygon', coordinates: polygons };
-  const parsed = arealGeometrySchema.safeParse(geometry);
+  const parsed = studyAreaSchema.safeParse(geometry);
   if (parsed.success) return parsed.data;
   throw new Refused({
     found: `a polygon that cannot be taken: ${parsed.error.issues[0]?.message ?? 'it does not fit'}`,
-    wanted: 'rings of four to 20 000 positions',
+    wanted: 'rings of four to 20 000 positions, at most 50 000 in all',
     advice: 'Simplify the outline and choose the file again.',
   });
 }
