@@ -6,6 +6,7 @@ import { User } from '../entities/user.ts';
 import { hashPassword } from '../services/accounts.ts';
 import { createLandClass } from '../services/land-classes.ts';
 import { createProject, updateProject } from '../services/projects.ts';
+import { demoId } from './demo-id.ts';
 import { DEMO_CLASSES } from './demo-classes.ts';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from './demo-people.ts';
 
@@ -52,6 +53,7 @@ export async function addDemoScheme(app: App, projectId: string, leadId: string)
   for (const [position, { name, definition }] of DEMO_CLASSES.entries()) {
     const { colour } = classPaletteStep(position);
     const { landClass } = await createLandClass(app, projectId, leadId, {
+      id: demoId('class', position + 1),
       code: position + 1,
       name,
       definition,

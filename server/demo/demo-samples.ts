@@ -1,9 +1,9 @@
-import { randomUUID } from 'node:crypto';
 import proj4 from 'proj4';
 import type { Position } from '../../shared/contracts/geometry.ts';
 import type { App } from '../app-context.ts';
 import { Project } from '../entities/project.ts';
 import { createSample } from '../services/samples.ts';
+import { demoId } from './demo-id.ts';
 import type { DemoActors } from './demo-project.ts';
 import type { HumanSample } from './island/human-samples.ts';
 
@@ -30,13 +30,20 @@ export async function drawDemoSamples(
   samples: readonly HumanSample[],
   onEach: () => void,
 ): Promise<void> {
-  for (const { labeller, classCode, ring, confidence, note } of samples) {
+  for (const [place, { labeller, classCode, ring, confidence, note }] of samples.entries()) {
     onEach();
     const project = await app.db.getRepository(Project).findOneByOrFail({ id: projectId });
     const classId = classIds[classCode - 1];
     if (!classId) throw new Error(`The demo has no class with code ${classCode}.`);
     const geometry = { type: 'Polygon' as const, coordinates: [toLonLat(ring)] };
     const by = labeller === 'a' ? people.labellerA : people.labellerB;
-    await createSample(app, project, by, { id: randomUUID(), sceneId, classId, geometry, confidence, note });
+    await createSample(app, project, by, {
+      id: demoId('sample', place + 1),
+      sceneId,
+      classId,
+      geometry,
+      confidence,
+      note,
+    });
   }
 }

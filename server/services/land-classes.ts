@@ -80,7 +80,7 @@ export async function createLandClass(
   app: App,
   projectId: string,
   byId: string,
-  input: z.output<typeof createLandClassSchema>,
+  input: z.output<typeof createLandClassSchema> & { id?: string },
 ): Promise<LandClassRow> {
   const id = await app.db.transaction(async (manager) => {
     const scheme = await lockScheme(manager, projectId);

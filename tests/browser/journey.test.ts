@@ -180,6 +180,8 @@ async function startRun(projectId: string): Promise<Run> {
     .first()
     .click();
   await page.getByText('What this comes to').waitFor();
+  // The page scrolls inside its frame; the frame itself never scrolls away.
+  expect(await page.evaluate(() => document.documentElement.scrollHeight)).toBe(900);
   await page.getByRole('button', { name: 'Start run' }).click();
   await page.waitForURL(/\/runs\/[0-9a-f-]{36}/);
   await page.getByRole('link', { name: 'Read accuracy' }).waitFor({ timeout: 120_000 });

@@ -14,6 +14,8 @@ import { gatePages, sitePages } from './site-pages.ts';
 export const router = createBrowserRouter([
   {
     errorElement: <RouteError />,
+    // Nothing to see while the first page is fetched: it comes from the same machine in a moment.
+    hydrateFallbackElement: <span role="status" aria-label="Opening" />,
     children: [
       { path: '/sign-in', element: <SignInPage /> },
       ...gatePages,

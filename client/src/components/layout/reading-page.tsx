@@ -14,7 +14,7 @@ export function ReadingPage({ header, width = 'wide', children }: ReadingPagePro
   return (
     <>
       {header}
-      <div className="min-h-0 grow overflow-y-auto px-11 py-6 max-lg:px-6 max-sm:overflow-visible max-sm:px-4 max-sm:py-4">
+      <div className="relative min-h-0 grow overflow-y-auto px-11 py-6 max-lg:px-6 max-sm:overflow-visible max-sm:px-4 max-sm:py-4">
         <div
           className={classNames(
             'mx-auto',

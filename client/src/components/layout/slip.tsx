@@ -32,7 +32,7 @@ export function Slip({ title, mark, note, onClose, footer, children }: SlipProps
         </div>
         {onClose && <IconButton label="Close" shortcut="Esc" size="sm" icon={<X />} onClick={onClose} />}
       </header>
-      <div className="min-h-0 grow space-y-3 overflow-y-auto px-[18px] py-3">{children}</div>
+      <div className="relative min-h-0 grow space-y-3 overflow-y-auto px-[18px] py-3">{children}</div>
       {footer && <footer className="flex gap-2 border-t border-line px-[18px] py-3 *:grow">{footer}</footer>}
     </aside>
   );
