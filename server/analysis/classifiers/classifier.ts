@@ -114,8 +114,9 @@ export function requireTrainingSet(set: TrainingSet): void {
   }
   const badLabel = labels.findIndex((label) => label >= nClasses);
   if (badLabel >= 0) throw new RangeError(`Row ${badLabel} has class ${labels[badLabel]} of only ${nClasses}.`);
-  const badValue = features.findIndex((value) => !Number.isFinite(value));
-  if (badValue >= 0) {
+  let badValue = 0;
+  while (badValue < features.length && Number.isFinite(features[badValue])) badValue++;
+  if (badValue < features.length) {
     throw new RangeError(
       `Row ${Math.floor(badValue / nFeatures)}, feature ${badValue % nFeatures} is not a finite number.`,
     );

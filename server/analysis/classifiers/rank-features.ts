@@ -59,8 +59,15 @@ function listWholeLevels(column: Float32Array): Float32Array | null {
 }
 
 function fillRanks<T extends Uint16Array | Int32Array>(ranks: T, column: Float32Array, sorted: Float32Array): T {
+  let previous = NaN;
   for (let row = 0; row < column.length; row++) {
     const value = column[row];
+    // Rows of one polygon follow each other and are alike.
+    if (value === previous) {
+      ranks[row] = ranks[row - 1];
+      continue;
+    }
+    previous = value;
     let lo = 0;
     let hi = sorted.length - 1;
     while (lo < hi) {
