@@ -9,7 +9,8 @@ import { createConnection } from 'mysql2/promise';
 import { chromium, type Browser } from 'playwright-core';
 
 const root = join(import.meta.dirname, '../..');
-const START_MS = 60_000;
+/** The demo is loaded before the address is printed. */
+const START_MS = 180_000;
 
 /** The compiled product as a process of its own, and a browser before it. */
 export interface Product {
