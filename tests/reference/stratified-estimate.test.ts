@@ -5,7 +5,12 @@ import {
   createConfusionMatrix,
 } from '../../server/analysis/accuracy/confusion-matrix.ts';
 import { computeDisagreement, toPopulationMatrix } from '../../server/analysis/accuracy/disagreement.ts';
-import { allocateProportionally, planSampleSize } from '../../server/analysis/accuracy/plan-sample-size.ts';
+import {
+  allocateSample,
+  expectPrecision,
+  type AllocationRule,
+} from '../../server/analysis/accuracy/allocate-sample.ts';
+import { planSampleSize } from '../../server/analysis/accuracy/plan-sample-size.ts';
 import { estimateStratified, type StratumSample } from '../../server/analysis/accuracy/stratified-estimate.ts';
 import { checkValues } from '../fixtures/check-values.ts';
 
@@ -118,7 +123,7 @@ describe('what cannot be estimated', () => {
 });
 
 describe('sample size and allocation (Olofsson et al. 2014, section 5.1, eq. 13)', () => {
-  const { W, U, seTarget, n, proportional } = checkValues.sampleSize;
+  const { W, U, seTarget, n, equal, proportional } = checkValues.sampleSize;
   const strata = W.map((areaShare, i) => ({ areaShare, expectedUsers: U[i] }));
 
   it('needs 641 units for a standard error of .01, and fewer for larger ones', () => {
@@ -126,15 +131,42 @@ describe('sample size and allocation (Olofsson et al. 2014, section 5.1, eq. 13)
     expect([0.005, 0.015, 0.02].map((se) => planSampleSize(strata, se))).toEqual([2563, 285, 161]);
   });
 
-  it('shares them out in proportion as printed, and keeps a least number in each class', () => {
-    expect(allocateProportionally(W, n)).toEqual(proportional);
-    const kept = allocateProportionally(W, n, 75);
-    expect(kept.slice(0, 2)).toEqual([75, 75]);
+  it('keeps the finite population of Cochran (1977): 640.493 for 10,000,000 units, far fewer for a small area', () => {
+    expect(planSampleSize(strata, seTarget, 10_000_000)).toBe(641);
+    // (ΣWS)²/(S² + ΣWS²/N) with ΣWS = .253088 and ΣWS² = .067238 by hand, N = 2000: 479.4.
+    const [spread, variance] = [0.253088, 0.0672375];
+    expect(planSampleSize(strata, seTarget, 2000)).toBe(Math.ceil(spread ** 2 / (1e-4 + variance / 2000)));
+  });
+
+  it('shares them out as printed: equal 160 each, in proportion 13/10/205/413', () => {
+    expect(allocateSample(strata, 640, { kind: 'equal' })).toEqual(equal);
+    expect(allocateSample(strata, n, { kind: 'proportional' })).toEqual(proportional);
+  });
+
+  it('gives a least number to each class and the rest in proportion, and Neyman 23.2/18.6/243.1/356.0', () => {
     // The rest, 491, in proportion .320 to .645 by hand: 162.8 and 328.2.
-    expect(kept.slice(2)).toEqual([163, 328]);
-    expect(allocateProportionally([0.5, 0.5], 7)).toEqual([4, 3]);
-    expect(allocateProportionally([0, 1], 10, 5)).toEqual([5, 5]);
-    expect(() => allocateProportionally(W, 100, 75)).toThrow(/100 units/);
+    expect(allocateSample(strata, n, { kind: 'minimum', atLeast: 75 })).toEqual([75, 75, 163, 328]);
+    const neyman = allocateSample(strata, n, { kind: 'neyman' });
+    [23.2, 18.6, 243.1, 356.0].forEach((exact, i) => expect(Math.abs(neyman[i] - exact)).toBeLessThan(1));
+    expect(neyman.reduce((sum, value) => sum + value)).toBe(n);
+  });
+
+  it('expects the wanted standard error from Neyman allocation, and a larger one from all others', () => {
+    const errorOf = (rule: AllocationRule) => expectPrecision(strata, allocateSample(strata, n, rule)).standardError!;
+    const neyman = errorOf({ kind: 'neyman' });
+    // n − 1 in the variance moves it by a per cent or so.
+    expect(Math.abs(neyman - seTarget)).toBeLessThan(2e-4);
+    for (const rule of [{ kind: 'equal' }, { kind: 'proportional' }, { kind: 'minimum', atLeast: 75 }] as const) {
+      expect(errorOf(rule)).toBeGreaterThan(neyman);
+    }
+  });
+
+  it("expects for each class the interval of user's accuracy its units can give", () => {
+    const { users } = expectPrecision(strata, [75, 75, 165, 325]);
+    // 74 effective units at .7: Wilson 1927 by hand, centre .690130, half-width .101966.
+    expect(users[0]!.low).toBeCloseTo(0.588, 2);
+    expect(users[0]!.high).toBeCloseTo(0.792, 2);
+    expect(expectPrecision(strata, [1, 75, 165, 325])).toMatchObject({ standardError: null, halfWidth: null });
   });
 
   it('refuses shares that do not sum to 1', () => {

@@ -11,7 +11,11 @@ export interface McNemarResult {
   correctedPValue: number;
   /** Exact two-sided binomial p. */
   exactPValue: number;
+  /** The p to quote: exact under 25 discordant units, chi-square above (common practice, no single source). */
+  quoted: 'exact' | 'chi-square';
 }
+
+const SMALL_DISCORDANT = 25;
 
 /**
  * Compares two maps judged on the same reference units: `onlyFirstRight` = b, `onlySecondRight` = c.
@@ -40,5 +44,6 @@ export function compareByMcNemar(onlyFirstRight: number, onlySecondRight: number
     correctedChiSquare,
     correctedPValue: erfc(Math.sqrt(correctedChiSquare / 2)),
     exactPValue: Math.min(1, 2 * tail),
+    quoted: discordant < SMALL_DISCORDANT ? 'exact' : 'chi-square',
   };
 }
