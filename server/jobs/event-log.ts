@@ -57,18 +57,24 @@ export class EventLog {
   async subscribe(projectId: string, afterId: number | null, listener: Listener): Promise<() => void> {
     const group = this.listeners.get(projectId) ?? new Set<Listener>();
     this.listeners.set(projectId, group.add(listener));
-    if (afterId !== null) {
+    const unsubscribe = () => {
+      group.delete(listener);
+      // A group that was let go of may have been followed by another one.
+      if (group.size === 0 && this.listeners.get(projectId) === group) this.listeners.delete(projectId);
+    };
+    if (afterId === null) return unsubscribe;
+    try {
       const missed = await this.rows.find({
         where: { projectId, id: MoreThan(String(afterId)) },
         order: { id: 'ASC' },
         take: 1000,
       });
       for (const row of missed) listener({ id: Number(row.id), event: row.event });
+    } catch (error) {
+      unsubscribe();
+      throw error;
     }
-    return () => {
-      group.delete(listener);
-      if (group.size === 0) this.listeners.delete(projectId);
-    };
+    return unsubscribe;
   }
 
   private poll(): Promise<void> {
