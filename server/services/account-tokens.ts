@@ -31,13 +31,17 @@ export async function createAccountLink(
   return `${app.config.publicUrl}/welcome/${secret}`;
 }
 
+function refuseLink(): NotFound {
+  return new NotFound('This link is wrong, was used already, or is too old. Ask for a new one.');
+}
+
 /** The token behind a link. @throws NotFound when it is wrong, used or too old */
 export async function findAccountToken(app: App, secret: string): Promise<AccountToken> {
   const token = await app.db.getRepository(AccountToken).findOne({
     where: { secretSha256: digest(secret), expiresAt: MoreThan(new Date()), user: { closedAt: IsNull() } },
     relations: { user: true },
   });
-  if (!token) throw new NotFound('This link is wrong, was used already, or is too old. Ask for a new one.');
+  if (!token) throw refuseLink();
   return token;
 }
 
@@ -46,6 +50,9 @@ export async function acceptAccountLink(app: App, secret: string, name: string, 
   const token = await findAccountToken(app, secret);
   const passwordHash = await hashPassword(password);
   await app.db.transaction(async (manager) => {
+    // By its digest first: of two that hold the same link at once, one is too late.
+    const used = await manager.delete(AccountToken, { secretSha256: token.secretSha256 });
+    if (!used.affected) throw refuseLink();
     await manager.delete(AccountToken, { userId: token.userId });
     await manager.update(User, { id: token.userId }, { name, passwordHash });
     await manager.delete(Session, { userId: token.userId });
@@ -58,8 +65,9 @@ export async function requestPasswordReset(app: App, email: string): Promise<voi
   const user = await app.db.getRepository(User).findOneBy({ email, closedAt: IsNull() });
   if (!user) return;
   const link = await createAccountLink(app, app.db.manager, user.id, 'reset');
-  await app.mail.send({
-    to: email,
+  // Not waited for: how long a mail server takes would tell that there is an account. A failure is logged by the mailer.
+  void app.mail.send({
+    to: user.email,
     subject: 'Choose a new Groundsel password',
     text: `Hello ${user.name},\n\nchoose a new password here within two hours:\n${link}\n\nIf you did not ask for this, do nothing; your password stays as it is.\n`,
   });

@@ -1,6 +1,7 @@
 import { hash, verify } from '@node-rs/argon2';
 import { IsNull, MoreThan, Not, type EntityManager } from 'typeorm';
 import type { App } from '../app-context.ts';
+import { AccountToken } from '../entities/account-token.ts';
 import { Membership } from '../entities/membership.ts';
 import { Session } from '../entities/session.ts';
 import { User } from '../entities/user.ts';
@@ -44,6 +45,8 @@ export async function changePassword(
   const passwordHash = await hashPassword(next);
   await app.db.transaction(async (manager) => {
     await manager.update(User, { id: userId }, { passwordHash });
+    // A reset link that someone else asked for must not undo the change.
+    await manager.delete(AccountToken, { userId });
     await manager.delete(Session, { userId, id: Not(keepSessionId) });
   });
   await app.mail.send({

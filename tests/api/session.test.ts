@@ -45,6 +45,11 @@ afterAll(async () => {
 
 const signIn = (email: string, password: string) => test.stranger.post('/api/v1/session').send({ email, password });
 const linkIn = (letter: Letter | undefined) => /\/welcome\/(\S+)/.exec(letter?.text ?? '')?.[1] ?? '';
+/** The answer to a forgotten password does not wait for the letter. */
+async function linkTo({ email }: { email: string }): Promise<string> {
+  await expect.poll(() => letters.some(({ to }) => to === email)).toBe(true);
+  return linkIn(letters.findLast(({ to }) => to === email));
+}
 
 describe('signing in', () => {
   it('opens a session in an http-only, same-site cookie and tells who is signed in', async () => {
@@ -159,7 +164,7 @@ describe('passwords', () => {
       .send({ email: 'nobody@vennory.example' })
       .expect(202);
     expect(known.body).toEqual(unknown.body);
-    const secret = linkIn(letters.findLast(({ to }) => to === user.email));
+    const secret = await linkTo(user);
     expect((await test.stranger.get(`/api/v1/welcome/${secret}`).expect(200)).body).toMatchObject({
       purpose: 'reset',
       email: user.email,
@@ -175,13 +180,46 @@ describe('passwords', () => {
     await signIn(user.email, choice.password).expect(200);
   });
 
+  it('work once, even for two who hold the same link at once', async () => {
+    const user = await makeUser(test.app);
+    await test.stranger.post('/api/v1/account/forgotten').send({ email: user.email }).expect(202);
+    const secret = await linkTo(user);
+    const answers = await Promise.all(
+      ['first', 'second'].map((who) =>
+        test.stranger.post(`/api/v1/welcome/${secret}`).send({ name: who, password: `the password of the ${who}` }),
+      ),
+    );
+    expect(answers.map(({ status }) => status).sort()).toEqual([200, 404]);
+  });
+
+  it('to a new password stop working when the password is changed', async () => {
+    const user = await makeUser(test.app);
+    await test.stranger.post('/api/v1/account/forgotten').send({ email: user.email }).expect(202);
+    const secret = await linkTo(user);
+    await test.stranger.get(`/api/v1/welcome/${secret}`).expect(200);
+    const agent = await test.signedIn(user);
+    await agent.put('/api/v1/account/password').send({ current: PASSWORD, next: 'quite another password' }).expect(204);
+    await test.stranger.get(`/api/v1/welcome/${secret}`).expect(404);
+  });
+
   it('are never stored beside the link: only its digest is', async () => {
     const user = await makeUser(test.app);
     await test.stranger.post('/api/v1/account/forgotten').send({ email: user.email }).expect(202);
-    const secret = linkIn(letters.findLast(({ to }) => to === user.email));
+    const secret = await linkTo(user);
     const rows = await test.app.db.query('SELECT * FROM account_tokens');
     expect(secret.length).toBeGreaterThan(30);
     expect(JSON.stringify(rows)).not.toContain(secret);
+  });
+});
+
+describe('the present password', () => {
+  it('cannot be guessed at a browser that was left signed in', async () => {
+    const user = await makeUser(test.app);
+    const agent = await test.signedIn(user);
+    const guess = (current: string) =>
+      agent.put('/api/v1/account/password').send({ current, next: 'quite another password' });
+    for (let n = 0; n < 8; n++) await guess(`guess ${n}`).expect(400);
+    await guess(PASSWORD).expect(429);
   });
 });
 

@@ -24,7 +24,7 @@ import {
 } from '../../services/accounts.ts';
 import { route } from '../route.ts';
 import { closeSession, openSession } from './sign-in.ts';
-import { linkThrottle, resetThrottle, signInThrottle } from './throttle.ts';
+import { linkThrottle, passwordThrottle, resetThrottle, signInThrottle } from './throttle.ts';
 
 const secretParams = z.object({ secret: z.string().min(20).max(100) });
 
@@ -123,6 +123,7 @@ export const sessionRoutes = [
     access: { kind: 'account' },
     body: changePasswordSchema,
     answer: 'none',
+    before: passwordThrottle,
     async handle({ app, viewer, body, req }) {
       await changePassword(app, viewer.userId, body.current, body.next, req.sessionID);
       return undefined;

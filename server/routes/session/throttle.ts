@@ -52,6 +52,11 @@ export function resetThrottle(app: App): RequestHandler[] {
   return [limiter(app, 'reset-address', 20, addressOf, true), limiter(app, 'reset-account', 5, accountOf, true)];
 }
 
+/** At most 8 failed tries in 15 minutes of the present password, by someone at a browser that was left signed in. */
+export function passwordThrottle(app: App): RequestHandler[] {
+  return [limiter(app, 'password-account', 8, (req) => req.user?.id ?? '', false)];
+}
+
 /** At most 40 tries of welcome and reset links an address in 15 minutes. */
 export function linkThrottle(app: App): RequestHandler[] {
   return [limiter(app, 'link-address', 40, addressOf, false)];
