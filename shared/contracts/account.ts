@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { emailSchema, idSchema, instantSchema } from './common.ts';
+import { lineSchema } from './text.ts';
 
 export const passwordSchema = z
   .string()
@@ -26,7 +27,7 @@ export type Session = z.infer<typeof sessionSchema>;
 export const changePasswordSchema = z
   .object({ current: z.string().min(1, 'Type your present password.').max(200), next: passwordSchema })
   .strict();
-export const renameAccountSchema = z.object({ name: z.string().trim().min(1, 'Type your name.').max(120) }).strict();
+export const renameAccountSchema = z.object({ name: lineSchema(120).min(1, 'Type your name.') }).strict();
 
 /** A browser signed in to the account; `current` is the one asking. */
 export const deviceSchema = z.object({
@@ -43,7 +44,7 @@ export type Device = z.infer<typeof deviceSchema>;
 export const welcomeSchema = z.object({ email: z.string(), name: z.string(), purpose: z.enum(['welcome', 'reset']) });
 export type Welcome = z.infer<typeof welcomeSchema>;
 export const acceptWelcomeSchema = z
-  .object({ name: z.string().trim().min(1, 'Type your name.').max(120), password: passwordSchema })
+  .object({ name: lineSchema(120).min(1, 'Type your name.'), password: passwordSchema })
   .strict();
 export const forgotPasswordSchema = z.object({ email: emailSchema }).strict();
 
@@ -56,7 +57,7 @@ export type SiteAccount = z.infer<typeof siteAccountSchema>;
 export const createAccountSchema = z
   .object({
     email: emailSchema,
-    name: z.string().trim().min(1, 'Type a name.').max(120),
+    name: lineSchema(120).min(1, 'Type a name.'),
     siteAdmin: z.boolean().default(false),
   })
   .strict();

@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { MAX_CLASS_CODE, MIN_CLASS_CODE } from '../constants/class-codes.ts';
 import { colourSchema, idSchema } from './common.ts';
+import { lineSchema, textSchema } from './text.ts';
 
 export const landClassSchema = z.object({
   id: idSchema,
@@ -22,8 +23,8 @@ const codeSchema = z
   .int('A code is a whole number.')
   .min(MIN_CLASS_CODE, 'Codes run from 1; 0 is unclassified.')
   .max(MAX_CLASS_CODE, 'Codes run to 254; 255 is nodata.');
-const nameSchema = z.string().trim().min(1, 'Give the class a name.').max(80);
-const definitionSchema = z.string().trim().max(4_000);
+const nameSchema = lineSchema(80).min(1, 'Give the class a name.');
+const definitionSchema = textSchema(4_000);
 
 export const createLandClassSchema = z
   .object({

@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { PROJECT_ROLES } from '../constants/roles.ts';
 import { emailSchema, idSchema, instantSchema, personSchema } from './common.ts';
 import { arealGeometrySchema, boundsSchema, studyAreaSchema } from './geometry.ts';
+import { lineSchema, textSchema } from './text.ts';
 
 export const projectRoleSchema = z.enum(PROJECT_ROLES);
 
@@ -54,9 +55,9 @@ export type Project = z.infer<typeof projectSchema>;
 
 export const createProjectSchema = z
   .object({
-    name: z.string().trim().min(1, 'Give the project a name.').max(120),
-    client: z.string().trim().max(160).default(''),
-    description: z.string().trim().max(4_000).default(''),
+    name: lineSchema(120).min(1, 'Give the project a name.'),
+    client: lineSchema(160).default(''),
+    description: textSchema(4_000).default(''),
   })
   .strict();
 export type CreateProject = z.input<typeof createProjectSchema>;
@@ -64,9 +65,9 @@ export type CreateProject = z.input<typeof createProjectSchema>;
 export const updateProjectSchema = z
   .object({
     version: z.number().int(),
-    name: z.string().trim().min(1, 'Give the project a name.').max(120).optional(),
-    client: z.string().trim().max(160).optional(),
-    description: z.string().trim().max(4_000).optional(),
+    name: lineSchema(120).min(1, 'Give the project a name.').optional(),
+    client: lineSchema(160).optional(),
+    description: textSchema(4_000).optional(),
     targetOverallAccuracy: z.number().min(0).max(1).nullable().optional(),
     targetSamplesPerClass: z.number().int().min(1).max(100_000).nullable().optional(),
   })

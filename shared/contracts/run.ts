@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { idSchema, instantSchema, personSchema } from './common.ts';
 import { boundsSchema } from './geometry.ts';
 import { jobSchema } from './job.ts';
+import { lineSchema, textSchema } from './text.ts';
 
 const seedSchema = z.number().int('A seed is a whole number.').min(0).max(4_294_967_295);
 
@@ -68,8 +69,8 @@ export type RecipeInput = z.input<typeof recipeSchema>;
 
 export const startRunSchema = z
   .object({
-    name: z.string().trim().max(120).default(''),
-    note: z.string().trim().max(2_000).default(''),
+    name: lineSchema(120).default(''),
+    note: textSchema(2_000).default(''),
     recipe: recipeSchema,
   })
   .strict();

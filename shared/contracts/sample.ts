@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { idSchema, instantSchema, personSchema } from './common.ts';
 import { drawingSchema, polygonSchema } from './geometry.ts';
+import { textSchema } from './text.ts';
 
 export const confidenceSchema = z.enum(['low', 'medium', 'high']);
 export type Confidence = z.infer<typeof confidenceSchema>;
@@ -33,7 +34,7 @@ export const sampleListQuerySchema = z.object({
     .optional(),
 });
 
-const noteSchema = z.string().trim().max(2_000);
+const noteSchema = textSchema(2_000);
 export const createSampleSchema = z
   .object({
     /** Made by the client, so that sending again after a lost answer makes no second sample. */

@@ -3,6 +3,7 @@ import { BAND_QUANTITIES, BAND_ROLES } from '../constants/bands.ts';
 import { daySchema, idSchema, instantSchema, personSchema } from './common.ts';
 import { arealGeometrySchema, boundsSchema } from './geometry.ts';
 import { jobSchema } from './job.ts';
+import { lineSchema } from './text.ts';
 
 export const histogramSchema = z.object({
   /** Lower edge of the first bin and upper edge of the last, in stored values (DN). */
@@ -86,14 +87,14 @@ export const sceneListSchema = z.object({
 export const updateSceneSchema = z
   .object({
     version: z.number().int(),
-    name: z.string().trim().min(1, 'Give the scene a name.').max(160).optional(),
+    name: lineSchema(160).min(1, 'Give the scene a name.').optional(),
     acquiredOn: daySchema.nullable().optional(),
     bands: z
       .array(
         z
           .object({
             id: idSchema,
-            name: z.string().trim().min(1, 'Give the band a name.').max(80),
+            name: lineSchema(80).min(1, 'Give the band a name.'),
             role: z.enum(BAND_ROLES),
             centreWavelengthUm: z.number().positive('A wavelength is above 0 µm.').max(1000).nullable(),
             gsdMeters: z.number().positive('A ground sample distance is above 0 m.').max(100_000).nullable(),
