@@ -4,9 +4,13 @@ import type { Run } from '../entities/run.ts';
 
 type Cell = string | number | null;
 
-/** A line that spreadsheets and readers of CSV alike take as a remark. */
+/**
+ * A line that spreadsheets and readers of CSV alike take as a remark. Spreadsheets split it at commas all the same, so a name in it must
+ * not start a formula behind one.
+ */
 function remark(text: string): string {
-  return `# ${text.replace(/\s+/g, ' ').trim()}\n`;
+  const line = text.replace(/\s+/g, ' ').trim();
+  return `# ${line.replace(/([,;]\s*"?\s*)(?=[=+@-])/g, "$1'")}\n`;
 }
 
 function table(rows: Cell[][]): string {

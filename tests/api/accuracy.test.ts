@@ -4,6 +4,7 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { promisify } from 'node:util';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { Run as RunEntity } from '../../server/entities/run.ts';
 import { RunSample } from '../../server/entities/run-sample.ts';
 import { Sample } from '../../server/entities/sample.ts';
 import { MAP_CAUTIONS, PURPOSIVE_CAUTION } from '../../shared/constants/cautions.ts';
@@ -85,6 +86,13 @@ beforeAll(async () => {
 
 afterAll(() => test.close());
 
+/** Wilson 1927, score interval of a share of n trials. */
+function wilson(p: number, n: number): { low: number; high: number } {
+  const z2 = 1.959964 ** 2;
+  const half = Math.sqrt(z2 * ((p * (1 - p)) / n + z2 / (4 * n * n)));
+  return { low: (p + z2 / (2 * n) - half) / (1 + z2 / n), high: (p + z2 / (2 * n) + half) / (1 + z2 / n) };
+}
+
 describe('accuracy by pixel', () => {
   it('equals a recount of the downloaded map in the held-out polygons', async () => {
     const accuracy = await read('pixel');
@@ -115,27 +123,52 @@ describe('accuracy by pixel', () => {
     });
   });
 
-  it('takes its interval from the spread between polygons', async () => {
-    const { overall, perClass } = await read('pixel');
-    // Ratio R = Σy/Σx over k = 9 polygons; variance k/(k − 1) · Σ(y − Rx)² / (Σx)². t(0.975; 8) = 2.306004 (table of Student's t).
-    const hits = heldOut.map(({ reference, mapped }) => mapped.filter((index) => index === reference).length);
-    const sizes = heldOut.map(({ mapped }) => mapped.filter((index) => index >= 0).length);
-    const mean = sum(hits) / sum(sizes);
-    const squares = sum(hits.map((y, i) => (y - mean * sizes[i]!) ** 2));
-    const half = (2.306004 * Math.sqrt((9 / 8) * squares)) / sum(sizes);
-    expect(overall.low).toBeCloseTo(Math.max(0, mean - half), 6);
-    expect(overall.high).toBeCloseTo(Math.min(1, mean + half), 6);
-    expect(overall.method).toMatch(/polygons taken as clusters/);
-    for (const { users } of perClass) if (users.low !== null) expect(users.low).toBeLessThanOrEqual(users.value!);
+  it('takes the interval of user’s accuracy from the spread between polygons', async () => {
+    const { overall, perClass, matrix } = await read('pixel');
+    expect(overall.method).toMatch(/polygons taken as clusters.*bootstrap/);
+    // Ratio R = Σy/Σx over the k polygons with pixels mapped as the class; variance k/(k − 1) · Σ(y − Rx)² / (Σx)²; the
+    // half-width is t · S, t(0.975; k − 1) from a table of Student's t; never narrower than Wilson's of the pixels.
+    const tOf = [NaN, 12.7062, 4.302653, 3.182446, 2.776445, 2.570582, 2.446912, 2.364624, 2.306004];
+    let nChecked = 0;
+    perClass.forEach(({ users }, c) => {
+      const sizes = heldOut.map(({ mapped }) => mapped.filter((index) => index === c).length);
+      const hits = heldOut.map(({ reference }, i) => (reference === c ? sizes[i]! : 0));
+      const k = sizes.filter((size) => size > 0).length;
+      const ratio = matrix[c]![c]! / sum(sizes);
+      const squares = sum(hits.map((y, i) => (y - ratio * sizes[i]!) ** 2));
+      if (k < 2 || squares === 0) return;
+      const half = (tOf[k - 1]! * Math.sqrt((k / (k - 1)) * squares)) / sum(sizes);
+      const ofPixels = wilson(ratio, sum(sizes));
+      expect(users.low).toBeCloseTo(Math.min(ofPixels.low, Math.max(0, ratio - half)), 5);
+      expect(users.high).toBeCloseTo(Math.max(ofPixels.high, Math.min(1, ratio + half)), 5);
+      nChecked++;
+    });
+    expect(nChecked).toBeGreaterThan(0);
   });
 
-  it('gives kappa with its standard error and no interval that takes pixels as independent', async () => {
+  it('takes the interval of overall and producer’s accuracy from drawing polygons again, no narrower than pixels would give', async () => {
+    const { overall, perClass, total } = await read('pixel');
+    const ofPixels = wilson(overall.value!, total);
+    expect(overall.low).toBeLessThanOrEqual(ofPixels.low + 1e-9);
+    expect(overall.high).toBeGreaterThanOrEqual(ofPixels.high - 1e-9);
+    for (const { producers } of perClass) {
+      expect(producers.low).toBeLessThanOrEqual(producers.value!);
+      expect(producers.high).toBeGreaterThanOrEqual(producers.value!);
+      expect(producers.high! - producers.low!).toBeGreaterThan(0);
+    }
+    // The same polygons give the same interval, here and on the card of the run.
+    expect((await read('pixel')).overall).toEqual(overall);
+  });
+
+  it('gives kappa with a standard error and an interval that take polygons, not pixels, as drawn', async () => {
     const { kappa, matrix, total, quantityDisagreement, allocationDisagreement, overall } = await read('pixel');
     const po = sum(matrix.map((row, i) => row[i]!)) / total;
     const pe = sum(matrix.map((row, i) => sum(row) * sum(matrix.map((cells) => cells[i]!)))) / total ** 2;
     expect(kappa.value).toBeCloseTo((po - pe) / (1 - pe), 12);
-    expect(kappa.standardError).toBeGreaterThan(0);
-    expect(kappa).toMatchObject({ low: null, high: null });
+    // Cohen's simple standard error for independent pixels; the large-sample one is near it.
+    expect(kappa.standardError).toBeGreaterThan((0.9 * Math.sqrt((po * (1 - po)) / total)) / (1 - pe));
+    expect(kappa.low).toBeLessThan(kappa.value!);
+    expect(kappa.high).toBeGreaterThan(kappa.value!);
     expect(kappa.caution).toMatch(/not independent/);
     expect(overall.value! + quantityDisagreement! + allocationDisagreement!).toBeCloseTo(1, 12);
   });
@@ -210,8 +243,12 @@ describe('the samples behind a cell', () => {
 
 describe('the CSV', () => {
   it('holds the matrix, the figures and how they came about, and no formula', async () => {
+    await test.app.db.getRepository(RunEntity).update({ id: runId }, { name: 'Spring,=1+1, "=2+2"; @sum' });
     const res = await reviewer.get(`/api/v1/runs/${runId}/accuracy.csv?unit=pixel`).expect(200);
-    expect(res.headers['content-disposition']).toBe('attachment; filename=run-1-accuracy-by-pixel.csv');
+    await test.app.db.getRepository(RunEntity).update({ id: runId }, { name: '' });
+    expect(res.headers['content-disposition']).toBe(
+      'attachment; filename=run-1-spring-1-1-2-2-sum-accuracy-by-pixel.csv',
+    );
     const lines = res.text.replace('\uFEFF', '').split('\n');
     const { matrix, overall } = await read('pixel');
     const header = lines.findIndex((line) => line.startsWith('mapped'));
@@ -220,7 +257,7 @@ describe('the CSV', () => {
     expect(lines.find((line) => line.startsWith('overall accuracy'))).toContain(String(overall.value));
     expect(lines).toContain(`# ${PURPOSIVE_CAUTION}`);
     expect(lines.some((line) => line.startsWith('# How: Pixels of the held-out polygons'))).toBe(true);
-    for (const line of lines) expect(line).not.toMatch(/^[=+@]/);
+    for (const line of lines) expect(line).not.toMatch(/^[=+@]|[,;]\s*"?[=+@]/);
   });
 });
 
