@@ -91,7 +91,10 @@ async function readGdalInfo(path: string, timeoutMs: number, signal: AbortSignal
       signal,
     });
     // Older GDAL prints bare nan and inf, which are not JSON.
-    return JSON.parse(stdout.replace(/:\s*(-?)(nan|inf)\b/gi, ': "$1$2"')) as GdalInfo;
+    const json = stdout.replace(/"(?:[^"\\]|\\.)*"|-?\b(?:nan|inf)\b/gi, (part) =>
+      part.startsWith('"') ? part : `"${part}"`,
+    );
+    return JSON.parse(json) as GdalInfo;
   } catch (error) {
     if (isFaultOfFile(error)) {
       throw notARaster('a file that none of the allowed readers recognises');
@@ -211,6 +214,15 @@ function readTransform(info: GdalInfo): SourceInfo['transform'] {
     );
   }
   const [originX, pixelWidth, rowTurn, originY, colTurn, minusPixelHeight] = geoTransform;
+  // Numbers that are none come as text.
+  if (!geoTransform.every(Number.isFinite)) {
+    throw new SourceRefusal(
+      'no-transform',
+      'a transform with numbers that are not finite',
+      'a transform from pixels to map coordinates inside the file',
+      'Assign the right one with gdal_translate -a_ullr.',
+    );
+  }
   const isTurned = rowTurn !== 0 || colTurn !== 0;
   if (isTurned || !(pixelWidth > 0) || !(minusPixelHeight < 0)) {
     throw new SourceRefusal(

@@ -1,4 +1,4 @@
-import { mkdirSync, writeFileSync } from 'node:fs';
+import { mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { checkGdalInfo, defaultSourceLimits, inspectSource } from '../../server/raster/inspect-source.ts';
@@ -239,6 +239,24 @@ describe('inspectSource refuses', () => {
     expect((await refusalOf(inspectSource(make({}), { limits }))).code).toBe('too-many-pixels');
     const exactly = await inspectSource(make({}), { limits: { ...limits, maxPixels: 2400 } });
     expect(exactly.width * exactly.height).toBe(2400);
+  });
+
+  it('a grid whose numbers are none, and reads what says so in words', async () => {
+    // The first number of the tag that holds the pixel's size, 30 m.
+    const pixelSize = Buffer.alloc(16);
+    pixelSize.writeDoubleLE(30, 0);
+    pixelSize.writeDoubleLE(30, 8);
+    for (const number of [NaN, Infinity]) {
+      const path = make({});
+      const bytes = readFileSync(path);
+      const at = bytes.indexOf(pixelSize);
+      expect(at).toBeGreaterThan(0);
+      bytes.writeDoubleLE(number, at);
+      writeFileSync(path, bytes);
+      expect((await refusalOf(inspectSource(path))).code).toBe('no-transform');
+    }
+    const { bands } = await inspectSource(make({ args: ['-mo', 'NOTE=1, nan, inf', '-a_nodata', 'nan'] }));
+    expect(bands).toHaveLength(1);
   });
 
   it('a container without bands', () => {
