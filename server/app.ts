@@ -5,6 +5,7 @@ import helmet from 'helmet';
 import { join } from 'node:path';
 import { pinoHttp } from 'pino-http';
 import type { App } from './app-context.ts';
+import { hideSecrets } from './middleware/hide-secrets.ts';
 import { createPassport } from './middleware/passport.ts';
 import { missingRoute, problemHandler } from './middleware/problem.ts';
 import { sameOrigin } from './middleware/same-origin.ts';
@@ -20,6 +21,12 @@ function isCompressible(req: express.Request, res: express.Response): boolean {
   return !type.startsWith('text/event-stream') && !type.startsWith('image/') && compression.filter(req, res);
 }
 
+/** Answers are for the one who asks, and may have changed when they ask again; routes that know better say so. */
+const privateByDefault: express.RequestHandler = (_req, res, next) => {
+  res.setHeader('Cache-Control', 'private, no-cache');
+  next();
+};
+
 /** The HTTP application: the API under /api/v1, and the built client for every other address when `clientDir` is given. */
 export function createHttpApp(app: App, clientDir: string | null): Express {
   const { config } = app;
@@ -30,6 +37,9 @@ export function createHttpApp(app: App, clientDir: string | null): Express {
   http.use(
     pinoHttp({
       logger: app.log,
+      serializers: {
+        req: (req: { url: string }) => ({ ...req, url: hideSecrets(req.url) }),
+      },
       autoLogging: { ignore: (req) => (req.url ?? '').includes('/tiles/') },
       customLogLevel: (_req, res, error) => (error || res.statusCode >= 500 ? 'error' : 'debug'),
     }),
@@ -54,6 +64,7 @@ export function createHttpApp(app: App, clientDir: string | null): Express {
   const passport = createPassport(app);
   http.use(
     '/api/v1',
+    privateByDefault,
     sameOrigin(config.publicUrl),
     session({
       name: 'groundsel.sid',
@@ -68,6 +79,7 @@ export function createHttpApp(app: App, clientDir: string | null): Express {
     mountRoutes(app, routes),
     missingRoute,
   );
+  http.use('/api', missingRoute);
   if (clientDir) serveClient(http, clientDir);
   http.use(problemHandler(app.log));
   return http;
@@ -80,8 +92,7 @@ function serveClient(http: Express, clientDir: string): void {
     express.static(join(clientDir, 'assets'), { immutable: true, maxAge: '365d', fallthrough: false }),
   );
   http.use(express.static(clientDir, { index: false, maxAge: '1h' }));
-  http.get('/{*path}', (req, res, next) => {
-    if (req.path.startsWith('/api/')) return next();
+  http.get('/{*path}', (_req, res, next) => {
     // By its root, because a dot in the folder's own path (.build) would count as a hidden file.
     res.sendFile('index.html', { root: clientDir, headers: { 'Cache-Control': 'no-cache' } }, (error) => {
       if (error) next(error);

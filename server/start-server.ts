@@ -1,6 +1,6 @@
-import { createServer, type Server } from 'node:http';
+import { createServer, type RequestListener, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
-import { pino, type Logger } from 'pino';
+import { pino, type DestinationStream, type Logger, type LoggerOptions } from 'pino';
 import { createHttpApp } from './app.ts';
 import type { App } from './app-context.ts';
 import type { Config } from './config.ts';
@@ -33,11 +33,33 @@ function listen(server: Server, port: number, host: string): Promise<void> {
   });
 }
 
-export function createLogger(config: Pick<Config, 'logLevel'>): Logger {
-  return pino({
+/** Connections on which nothing moves for so long are closed; event streams say something oftener. */
+const IDLE_MS = 120_000;
+/** For the head of a request, which no slow line needs longer for. */
+const HEADERS_MS = 60_000;
+
+/** A server that lets an upload take its time, as long as something comes: Node would end any request after five minutes. */
+export function createHttpServer(handler: RequestListener): Server {
+  const server = createServer({ requestTimeout: 0, headersTimeout: HEADERS_MS }, handler);
+  server.setTimeout(IDLE_MS);
+  return server;
+}
+
+/** One JSON object a line, to standard output unless told otherwise. */
+export function createLogger(config: Pick<Config, 'logLevel'>, out?: DestinationStream): Logger {
+  const options: LoggerOptions = {
     level: config.logLevel,
-    redact: ['req.headers.cookie', 'req.headers.authorization', 'res.headers["set-cookie"]'],
-  });
+    redact: [
+      'req.headers.cookie',
+      'req.headers.authorization',
+      'res.headers["set-cookie"]',
+      // What a failed query was to store: sessions, digests of passwords, whole outlines.
+      'err.parameters',
+      'err.sql',
+      'err.driverError',
+    ],
+  };
+  return out ? pino(options, out) : pino(options);
 }
 
 /** Opens everything a server needs, runs pending migrations, and takes up background work; not yet listening. */
@@ -92,7 +114,7 @@ export async function startServer(
   log = createLogger(config),
 ): Promise<RunningServer> {
   const { app, close } = await openApp(config, log);
-  const server = createServer(createHttpApp(app, clientDir));
+  const server = createHttpServer(createHttpApp(app, clientDir));
   try {
     await listen(server, config.port, config.host);
   } catch (error) {

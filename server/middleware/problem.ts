@@ -2,7 +2,8 @@ import type { ErrorRequestHandler, RequestHandler } from 'express';
 import { MulterError } from 'multer';
 import type { Logger } from 'pino';
 import type { Problem } from '../../shared/contracts/problem.ts';
-import { AppError, InvalidInput, NotFound, TooLarge, type ErrorKind } from '../errors.ts';
+import { AppError, InvalidInput, NoRoom, NotFound, TooLarge, type ErrorKind } from '../errors.ts';
+import { hideSecrets } from './hide-secrets.ts';
 
 const STATUS: Record<ErrorKind, number> = {
   invalid: 400,
@@ -28,7 +29,21 @@ function translate(error: unknown): unknown {
   if (type === 'entity.parse.failed') return new InvalidInput('The request is not JSON.', { wanted: 'a JSON body' });
   if (type === 'entity.too.large') return new TooLarge('The request is too large.', { wanted: 'at most 8 MB of JSON' });
   if (error instanceof URIError) return new NotFound();
-  return error;
+  if ((error as { code?: string } | null)?.code === 'ENOSPC') {
+    return new NoRoom('The server’s disk is full.', {
+      advice: 'Delete scenes or runs that are no longer needed, or ask the site administrator for more room.',
+    });
+  }
+  return translateHttpError(error) ?? error;
+}
+
+/** Body parsers and the file server throw errors that carry a status; those of the 400s are the sender's. */
+function translateHttpError(error: unknown): AppError | null {
+  const { status, message } = (error ?? {}) as { status?: unknown; message?: unknown };
+  if (typeof status !== 'number' || status < 400 || status > 499) return null;
+  // What the file server says of a path names folders of this machine.
+  if (status === 404 || status === 403) return new NotFound('There is no such address.');
+  return new InvalidInput('The request cannot be read.', { found: String(message), wanted: 'a request in plain JSON' });
 }
 
 export const missingRoute: RequestHandler = () => {
@@ -40,7 +55,7 @@ export function problemHandler(log: Logger): ErrorRequestHandler {
   return (raw, req, res, next) => {
     const error = translate(raw);
     if (res.headersSent) {
-      log.error({ err: raw, url: req.url }, 'failed after the answer began');
+      log.error({ err: raw, url: hideSecrets(req.url) }, 'failed after the answer began');
       return next(raw);
     }
     const problem: Problem =
@@ -59,7 +74,8 @@ export function problemHandler(log: Logger): ErrorRequestHandler {
             code: 'internal',
             advice: 'Try again. If it comes back, tell the site administrator when it happened.',
           };
-    if (problem.status === 500) log.error({ err: raw, method: req.method, url: req.url }, 'request failed');
+    if (problem.status === 500)
+      log.error({ err: raw, method: req.method, url: hideSecrets(req.originalUrl) }, 'request failed');
     if (problem.retryAfterSeconds) res.setHeader('Retry-After', String(Math.ceil(problem.retryAfterSeconds)));
     res.status(problem.status).type('application/problem+json').send(JSON.stringify(problem));
   };

@@ -1,4 +1,4 @@
-import { Router, type Request, type Response } from 'express';
+import { Router, type Request, type RequestHandler, type Response } from 'express';
 import type { ZodType } from 'zod';
 import type { App } from '../app-context.ts';
 import { InvalidInput, NotAllowed, NotFound, NotSignedIn } from '../errors.ts';
@@ -62,8 +62,8 @@ async function authorise(
 }
 
 /** Runs middleware inside a handler, so that authority is decided before an upload's first byte is stored. */
-async function runBefore(app: App, route: Route, req: Request, res: Response): Promise<void> {
-  for (const handler of route.before?.(app) ?? []) {
+async function runBefore(before: readonly RequestHandler[], req: Request, res: Response): Promise<void> {
+  for (const handler of before) {
     await new Promise<void>((resolve, reject) => {
       void handler(req, res, (error?: unknown) => (error ? reject(error as Error) : resolve()));
     });
@@ -75,10 +75,11 @@ export function mountRoutes(app: App, routes: readonly Route[]): Router {
   const router = Router();
   const checksAnswers = app.config.nodeEnv !== 'production';
   for (const route of routes) {
+    const before = route.before?.(app) ?? [];
     router[route.method](route.path, async (req: Request, res: Response) => {
       const params = checkParams(route, req);
       const { viewer, target } = await authorise(app, route, params, viewerOf(req));
-      await runBefore(app, route, req, res);
+      await runBefore(before, req, res);
       const query = check(route.query, req.query, 'query');
       const body = check(route.body, req.body ?? {}, 'request');
       const answer = await route.handle({ app, params, query, body, viewer: viewer as Viewer, target, req, res });

@@ -40,7 +40,8 @@ export function describeIngestFailure(error: unknown): SceneFailure {
       advice: 'Check that the file opens elsewhere, then upload it again.',
     };
   }
-  if (error instanceof GdalProcessError && error.reason === 'failed') {
+  const isDiskFull = (error as { code?: unknown } | null)?.code === 'ENOSPC';
+  if (isDiskFull || (error instanceof GdalProcessError && error.reason === 'failed')) {
     return {
       code: 'no-resources',
       found: 'a file that takes more memory or disk to read than this server gives',

@@ -72,7 +72,7 @@ export function buildOpenApiDocument(routes: readonly Route[]): Record<string, u
     const body = requestBody(route);
     registry.registerPath({
       method: route.method,
-      path: route.path.replace(/:(\w+)/g, '{$1}'),
+      path: nameAddress(route),
       operationId: route.id,
       summary: route.summary,
       tags: [route.id.split('.')[0] ?? ''],
@@ -85,7 +85,7 @@ export function buildOpenApiDocument(routes: readonly Route[]): Record<string, u
       responses: { ...successAnswer(route), ...problemAnswers(route) },
     });
   }
-  return new OpenApiGeneratorV31(registry.definitions).generateDocument({
+  const document = new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
     info: {
       title: 'Groundsel',
@@ -93,5 +93,22 @@ export function buildOpenApiDocument(routes: readonly Route[]): Record<string, u
       description: 'Land-cover mapping for teams. Errors are problem documents (RFC 9457).',
     },
     servers: [{ url: '/api/v1' }],
-  }) as unknown as Record<string, unknown>;
+  });
+  for (const route of routes) markRequired(route, document);
+  return document as unknown as Record<string, unknown>;
+}
+
+/** A number read from an address takes any text at first, which the generator takes for leave to send none. */
+function markRequired(route: Route, document: ReturnType<OpenApiGeneratorV31['generateDocument']>): void {
+  const operation = document.paths?.[nameAddress(route)]?.[route.method];
+  const query = route.query ? (route.query as ZodObject).shape : {};
+  for (const parameter of operation?.parameters ?? []) {
+    if ('$ref' in parameter) continue;
+    const schema = query[parameter.name] as ZodType | undefined;
+    parameter.required = parameter.in === 'path' || schema?.safeParse(undefined).success === false;
+  }
+}
+
+function nameAddress({ path }: Route): string {
+  return path.replace(/:(\w+)/g, '{$1}');
 }

@@ -8,6 +8,7 @@ import type { Request, Response } from 'express';
 import multer, { type StorageEngine } from 'multer';
 import { z } from 'zod';
 import { daySchema } from '../../../shared/contracts/common.ts';
+import { cleanLine, lineSchema } from '../../../shared/contracts/text.ts';
 import type { App } from '../../app-context.ts';
 import { InvalidInput } from '../../errors.ts';
 import type { UploadedFile } from '../../services/create-scene.ts';
@@ -17,7 +18,7 @@ import { checkRoom } from '../../services/site-storage.ts';
 export const MAX_FILES = 64;
 
 const fieldsSchema = z.object({
-  name: z.string().trim().max(160).default(''),
+  name: lineSchema(160).default(''),
   acquiredOn: z.union([z.literal('').transform(() => null), daySchema]).default(null as never),
 });
 
@@ -78,7 +79,7 @@ export async function receiveUpload<T>(
       defParamCharset: 'utf8',
     }).array('files', MAX_FILES);
     await new Promise<void>((resolve, reject) => {
-      receive(req, res, (error?: unknown) => (error ? reject(error as Error) : resolve()));
+      receive(req, res, (error?: unknown) => (error ? reject(translateUpload(error)) : resolve()));
     });
     return await use(readUpload(req));
   } finally {
@@ -86,11 +87,22 @@ export async function receiveUpload<T>(
   }
 }
 
+/** What the parser says of a body that is no proper form comes without a code, unlike what the disk says. */
+function translateUpload(error: unknown): Error {
+  const { code, message } = error as { code?: string; message: string };
+  if (code !== undefined) return error as Error;
+  return new InvalidInput('The upload cannot be read.', {
+    found: message,
+    wanted: 'a whole multipart/form-data body',
+    advice: 'Send the files again.',
+  });
+}
+
 function readUpload(req: Request): ReceivedUpload {
   const fields = fieldsSchema.safeParse({ ...(req.body as Record<string, unknown>) });
   const received = req.files as (Express.Multer.File & { sha256: string })[];
   const files = received.map(({ originalname, path, size, sha256 }) => ({
-    name: originalname,
+    name: cleanLine(originalname),
     path,
     bytes: size,
     sha256,
