@@ -1,4 +1,3 @@
-import { KAPPA_CAUTION } from '../../shared/constants/cautions.ts';
 import type { Accuracy, AccuracyUnit, Estimate } from '../../shared/contracts/accuracy.ts';
 import {
   addToConfusionMatrix,
@@ -8,10 +7,16 @@ import {
 } from '../analysis/accuracy/confusion-matrix.ts';
 import { computeDisagreement } from '../analysis/accuracy/disagreement.ts';
 import { clusterRatioInterval, wilsonInterval } from '../analysis/accuracy/interval.ts';
-import { computeKappa } from '../analysis/accuracy/kappa.ts';
 import { countPolygonAgreement } from '../analysis/accuracy/polygon-agreement.ts';
-import { normalQuantile } from '../analysis/accuracy/quantiles.ts';
 import type { RunClass } from '../entities/run.ts';
+import {
+  measureKappa,
+  orNull,
+  reportResampledKappa,
+  resamplePolygons,
+  toEstimate,
+  widen,
+} from './accuracy-intervals.ts';
 
 /** A held-out polygon and what the map says of its pixels. */
 export interface HeldOutPolygon {
@@ -31,15 +36,10 @@ interface Counted {
 
 const METHOD: Record<AccuracyUnit, string> = {
   pixel:
-    'Pixels of the held-out polygons, the polygons taken as clusters: pixels of one polygon are alike and are not independent. 95 % interval from the spread between polygons (ratio estimate in cluster sampling, Cochran 1977, with Student’s t); where all polygons agree, the Wilson score interval with as many trials as polygons.',
+    'Pixels of the held-out polygons, the polygons taken as clusters: pixels of one polygon are alike and are not independent. 95 % interval of overall, producer’s accuracy and kappa by drawing whole polygons again (2,000 bootstrap replicates, polygons drawn within their class, Rao & Wu 1988; BCa interval, Efron 1987, widened by Student’s t; fixed seed). User’s accuracy from the spread between all polygons (ratio estimate in cluster sampling, Cochran 1977, with Student’s t), which is wider: its errors come from few polygons of other classes. Where all polygons agree, the Wilson score interval with as many trials as polygons. Never narrower than with pixels as independent: so small a spread between few polygons is chance.',
   polygon:
     'Each held-out polygon counts once, by the class most of its pixels are mapped as; a tie never counts in favour of the map. 95 % Wilson score interval (Wilson 1927).',
 };
-const PIXEL_KAPPA_NOTE =
-  ' The standard error is the large-sample one for independent units (Fleiss, Cohen & Everitt 1969). Pixels of one polygon are not independent, so here it is too small, and no interval is given.';
-const POLYGON_KAPPA_NOTE =
-  ' The standard error is the large-sample one for independent units (Fleiss, Cohen & Everitt 1969).';
-
 /** Counts pixels or polygons of the held-out samples by mapped and reference class. */
 export function countHeldOut(
   heldOut: readonly HeldOutPolygon[],
@@ -74,12 +74,18 @@ export function measureOverall(
   classes: readonly RunClass[],
   unit: AccuracyUnit,
 ): Estimate {
-  return estimateShare(countHeldOut(heldOut, classes, unit), unit, () => true, 'all');
+  const counted = countHeldOut(heldOut, classes, unit);
+  return unit === 'pixel'
+    ? widen(
+        toEstimate(resamplePolygons(counted.polygons, classes.length).overall),
+        summariseConfusionMatrix(counted.matrix),
+      )
+    : estimateShare(counted, unit, () => true, 'all');
 }
 
 /**
  * The share of units that are right, among those mapped as (`rows`) or of (`columns`) the chosen classes.
- * Never an interval that takes pixels of a polygon as independent.
+ * Never an interval from pixels of a polygon as independent, but for the least width of one.
  */
 function estimateShare(
   { polygons }: Counted,
@@ -104,11 +110,8 @@ function estimateShare(
   if (!interval) return { value, low: null, high: null };
   // Without any spread between polygons the interval would be a point, which a few polygons cannot prove.
   const { nClusters } = interval;
-  return { value, ...orNull(interval.degenerate ? wilsonInterval(value * nClusters, nClusters) : interval) };
-}
-
-function orNull(interval: { low: number; high: number } | null): { low: number | null; high: number | null } {
-  return { low: interval?.low ?? null, high: interval?.high ?? null };
+  if (interval.degenerate) return { value, ...orNull(wilsonInterval(value * nClusters, nClusters)) };
+  return widen({ value, low: interval.low, high: interval.high }, { correct: right, total });
 }
 
 type Figures = Pick<
@@ -135,13 +138,22 @@ export function measureAccuracy(
   const summary = summariseConfusionMatrix(matrix);
   const disagreement = computeDisagreement(matrix);
   const n = classes.length;
+  const resampled = unit === 'pixel' ? resamplePolygons(counted.polygons, n) : null;
+  const overall = resampled
+    ? widen(toEstimate(resampled.overall), summary)
+    : estimateShare(counted, unit, () => true, 'all');
+  const toProducers = (index: number, correct: number, total: number): Estimate => {
+    const figure = resampled?.perClass[index]?.producers;
+    if (!figure) return estimateShare(counted, unit, (c) => c === index, 'columns');
+    return widen(toEstimate(figure), { correct, total });
+  };
   return {
     matrix: classes.map((_, mapped) => Array.from(matrix.counts.subarray(mapped * n, (mapped + 1) * n))),
     unmapped,
     total: summary.total,
     polygonCount: heldOut.length,
-    overall: { ...estimateShare(counted, unit, () => true, 'all'), method: METHOD[unit] },
-    kappa: measureKappa(matrix, unit),
+    overall: { ...overall, method: METHOD[unit] },
+    kappa: resampled ? reportResampledKappa(resampled.kappa, matrix) : measureKappa(matrix),
     quantityDisagreement: disagreement?.quantity ?? null,
     allocationDisagreement: disagreement?.allocation ?? null,
     perClass: summary.perClass.map(({ mapped, reference, correct, f1 }, index) => {
@@ -153,28 +165,11 @@ export function measureAccuracy(
         correctCount: correct,
         heldOutPolygons,
         users: estimateShare(counted, unit, (c) => c === index, 'rows'),
-        producers: estimateShare(counted, unit, (c) => c === index, 'columns'),
+        producers: toProducers(index, correct, reference),
         f1,
         warning: warnOfFew(reference, heldOutPolygons, unit),
       };
     }),
-  };
-}
-
-function measureKappa(matrix: ConfusionMatrix, unit: AccuracyUnit): Accuracy['kappa'] {
-  const result = computeKappa(matrix);
-  const caution = KAPPA_CAUTION + (unit === 'pixel' ? PIXEL_KAPPA_NOTE : POLYGON_KAPPA_NOTE);
-  if (!result) return { value: null, standardError: null, low: null, high: null, caution };
-  const standardError = Math.sqrt(result.variance);
-  const half = normalQuantile(0.975) * standardError;
-  // A variance of zero (no disagreement at all) is what the formula gives, and no interval.
-  const hasInterval = unit === 'polygon' && standardError > 0;
-  return {
-    value: result.kappa,
-    standardError,
-    low: hasInterval ? Math.max(-1, result.kappa - half) : null,
-    high: hasInterval ? Math.min(1, result.kappa + half) : null,
-    caution,
   };
 }
 

@@ -36,8 +36,8 @@ export function measurePolygonCoverage(
     const sample = population.flatMap((polygons) => drawSome(polygons, polygonsPerClass, rng));
     const matrix = matrixOf(sample, nClasses);
     const summary = summariseConfusionMatrix(matrix);
-    const percentile = bootstrapPolygons(sample, nClasses, { seed: d, nReplicates });
-    const bca = bootstrapPolygons(sample, nClasses, { seed: d, nReplicates, interval: 'bca' });
+    const percentile = bootstrapPolygons(sample, nClasses, { seed: d, nReplicates, interval: 'percentile' });
+    const bca = bootstrapPolygons(sample, nClasses, { seed: d, nReplicates });
     const together = bootstrapPolygons(sample, nClasses, { seed: d, nReplicates, resampling: 'all-together' });
     const add = (figure: string, wanted: number, method: string, got: Interval | null): void =>
       tally.add(figure, method, wanted, got);
@@ -52,7 +52,7 @@ export function measurePolygonCoverage(
       if (linear) add(figure, wanted, 'linearised, Student’s t', linear);
       add(figure, wanted, 'bootstrap within class, percentile', toInterval(ends.percentile));
       add(figure, wanted, 'bootstrap within class, BCa', toInterval(ends.bca));
-      add(figure, wanted, 'bootstrap all together, percentile', toInterval(ends.together));
+      add(figure, wanted, 'bootstrap all together, BCa', toInterval(ends.together));
     };
     addAll(
       'overall',

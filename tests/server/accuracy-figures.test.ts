@@ -57,6 +57,35 @@ describe('accuracy figures', () => {
     expect(high).toBe(1);
   });
 
+  it('widen the interval when polygons differ, and give kappa one of its own', () => {
+    const like = Array.from({ length: 12 }, (_, i) => polygon(i % 2, i % 2 ? { 7: 80, 3: 20 } : { 3: 80, 7: 20 }));
+    const unlike = Array.from({ length: 12 }, (_, i) => {
+      const right = i % 4 < 2 ? 100 : 60;
+      return polygon(i % 2, i % 2 ? { 7: right, 3: 100 - right } : { 3: right, 7: 100 - right });
+    });
+    const widthOf = (polygons: HeldOutPolygon[]) => {
+      const { overall, kappa } = measureAccuracy(polygons, classes, 'pixel');
+      expect(overall.value).toBeCloseTo(0.8, 12);
+      expect(kappa.value).toBeCloseTo(0.6, 12);
+      return { overall: overall.high! - overall.low!, kappa: kappa.low === null ? null : kappa.high! - kappa.low };
+    };
+    // Polygons all alike: nothing is known of their spread but Wilson's for 12 of them, and of kappa nothing.
+    expect(widthOf(like)).toEqual({ overall: expect.closeTo(0.418, 2), kappa: null });
+    // Standard deviation .2 between 12 polygons: ± t·.2·√(12/11)/√12 with about 10 degrees, .13; kappa twice that.
+    const { overall, kappa } = widthOf(unlike);
+    expect(overall).toBeCloseTo(0.27, 1);
+    expect(kappa! / overall).toBeCloseTo(2, 0);
+    expect(measureOverall(unlike, classes, 'pixel')).toMatchObject({ value: expect.closeTo(0.8, 12) });
+  });
+
+  it('are no narrower than with pixels as independent, however alike a few polygons happen to be', () => {
+    const nearly = [90, 91, 90, 91].map((right, i) => polygon(i % 2, { 3: i % 2 ? 100 - right : right, 7: i % 2 ? right : 100 - right })); // prettier-ignore
+    const { low, high } = measureOverall(nearly, classes, 'pixel');
+    // Wilson 1927 for 362 of 400, by hand: .872334 to .930015.
+    expect(low).toBeLessThan(0.8724);
+    expect(high).toBeGreaterThan(0.9299);
+  });
+
   it('count a polygon once, and a tie against the map', () => {
     const { matrix, overall } = measureAccuracy(
       [polygon(0, { 3: 5, 7: 5 }), polygon(1, { 7: 9, 3: 1 })],

@@ -7,10 +7,11 @@ export interface SpacedDraw {
   nTooNear: number[];
   /** For each stratum: points still lacking when the candidates ran out; draw more of them and call again. */
   nLacking: number[];
+  /** What the distance does to the estimates, to be said with the design; `null` without one. */
+  effect: string | null;
 }
 
-/** What a least distance does to the estimates; to be said wherever one is set. */
-export const SPACING_EFFECT =
+const SPACING_EFFECT =
   'With a least distance the points are no longer a simple random sample of each stratum: where a class lies in small or crowded patches, pixels in the middle of things are drawn less often and lone ones more often. The estimates take all pixels of a stratum as equally likely, so they may be off by an amount the sample cannot show, most for rare classes. The share of candidates left out says how far it goes; without a least distance there is no such error.';
 
 /**
@@ -50,7 +51,8 @@ export function keepSpacing(
     else keep(point);
   }
   kept.sort((a, b) => a.stratum - b.stratum || a.order - b.order);
-  return { kept, nTooNear, nLacking: wanted.map((n, h) => Math.max(0, n - nKept[h])) };
+  const nLacking = wanted.map((n, h) => Math.max(0, n - nKept[h]));
+  return { kept, nTooNear, nLacking, effect: spacingPixels > 0 ? SPACING_EFFECT : null };
 }
 
 function keyOf({ stratum, order }: DrawnPoint): string {

@@ -99,7 +99,8 @@ describe('keeping a least distance', () => {
     Math.min(...points.flatMap((a, i) => points.slice(i + 1).map((b) => distance(a, b))));
 
   it('keeps points apart, across strata too, and counts what it leaves out', () => {
-    const { kept, nTooNear, nLacking } = keepSpacing(draw([200, 60], 3), [15, 6], 4);
+    const { kept, nTooNear, nLacking, effect } = keepSpacing(draw([200, 60], 3), [15, 6], 4);
+    expect(effect).toMatch(/no longer a simple random sample/);
     expect(kept).toHaveLength(21);
     expect(nearest(kept)).toBeGreaterThanOrEqual(4);
     expect(nearest(draw([15, 6], 3))).toBeLessThan(4);
@@ -109,7 +110,7 @@ describe('keeping a least distance', () => {
 
   it('without a distance is the draw itself', () => {
     const points = draw([15, 6], 3);
-    expect(keepSpacing(points, [15, 6], 0)).toEqual({ kept: points, nTooNear: [0, 0], nLacking: [0, 0] });
+    expect(keepSpacing(points, [15, 6], 0)).toEqual({ kept: points, nTooNear: [0, 0], nLacking: [0, 0], effect: null });
   });
 
   it('says how many are lacking when no more fit', () => {
