@@ -26,7 +26,7 @@ export const projectEventSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('job'), sceneId: idSchema.nullable(), runId: idSchema.nullable(), job: jobSchema }),
   z.object({
     type: z.literal('changed'),
-    what: z.enum(['project', 'scenes', 'classes', 'samples', 'runs', 'members']),
+    what: z.enum(['project', 'scenes', 'classes', 'samples', 'runs', 'members', 'designs']),
     id: idSchema.nullable(),
     by: idSchema.nullable(),
   }),

@@ -1,0 +1,421 @@
+import { z } from 'zod';
+import { colourSchema, idSchema, instantSchema, personSchema } from './common.ts';
+import { boundsSchema, polygonSchema, positionSchema } from './geometry.ts';
+import { confidenceSchema } from './sample.ts';
+import { lineSchema, textSchema } from './text.ts';
+
+const shareSchema = z.number().min(0).max(1);
+
+/** How n points are shared out among strata; `minimum` gives `atLeast` to each and the rest in proportion to area. */
+export const allocationSchema = z.discriminatedUnion('kind', [
+  z.object({ kind: z.literal('equal') }).strict(),
+  z.object({ kind: z.literal('proportional') }).strict(),
+  z.object({ kind: z.literal('neyman') }).strict(),
+  z
+    .object({ kind: z.literal('minimum'), atLeast: z.number().int().min(2, 'At least two points.').max(5_000) })
+    .strict(),
+]);
+export type Allocation = z.infer<typeof allocationSchema>;
+
+/** Wanted for overall accuracy: its standard error, the half-width of its 95 % interval, or simply so many points. */
+export const planTargetSchema = z.discriminatedUnion('kind', [
+  z
+    .object({ kind: z.literal('standard-error'), standardError: z.number().min(0.001, 'At least 0.001.').max(0.25) })
+    .strict(),
+  z.object({ kind: z.literal('half-width'), halfWidth: z.number().min(0.002, 'At least 0.002.').max(0.5) }).strict(),
+  z.object({ kind: z.literal('total'), total: z.number().int().min(2, 'At least two points.').max(20_000) }).strict(),
+]);
+export type PlanTarget = z.infer<typeof planTargetSchema>;
+
+const planFields = {
+  runId: idSchema,
+  strata: z.literal('map-classes').default('map-classes'),
+  /** Expected user's accuracy by class; a class left out is taken to have `expectedOtherwise`. */
+  expected: z
+    .array(z.object({ classId: idSchema, users: shareSchema }).strict())
+    .max(254)
+    .default([]),
+  expectedOtherwise: shareSchema.default(0.8),
+  target: planTargetSchema,
+  allocation: allocationSchema,
+};
+export const planDesignSchema = z.object(planFields).strict();
+export type PlanDesign = z.infer<typeof planDesignSchema>;
+
+export const plannedStratumSchema = z.object({
+  /** Null for what the map leaves unclassified. */
+  classId: idSchema.nullable(),
+  code: z.number().int(),
+  name: z.string(),
+  colour: z.string(),
+  pixels: z.number().int(),
+  areaHa: z.number(),
+  share: z.number(),
+  /** Null for what the map leaves unclassified, which is never right. */
+  expectedUsers: z.number().nullable(),
+  points: z.number().int(),
+  /** Expected 95 % interval of user's accuracy; null where points are too few or nothing is mapped. */
+  expectedLow: z.number().nullable(),
+  expectedHigh: z.number().nullable(),
+});
+export const designPlanSchema = z.object({
+  strata: z.array(plannedStratumSchema),
+  /** Points in all, after every stratum was given at least two. */
+  n: z.number().int(),
+  /** What the target alone asks for, with Neyman allocation. */
+  nOfTarget: z.number().int(),
+  standardError: z.number().nullable(),
+  halfWidth: z.number().nullable(),
+  /** Precision of overall accuracy against the number of points, under the chosen allocation. */
+  curve: z.array(
+    z.object({ n: z.number().int(), standardError: z.number().nullable(), halfWidth: z.number().nullable() }),
+  ),
+  how: z.array(z.string()),
+  /** What to think of before drawing. */
+  notes: z.array(z.string()),
+});
+export type DesignPlan = z.infer<typeof designPlanSchema>;
+
+const seedSchema = z.number().int('A seed is a whole number.').min(0).max(4_294_967_295);
+export const createDesignSchema = z
+  .object({
+    ...planFields,
+    name: lineSchema(120).default(''),
+    seed: seedSchema.optional(),
+    /** Least distance between points, metres; 0 is none. */
+    minSpacingMeters: z.number().min(0).max(100_000).default(0),
+    /** How many people answer each point. */
+    answersPerPoint: z.number().int().min(1).max(5).default(2),
+  })
+  .strict();
+export type CreateDesign = z.infer<typeof createDesignSchema>;
+
+/** Makes a draft larger, or from a closed design a larger draft that begins with its points and answers. */
+export const augmentDesignSchema = z
+  .object({ target: planTargetSchema, allocation: allocationSchema, name: lineSchema(120).optional() })
+  .strict();
+export type AugmentDesign = z.infer<typeof augmentDesignSchema>;
+
+export const closeDesignSchema = z
+  .object({
+    /** Close although some points have no settled class; they are left out of the estimates and said. */
+    leaveUnsettled: z.boolean().default(false),
+  })
+  .strict();
+
+/** draft: may be changed · open: frozen, being interpreted · adjudicating: no more answers, disagreements are decided · closed. */
+export const designStateSchema = z.enum(['draft', 'open', 'adjudicating', 'closed']);
+export type DesignState = z.infer<typeof designStateSchema>;
+
+export const referenceClassSchema = z.object({
+  id: idSchema,
+  code: z.number().int(),
+  name: z.string(),
+  colour: colourSchema,
+});
+
+export const designSchema = z.object({
+  id: idSchema,
+  projectId: idSchema,
+  runId: idSchema,
+  runNumber: z.number().int(),
+  number: z.number().int(),
+  name: z.string(),
+  state: designStateSchema,
+  n: z.number().int(),
+  answersPerPoint: z.number().int(),
+  minSpacingMeters: z.number(),
+  /** Said where there is a least distance. */
+  spacingEffect: z.string().nullable(),
+  /** Classes a point may be given: those of the run, then others of the scheme. */
+  classes: z.array(referenceClassSchema),
+  /** SHA-256 over strata, seed and points, from opening on. */
+  digest: z.string().nullable(),
+  /** Design this one carries on. */
+  augmentsId: idSchema.nullable(),
+  /** Withheld (null) from those who may interpret while the design is open or adjudicated. */
+  strata: z.array(plannedStratumSchema).nullable(),
+  seed: z.number().int().nullable(),
+  progress: z.object({
+    points: z.number().int(),
+    /** Points that have all their answers. */
+    complete: z.number().int(),
+    /** Points whose class stands: answers agree, or it was decided. */
+    settled: z.number().int(),
+    /** From adjudication on: points whose answers disagree and that nobody has decided; 0 before. */
+    disputed: z.number().int(),
+    /** The viewer's own. */
+    mine: z.object({ answered: z.number().int(), skipped: z.number().int(), left: z.number().int() }),
+  }),
+  createdBy: personSchema.nullable(),
+  createdAt: instantSchema,
+  openedAt: instantSchema.nullable(),
+  closedAt: instantSchema.nullable(),
+  abilities: z.object({
+    change: z.boolean(),
+    delete: z.boolean(),
+    augment: z.boolean(),
+    open: z.boolean(),
+    interpret: z.boolean(),
+    endInterpretation: z.boolean(),
+    adjudicate: z.boolean(),
+    close: z.boolean(),
+    readEstimates: z.boolean(),
+    exportPoints: z.boolean(),
+  }),
+});
+export type Design = z.infer<typeof designSchema>;
+export const designListSchema = z.object({
+  designs: z.array(designSchema),
+  abilities: z.object({ plan: z.boolean() }),
+  /** Whether class maps, their areas and their accuracy are kept from the viewer, who is interpreting. */
+  mapsWithheld: z.boolean(),
+});
+export type DesignList = z.infer<typeof designListSchema>;
+
+export const answerSchema = z.object({
+  classId: idSchema,
+  alternateClassId: idSchema.nullable(),
+  confidence: confidenceSchema,
+  note: z.string(),
+  source: z.enum(['image', 'import']),
+  answeredAt: instantSchema,
+});
+export type ReferenceAnswer = z.infer<typeof answerSchema>;
+
+export const putAnswerSchema = z
+  .object({
+    classId: idSchema,
+    alternateClassId: idSchema.nullable().default(null),
+    confidence: confidenceSchema.default('medium'),
+    note: textSchema(2_000).default(''),
+    /** Seconds the point was looked at, for the pace. */
+    seconds: z.number().min(0).max(86_400).optional(),
+  })
+  .strict()
+  .refine(({ classId, alternateClassId }) => classId !== alternateClassId, {
+    path: ['alternateClassId'],
+    error: 'The alternate is another class than the first choice.',
+  });
+export type PutAnswer = z.input<typeof putAnswerSchema>;
+
+/** A point as an interpreter sees it: nothing in it tells what the map shows or what others said. */
+export const blindPointSchema = z.object({
+  id: idSchema,
+  designId: idSchema,
+  number: z.number().int(),
+  /** Centre of the pixel, degrees. */
+  position: positionSchema,
+  /** Outline of the pixel, and of the 3 × 3 and 5 × 5 pixels around it. */
+  outline: polygonSchema,
+  outline3: polygonSchema,
+  outline5: polygonSchema,
+  bounds: boundsSchema,
+  /** Scene the map was made from; others may be looked at as well. */
+  sceneId: idSchema,
+  answer: answerSchema.nullable(),
+  skipped: z.boolean(),
+  /** Whether the point takes an answer of the viewer now; otherwise why not. */
+  takesAnswer: z.boolean(),
+  refusal: z.string().nullable(),
+  /** Neighbours in the viewer's own random order. */
+  place: z.number().int(),
+  previousNumber: z.number().int().nullable(),
+  nextNumber: z.number().int().nullable(),
+  progress: z.object({
+    answered: z.number().int(),
+    skipped: z.number().int(),
+    left: z.number().int(),
+    total: z.number().int(),
+    /** Median seconds a point of the viewer's; null before the first. */
+    secondsPerPoint: z.number().nullable(),
+  }),
+});
+export type BlindPoint = z.infer<typeof blindPointSchema>;
+/** `point` is null when the viewer has answered all that is theirs. */
+export const nextPointSchema = z.object({
+  point: blindPointSchema.nullable(),
+  progress: blindPointSchema.shape.progress,
+});
+export type NextPoint = z.infer<typeof nextPointSchema>;
+
+export const decisionSchema = z.object({
+  classId: idSchema,
+  alternateClassId: idSchema.nullable(),
+  note: z.string(),
+  decidedBy: personSchema.nullable(),
+  decidedAt: instantSchema,
+});
+export const putDecisionSchema = z
+  .object({
+    classId: idSchema,
+    alternateClassId: idSchema.nullable().default(null),
+    note: textSchema(2_000).default(''),
+  })
+  .strict()
+  .refine(({ classId, alternateClassId }) => classId !== alternateClassId, {
+    path: ['alternateClassId'],
+    error: 'The alternate is another class than the first choice.',
+  });
+export type PutDecision = z.input<typeof putDecisionSchema>;
+
+export const disagreementSchema = z.object({
+  point: z.object({
+    id: idSchema,
+    number: z.number().int(),
+    position: positionSchema,
+    outline: polygonSchema,
+    outline3: polygonSchema,
+    outline5: polygonSchema,
+    bounds: boundsSchema,
+    sceneId: idSchema,
+  }),
+  answers: z.array(answerSchema.extend({ by: personSchema.nullable() })),
+  decision: decisionSchema.nullable(),
+});
+export type Disagreement = z.infer<typeof disagreementSchema>;
+export const disagreementListSchema = z.object({
+  disagreements: z.array(disagreementSchema),
+  undecided: z.number().int(),
+});
+
+/** Where a figure comes from: the formula, who published it, and what went in. */
+export const howSchema = z.object({
+  formula: z.string(),
+  source: z.string(),
+  inputs: z.array(z.object({ name: z.string(), value: z.union([z.number(), z.string()]).nullable() })),
+});
+export type How = z.infer<typeof howSchema>;
+
+const intervalSchema = z.object({ low: z.number(), high: z.number() });
+/** A design-based figure. Null is "undefined", never 0. */
+export const designFigureSchema = z.object({
+  value: z.number().nullable(),
+  standardError: z.number().nullable(),
+  low: z.number().nullable(),
+  high: z.number().nullable(),
+  /** Points behind the denominator. */
+  n: z.number().int(),
+  /** Too few points for the large-sample interval; see `warning`. */
+  isFragile: z.boolean(),
+  /** Interval to quote where the figure is fragile; allows for what no point has shown. */
+  cautious: intervalSchema.nullable(),
+  how: howSchema,
+});
+export type DesignFigure = z.infer<typeof designFigureSchema>;
+
+export const estimatesClassSchema = z.object({
+  classId: idSchema,
+  code: z.number().int(),
+  name: z.string(),
+  colour: z.string(),
+  mappedPoints: z.number().int(),
+  referencePoints: z.number().int(),
+  users: designFigureSchema,
+  producers: designFigureSchema,
+  f1: designFigureSchema,
+  areaShare: designFigureSchema,
+  areaHa: designFigureSchema,
+  mappedAreaHa: z.number(),
+  /** Estimate less map. */
+  differenceHa: z.number().nullable(),
+  warning: z.string().nullable(),
+});
+export const estimatesSchema = z.object({
+  designId: idSchema,
+  runId: idSchema,
+  digest: z.string(),
+  /** How the design was drawn and what became of its points. */
+  design: z.object({
+    n: z.number().int(),
+    used: z.number().int(),
+    unsettled: z.number().int(),
+    decided: z.number().int(),
+    seed: z.number().int(),
+    minSpacingMeters: z.number(),
+    totalAreaHa: z.number(),
+    strata: z.array(
+      z.object({
+        code: z.number().int(),
+        name: z.string(),
+        colour: z.string(),
+        pixels: z.number().int(),
+        areaHa: z.number(),
+        weight: z.number(),
+        drawn: z.number().int(),
+        used: z.number().int(),
+      }),
+    ),
+  }),
+  /** Names the rows of both matrices: the classes, and what the map left unclassified where there is any (classId null). */
+  rows: z.array(
+    z.object({ classId: idSchema.nullable(), code: z.number().int(), name: z.string(), colour: z.string() }),
+  ),
+  /** Names the columns. */
+  columns: z.array(referenceClassSchema),
+  /** counts[mapped][reference]: rows are the mapped class, columns the reference class. */
+  counts: z.array(z.array(z.number().int())),
+  /** Estimated share of the area in each cell; null when a stratum has no usable point. */
+  proportions: z.array(z.array(z.number())).nullable(),
+  overall: designFigureSchema,
+  kappa: designFigureSchema.extend({ caution: z.string() }),
+  quantityDisagreement: designFigureSchema,
+  allocationDisagreement: designFigureSchema,
+  perClass: z.array(estimatesClassSchema),
+  /** The map counted right also where it shows the interpreter's second choice: lenient, quoted beside and never instead. */
+  eitherLabel: z.object({
+    overall: designFigureSchema,
+    perClass: z.array(z.object({ classId: idSchema, users: designFigureSchema, producers: designFigureSchema })),
+  }),
+  /** The project's target, against the interval of overall accuracy. */
+  target: z.object({ overall: z.number(), verdict: z.enum(['met', 'missed', 'uncertain']) }).nullable(),
+  /** Why there are no estimates, where there are none. */
+  problem: z.string().nullable(),
+  cautions: z.array(z.string()),
+});
+export type Estimates = z.infer<typeof estimatesSchema>;
+
+export const agreementFigureSchema = z.object({
+  value: z.number().nullable(),
+  standardError: z.number().nullable(),
+  low: z.number().nullable(),
+  high: z.number().nullable(),
+  n: z.number().int(),
+  how: howSchema,
+});
+export const agreementSchema = z.object({
+  designId: idSchema,
+  interpreters: z.array(z.object({ person: personSchema.nullable(), answered: z.number().int() })),
+  /** Points with at least two answers. */
+  nPoints: z.number().int(),
+  raw: agreementFigureSchema,
+  /** Each pair of interpreters who share points; indices into `interpreters`. */
+  cohen: z.array(z.object({ first: z.number().int(), second: z.number().int(), figure: agreementFigureSchema })),
+  fleiss: agreementFigureSchema,
+  krippendorff: agreementFigureSchema,
+  /** answers[first][second] of the two interpreters with most points in common, by class in the design's order. */
+  matrix: z.array(z.array(z.number().int())).nullable(),
+  cautions: z.array(z.string()),
+});
+export type Agreement = z.infer<typeof agreementSchema>;
+
+/** CSV with a heading: number or lon,lat; class_code or class; optional alternate_code or alternate, confidence, note. */
+export const importAnswersSchema = z
+  .object({ csv: z.string().min(1, 'The file is empty.').max(6_000_000), dryRun: z.boolean().default(false) })
+  .strict();
+export const importReportSchema = z.object({
+  dryRun: z.boolean(),
+  taken: z.number().int(),
+  replaced: z.number().int(),
+  refused: z.number().int(),
+  rows: z.array(
+    z.object({
+      /** Line of the file, the heading being 1. */
+      line: z.number().int(),
+      number: z.number().int().nullable(),
+      outcome: z.enum(['taken', 'replaced', 'refused']),
+      reason: z.string().nullable(),
+    }),
+  ),
+});
+export type ImportReport = z.infer<typeof importReportSchema>;
