@@ -1,5 +1,5 @@
 import 'reflect-metadata';
-import { DataSource } from 'typeorm';
+import type { DataSource } from 'typeorm';
 import type { Config } from './config.ts';
 import { AccountToken } from './entities/account-token.ts';
 import { Activity } from './entities/activity.ts';
@@ -10,6 +10,9 @@ import { LandClass } from './entities/land-class.ts';
 import { Membership } from './entities/membership.ts';
 import { Project } from './entities/project.ts';
 import { RateCounter } from './entities/rate-counter.ts';
+import { ReferenceAnswer } from './entities/reference-answer.ts';
+import { ReferenceDesign } from './entities/reference-design.ts';
+import { ReferencePoint } from './entities/reference-point.ts';
 import { RunSample } from './entities/run-sample.ts';
 import { Run } from './entities/run.ts';
 import { SampleVersion } from './entities/sample-version.ts';
@@ -19,6 +22,7 @@ import { Session } from './entities/session.ts';
 import { SiteSetting } from './entities/site-setting.ts';
 import { User } from './entities/user.ts';
 import { migrations } from './migrations/index.ts';
+import { RetryingDataSource } from './retrying-data-source.ts';
 
 export const entities = [
   AccountToken,
@@ -30,6 +34,9 @@ export const entities = [
   Membership,
   Project,
   RateCounter,
+  ReferenceAnswer,
+  ReferenceDesign,
+  ReferencePoint,
   Run,
   RunSample,
   Sample,
@@ -42,7 +49,7 @@ export const entities = [
 
 /** A MariaDB connection pool with our entities; the schema comes from migrations only. Call `initialize()`. */
 export function createDataSource(db: Config['db']): DataSource {
-  return new DataSource({
+  return new RetryingDataSource({
     type: 'mariadb',
     host: db.host,
     port: db.port,

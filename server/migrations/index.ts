@@ -2,6 +2,7 @@ import { Init1796099110473 } from './1796099110473-init.ts';
 import { SiteSettings1796100000000 } from './1796100000000-site-settings.ts';
 import { SceneGuessedRoles1796101200000 } from './1796101200000-scene-guessed-roles.ts';
 import { RunSnapshot1796101500000 } from './1796101500000-run-snapshot.ts';
+import { ReferenceDesigns1796104000000 } from './1796104000000-reference-designs.ts';
 
 /** In the order they run; a new one goes to the end. */
 export const migrations = [
@@ -9,4 +10,5 @@ export const migrations = [
   SiteSettings1796100000000,
   SceneGuessedRoles1796101200000,
   RunSnapshot1796101500000,
+  ReferenceDesigns1796104000000,
 ];
