@@ -31,6 +31,11 @@ export const POLICY = {
   'run.start': { allow: ['lead', 'modeller'], see: TEAM },
   'run.stop': { allow: ['lead', 'modeller'], see: TEAM },
   'accuracy.read': { allow: ['lead', 'modeller', 'reviewer'], see: TEAM },
+  'design.read': { allow: ['lead', 'modeller', 'reviewer'], see: TEAM },
+  'design.plan': { allow: ['lead', 'reviewer'], see: TEAM },
+  'design.interpret': { allow: ['reviewer'], see: TEAM },
+  'design.adjudicate': { allow: ['reviewer'], see: TEAM },
+  'design.estimates': { allow: ['lead', 'modeller', 'reviewer'], see: TEAM },
 } as const satisfies Record<string, Rule>;
 
 export type Action = keyof typeof POLICY;

@@ -36,10 +36,10 @@ export function listClassAreas(run: Run): ClassArea[] | null {
   return areas;
 }
 
-/** Accuracy is shown only to those who may read it. */
-export function presentRun(run: Run, viewer: Viewer): RunContract {
+/** Accuracy is shown only to those who may read it; neither it nor areas to those from whom maps are withheld. */
+export function presentRun(run: Run, viewer: Viewer, isMapWithheld = false): RunContract {
   const { result, job } = run;
-  const shown = can('accuracy.read', viewer.roles) ? result : null;
+  const shown = can('accuracy.read', viewer.roles) && !isMapWithheld ? result : null;
   const mayStop = can('run.stop', viewer.roles, run.startedById === viewer.userId);
   return {
     id: run.id,
@@ -58,12 +58,12 @@ export function presentRun(run: Run, viewer: Viewer): RunContract {
     heldOutPolygons: result?.heldOutPolygons ?? null,
     classMapSha256: result?.classMapSha256 ?? null,
     inputSha256: run.inputSha256,
-    areas: listClassAreas(run),
+    areas: isMapWithheld ? null : listClassAreas(run),
     overallAccuracy: shown?.overallAccuracy ?? null,
     overallLow: shown?.overallLow ?? null,
     overallHigh: shown?.overallHigh ?? null,
     bounds: run.scene.bounds,
-    notes: [...run.warnings, ...(result?.notes ?? [])],
+    notes: [...run.warnings, ...(isMapWithheld ? [] : (result?.notes ?? []))],
     abilities: { cancel: mayStop && isUnderWay(run), delete: mayStop && !isUnderWay(run) },
   };
 }

@@ -8,6 +8,7 @@ import { Sample } from '../entities/sample.ts';
 import { Scene } from '../entities/scene.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
+import { areMapsWithheld } from './design-blindness.ts';
 
 /** Figures, and what waits for the viewer. */
 export async function buildOverview(app: App, project: Project, viewer: Viewer): Promise<Omit<Overview, 'activity'>> {
@@ -20,7 +21,7 @@ export async function buildOverview(app: App, project: Project, viewer: Viewer):
     .find({ where: { projectId: project.id }, relations: { job: true }, order: { number: 'DESC' } });
   const finished = runs.filter((run) => run.job.state === 'finished' && run.result);
   const best = finished.toSorted((a, b) => (b.result?.overallAccuracy ?? -1) - (a.result?.overallAccuracy ?? -1))[0];
-  const readsAccuracy = can('accuracy.read', viewer.roles);
+  const readsAccuracy = can('accuracy.read', viewer.roles) && !(await areMapsWithheld(app, project.id, viewer));
   return {
     waiting: listWaiting(project, viewer, scenes, samplesPerClass, runs),
     figures: {

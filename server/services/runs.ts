@@ -3,6 +3,7 @@ import type { Recipe } from '../../shared/contracts/run.ts';
 import type { App } from '../app-context.ts';
 import { Job } from '../entities/job.ts';
 import { Project } from '../entities/project.ts';
+import { ReferenceDesign } from '../entities/reference-design.ts';
 import { RunSample } from '../entities/run-sample.ts';
 import { Run } from '../entities/run.ts';
 import { Scene } from '../entities/scene.ts';
@@ -132,6 +133,13 @@ export async function deleteRun(app: App, run: Run, byId: string): Promise<void>
         'The run is still under way.',
         { found: `it is ${job.state}`, advice: 'Cancel it first.' },
         'run-under-way',
+      );
+    }
+    if (await manager.existsBy(ReferenceDesign, { runId: run.id })) {
+      throw new Conflict(
+        'The run cannot be deleted: reference points were drawn from its class map.',
+        { found: 'a reference design rests on it', advice: 'Delete the design first, if it is still a draft.' },
+        'in-use',
       );
     }
     await manager.delete(Run, { id: run.id });

@@ -16,6 +16,8 @@ const TOUCHES: Record<Extract<ProjectEvent, { type: 'changed' }>['what'], readon
   samples: ['samples', 'classes', 'project', 'overview'],
   runs: ['runs', 'accuracy', 'project', 'overview'],
   members: ['members', 'project', 'overview'],
+  // While a design is open, maps and their accuracy are withheld from its interpreters.
+  designs: ['designs', 'runs', 'accuracy', 'overview'],
 };
 
 /**

@@ -9,6 +9,7 @@ import { writeAccuracyCsv } from '../../services/accuracy-csv.ts';
 import { findCellSamples, readAccuracy } from '../../services/accuracy.ts';
 import { nameDownload } from '../../services/class-map-package.ts';
 import { findProject } from '../../services/projects.ts';
+import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
 import { findRunTarget, runParams } from '../runs/find-run.ts';
 
@@ -60,4 +61,4 @@ export const accuracyRoutes = [
     answer: cellSamplesSchema,
     handle: ({ app, target, query: { unit, ...cell } }) => findCellSamples(app, target.run, unit, cell),
   }),
-];
+].map(hideWhileInterpreting);

@@ -6,9 +6,11 @@ import {
   startRunSchema,
 } from '../../../shared/contracts/run.ts';
 import { presentRun } from '../../presenters/present-run.ts';
+import { areMapsWithheld } from '../../services/design-blindness.ts';
 import { checkRecipe } from '../../services/recipe-check.ts';
 import { cancelRun, deleteRun, listRuns, startRun } from '../../services/runs.ts';
 import { findProjectTarget, projectParams } from '../find-project.ts';
+import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
 import { classMapRoutes } from './class-map-routes.ts';
 import { findRunTarget, runParams } from './find-run.ts';
@@ -24,7 +26,8 @@ export const runRoutes = [
     answer: runListSchema,
     async handle({ app, viewer, params }) {
       const runs = await listRuns(app, params.projectId);
-      return { runs: runs.map((run) => presentRun(run, viewer)) };
+      const isWithheld = await areMapsWithheld(app, params.projectId, viewer);
+      return { runs: runs.map((run) => presentRun(run, viewer, isWithheld)) };
     },
   }),
   route({
@@ -63,7 +66,8 @@ export const runRoutes = [
     access: { kind: 'project', action: 'run.read', find: findRunTarget },
     params: runParams,
     answer: runSchema,
-    handle: async ({ viewer, target }) => presentRun(target.run, viewer),
+    handle: async ({ app, viewer, target }) =>
+      presentRun(target.run, viewer, await areMapsWithheld(app, target.projectId, viewer)),
   }),
   route({
     id: 'runs.delete',
@@ -87,8 +91,9 @@ export const runRoutes = [
     params: runParams,
     answer: runSchema,
     async handle({ app, viewer, target }) {
-      return presentRun(await cancelRun(app, target.run, viewer.userId), viewer);
+      const isWithheld = await areMapsWithheld(app, target.projectId, viewer);
+      return presentRun(await cancelRun(app, target.run, viewer.userId), viewer, isWithheld);
     },
   }),
-  ...classMapRoutes,
+  ...classMapRoutes.map(hideWhileInterpreting),
 ];

@@ -3,7 +3,8 @@ import { type Project, projectSchema } from '../../../../shared/contracts/projec
 import { fetchJson } from '../fetch-json.ts';
 
 /** What a query of a project is about; the event stream refetches by it. */
-export type ProjectTopic = 'project' | 'overview' | 'scenes' | 'classes' | 'samples' | 'runs' | 'accuracy' | 'members';
+export type ProjectTopic =
+  'project' | 'overview' | 'scenes' | 'classes' | 'samples' | 'runs' | 'accuracy' | 'members' | 'designs';
 
 /** The first parts of the key of every query about a project: `['project', projectId, topic, …]`. */
 export function projectKey(projectId: string, topic: ProjectTopic, ...rest: readonly unknown[]): readonly unknown[] {

@@ -1,0 +1,86 @@
+import { createPointFinder, type DrawnPoint, type DrawStratum } from '../analysis/sampling/draw-points.ts';
+import { keepSpacing } from '../analysis/sampling/keep-spacing.ts';
+import type { App } from '../app-context.ts';
+import type { DesignStratum } from '../entities/reference-design.ts';
+import type { Run } from '../entities/run.ts';
+import { InvalidInput } from '../errors.ts';
+import { requireResult } from './accuracy.ts';
+
+const STRIP_ROWS = 256;
+const M2_PER_HECTARE = 10_000;
+
+export interface DesignDraw {
+  points: DrawnPoint[];
+  /** Candidates left out for lying too near to another point, by stratum. */
+  leftOut: number[];
+}
+
+/** Streams of random numbers hang on the code, so that a stratum's draw does not change with the others. */
+function toDrawStrata(strata: readonly DesignStratum[]): DrawStratum[] {
+  return strata.map(({ code }) => ({ code, key: `code ${code}` }));
+}
+
+/**
+ * Draws each stratum's points at random without replacement from the class map, reading it in strips. `existing` points
+ * are kept, and a larger draw with the same seed begins with the smaller one's.
+ * @throws InvalidInput "spacing-too-large" when a stratum runs out of pixels far enough apart
+ */
+export async function drawDesign(
+  app: App,
+  run: Run,
+  strata: readonly DesignStratum[],
+  { seed, minSpacingMeters, existing = [] }: { seed: number; minSpacingMeters: number; existing?: DrawnPoint[] },
+): Promise<DesignDraw> {
+  const sizes = strata.map(({ pixels }) => pixels);
+  const wanted = strata.map(({ points }) => points);
+  const spacing = minSpacingMeters / Math.sqrt(meanPixelAreaM2(strata));
+  // Without a distance every candidate is kept, so that as many are drawn as are wanted.
+  let candidates = wanted.map((n, h) => (spacing > 0 ? Math.min(sizes[h] ?? 0, n * 2 + 20) : n));
+  for (;;) {
+    const drawn = await findPoints(app, run, strata, candidates, seed);
+    const { kept, nTooNear, nLacking } = keepSpacing(drawn, wanted, spacing, existing);
+    if (nLacking.every((n) => n === 0)) return { points: kept, leftOut: nTooNear };
+    const empty = strata.filter((_, h) => (nLacking[h] ?? 0) > 0 && (candidates[h] ?? 0) >= (sizes[h] ?? 0));
+    if (empty.length > 0) {
+      throw new InvalidInput(
+        'There is no room for so many points at this distance.',
+        {
+          found: `no more pixels at least ${minSpacingMeters} m from the others in ${empty.map(({ name }) => name).join(', ')}`,
+          advice: 'Ask for a smaller distance, or for fewer points.',
+          errors: [{ path: 'minSpacingMeters', message: 'There is no room for so many points at this distance.' }],
+        },
+        'spacing-too-large',
+      );
+    }
+    candidates = candidates.map((n, h) => Math.min(sizes[h] ?? 0, (nLacking[h] ?? 0) > 0 ? n * 4 : n));
+  }
+}
+
+function meanPixelAreaM2(strata: readonly DesignStratum[]): number {
+  const areaHa = strata.reduce((sum, stratum) => sum + stratum.areaHa, 0);
+  return (areaHa * M2_PER_HECTARE) / strata.reduce((sum, { pixels }) => sum + pixels, 0);
+}
+
+async function findPoints(
+  app: App,
+  run: Run,
+  strata: readonly DesignStratum[],
+  wanted: readonly number[],
+  seed: number,
+): Promise<DrawnPoint[]> {
+  const band = await app.bands.open(await app.files.localPath(requireResult(run).mapKey));
+  const { width, height } = band.grid;
+  const finder = createPointFinder(
+    toDrawStrata(strata),
+    strata.map(({ pixels }) => pixels),
+    wanted,
+    seed,
+  );
+  for (let firstRow = 0; firstRow < height; firstRow += STRIP_ROWS) {
+    const rows = Math.min(STRIP_ROWS, height - firstRow);
+    // The whole map goes by once; its blocks would push others out of the cache.
+    const codes = await band.readWindow(0, 0, firstRow, width, rows, { keep: false });
+    finder.addStrip({ firstRow, width, codes });
+  }
+  return finder.points();
+}
