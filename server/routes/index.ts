@@ -1,6 +1,7 @@
 import { accountRoutes } from './accounts/routes.ts';
 import { accuracyRoutes } from './accuracy/routes.ts';
 import { classRoutes } from './classes/routes.ts';
+import { designRoutes } from './designs/routes.ts';
 import { eventRoutes } from './events/routes.ts';
 import { memberRoutes } from './members/routes.ts';
 import { createOpenApiRoutes } from './openapi/routes.ts';
@@ -22,6 +23,7 @@ export const routes: readonly Route[] = [
   ...sampleRoutes,
   ...runRoutes,
   ...accuracyRoutes,
+  ...designRoutes,
   ...eventRoutes,
   ...createOpenApiRoutes(() => routes),
 ];

@@ -2,11 +2,14 @@ import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { Job } from '../../server/entities/job.ts';
 import { Membership } from '../../server/entities/membership.ts';
+import { ReferenceDesign } from '../../server/entities/reference-design.ts';
+import { ReferencePoint } from '../../server/entities/reference-point.ts';
 import { Run } from '../../server/entities/run.ts';
 import { Sample } from '../../server/entities/sample.ts';
 import type { User } from '../../server/entities/user.ts';
 import { routes } from '../../server/routes/index.ts';
 import type { Route } from '../../server/routes/route.ts';
+import { createDesign } from '../../server/services/designs.ts';
 import { findProject } from '../../server/services/projects.ts';
 import { startRun } from '../../server/services/runs.ts';
 import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
@@ -60,6 +63,9 @@ const LEAD_MODELLER = row(401, 404, { ...forTeam(403), lead: 'in', modeller: 'in
 const DRAWS = row(401, 404, { ...forTeam(403), lead: 'in', labeller: 'in', otherLabeller: 'in' });
 const MAKER_OR_LEAD = row(401, 404, { ...forTeam(403), lead: 'in', labeller: 'in' });
 const ACCURACY = row(401, 404, { ...forTeam('in'), labeller: 403, otherLabeller: 403 });
+
+const LEAD_REVIEWER = row(401, 404, { ...forTeam(403), lead: 'in', reviewer: 'in' });
+const REVIEWER = row(401, 404, { ...forTeam(403), reviewer: 'in' });
 
 /** A row for every route. A route that is added without one fails the test below. */
 const TABLE: Record<string, Row> = {
@@ -123,6 +129,26 @@ const TABLE: Record<string, Row> = {
   'accuracy.read': ACCURACY,
   'accuracy.csv': ACCURACY,
   'accuracy.cell': ACCURACY,
+  'designs.plan': LEAD_REVIEWER,
+  'designs.create': LEAD_REVIEWER,
+  'designs.augment': LEAD_REVIEWER,
+  'designs.list': ACCURACY,
+  'designs.read': ACCURACY,
+  'designs.delete': LEAD_REVIEWER,
+  'designs.open': LEAD_REVIEWER,
+  'designs.adjudicate': LEAD_REVIEWER,
+  'designs.close': LEAD_REVIEWER,
+  'designs.next': REVIEWER,
+  'designs.point': REVIEWER,
+  'designs.import': REVIEWER,
+  'designs.disagreements': REVIEWER,
+  'reference-points.answer': REVIEWER,
+  'reference-points.skip': REVIEWER,
+  'reference-points.decide': REVIEWER,
+  'designs.estimates': ACCURACY,
+  'designs.estimates-csv': ACCURACY,
+  'designs.agreement': ACCURACY,
+  'designs.points-csv': ACCURACY,
   'events.stream': TEAM,
   'openapi.read': PUBLIC,
 };
@@ -160,11 +186,20 @@ beforeAll(async () => {
   const run = await startRun(test.app, project, team.modeller.id, { name: '', note: '', recipe: ground.recipe });
   runId = run.id;
   expect((await waitForRun(await test.signedIn(team.lead), run.id)).job.state).toBe('finished');
+  // Closed, so that no map is withheld from the reviewer.
+  const design = await createDesign(test.app, project.id, team.lead.id, {
+    ...{ runId, strata: 'map-classes', expected: [], expectedOtherwise: 0.8, name: '', minSpacingMeters: 0 },
+    ...{ target: { kind: 'total', total: 6 }, allocation: { kind: 'equal' }, answersPerPoint: 2 },
+  });
+  await test.app.db
+    .getRepository(ReferenceDesign)
+    .update({ id: design.id }, { state: 'closed', digest: '0'.repeat(64), closedAt: new Date() });
+  const point = await test.app.db.getRepository(ReferencePoint).findOneByOrFail({ designId: design.id, number: 1 });
   const member = await test.app.db.getRepository(Membership).findOneByOrFail({ userId: team.reviewer.id });
   params = {
     ...{ projectId: project.id, sceneId: ground.scene.id, classId: ground.classes[0]!.id, sampleId: sample.id, runId },
     ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
-    ...{ z: '4', x: '7', y: '4' },
+    ...{ z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
   };
   for (const actor of ACTORS) cookies.set(actor, await signIn(actor));
 }, 120_000);
@@ -252,6 +287,8 @@ describe('authority', () => {
       `/samples/${params['sampleId']}`,
       `/runs/${runId}`,
       `/runs/${runId}/accuracy`,
+      `/designs/${params['designId']}`,
+      `/designs/${params['designId']}/estimates`,
     ]) {
       const hidden = await stranger.get(`/api/v1${path}`).expect(404);
       const never = await stranger.get(`/api/v1${path.replace(/[0-9a-f-]{36}/, randomUUID())}`).expect(404);

@@ -11,7 +11,7 @@ export interface SpacedDraw {
   effect: string | null;
 }
 
-const SPACING_EFFECT =
+export const SPACING_EFFECT =
   'With a least distance the points are no longer a simple random sample of each stratum: where a class lies in small or crowded patches, pixels in the middle of things are drawn less often and lone ones more often. The estimates take all pixels of a stratum as equally likely, so they may be off by an amount the sample cannot show, most for rare classes. The share of candidates left out says how far it goes; without a least distance there is no such error.';
 
 /**

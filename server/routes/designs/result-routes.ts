@@ -1,0 +1,81 @@
+import { agreementSchema, estimatesSchema } from '../../../shared/contracts/reference.ts';
+import { measureAgreement } from '../../services/design-agreement.ts';
+import { requireMapsShown } from '../../services/design-blindness.ts';
+import { writeEstimatesCsv, writePointsCsv } from '../../services/design-csv.ts';
+import { estimateDesign } from '../../services/design-estimates.ts';
+import { loadAnsweredPoints } from '../../services/design-settle.ts';
+import type { Response } from 'express';
+import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
+import { route } from '../route.ts';
+import { designParams, findDesignTarget } from './find-design.ts';
+
+const estimates = { kind: 'project', action: 'design.estimates', find: findDesignTarget } as const;
+const read = { kind: 'project', action: 'design.read', find: findDesignTarget } as const;
+
+function sendCsv(res: Response, name: string, text: string): void {
+  res.attachment(`${name}.csv`);
+  res.type('text/csv; charset=utf-8');
+  res.setHeader('Cache-Control', 'private, no-cache');
+  // The mark tells spreadsheets that the text is UTF-8.
+  res.send(`\uFEFF${text}`);
+}
+
+/** What the points say of the map, so interpreters of an open design of the project are refused. */
+const estimateRoutes = [
+  route({
+    id: 'designs.estimates',
+    method: 'get',
+    path: '/designs/:designId/estimates',
+    summary: 'Design-based accuracy and area of each class with intervals, and how each figure was computed',
+    access: estimates,
+    params: designParams,
+    answer: estimatesSchema,
+    handle: ({ app, target }) => estimateDesign(app, target.design),
+  }),
+  route({
+    id: 'designs.estimates-csv',
+    method: 'get',
+    path: '/designs/:designId/estimates.csv',
+    summary: 'The same as CSV',
+    access: estimates,
+    params: designParams,
+    answer: { mediaType: 'text/csv' },
+    async handle({ app, target: { design }, res }) {
+      const text = writeEstimatesCsv(await estimateDesign(app, design));
+      sendCsv(res, `reference-design-${design.number}-estimates`, text);
+      return undefined;
+    },
+  }),
+].map(hideWhileInterpreting);
+
+export const resultRoutes = [
+  ...estimateRoutes,
+  route({
+    id: 'designs.agreement',
+    method: 'get',
+    path: '/designs/:designId/agreement',
+    summary: 'How far the interpreters agree, with intervals, once interpretation has ended',
+    access: read,
+    params: designParams,
+    answer: agreementSchema,
+    async handle({ app, viewer, target: { design } }) {
+      if (design.state === 'closed') await requireMapsShown(app, design.projectId, viewer);
+      return measureAgreement(app, design);
+    },
+  }),
+  route({
+    id: 'designs.points-csv',
+    method: 'get',
+    path: '/designs/:designId/points.csv',
+    summary: 'The points: an answer sheet before the design is closed, with map, answers and decisions afterwards',
+    access: read,
+    params: designParams,
+    answer: { mediaType: 'text/csv' },
+    async handle({ app, viewer, target: { design }, res }) {
+      if (design.state === 'closed') await requireMapsShown(app, design.projectId, viewer);
+      const text = writePointsCsv(design, await loadAnsweredPoints(app, design.id));
+      sendCsv(res, `reference-design-${design.number}-${design.state === 'closed' ? 'points' : 'answer-sheet'}`, text);
+      return undefined;
+    },
+  }),
+];
