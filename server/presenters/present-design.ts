@@ -1,12 +1,12 @@
 import type { z } from 'zod';
 import type { answerSchema, BlindPoint, Design, Disagreement, NextPoint } from '../../shared/contracts/reference.ts';
-import { SPACING_EFFECT } from '../analysis/sampling/keep-spacing.ts';
 import type { ReferenceAnswer } from '../entities/reference-answer.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
 import type { ReferencePoint } from '../entities/reference-point.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import type { OwnPoint, OwnProgress } from '../services/design-answers.ts';
+import { describeSpacing } from '../services/design-draw.ts';
 import { placePoint } from '../services/design-places.ts';
 import type { DesignProgress } from '../services/design-progress.ts';
 import type { AnsweredPoint } from '../services/design-settle.ts';
@@ -24,7 +24,7 @@ export function presentDesign(
     ...{ id: design.id, projectId: design.projectId, runId: design.runId, runNumber: design.run.number },
     ...{ number: design.number, name: design.name, state, n: progress.points, classes: design.classes },
     ...{ answersPerPoint: design.answersPerPoint, minSpacingMeters: design.minSpacingMeters },
-    ...{ spacingEffect: design.minSpacingMeters > 0 ? SPACING_EFFECT : null, digest: design.digest },
+    ...{ spacingEffect: describeSpacing(design.minSpacingMeters), digest: design.digest },
     augmentsId: design.augmentsId,
     strata: isMapWithheld ? null : design.strata,
     seed: isMapWithheld ? null : design.seed,

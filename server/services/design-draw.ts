@@ -1,5 +1,5 @@
 import { createPointFinder, type DrawnPoint, type DrawStratum } from '../analysis/sampling/draw-points.ts';
-import { keepSpacing } from '../analysis/sampling/keep-spacing.ts';
+import { keepSpacing, SPACING_EFFECT } from '../analysis/sampling/keep-spacing.ts';
 import type { App } from '../app-context.ts';
 import type { DesignStratum } from '../entities/reference-design.ts';
 import type { Run } from '../entities/run.ts';
@@ -13,6 +13,11 @@ export interface DesignDraw {
   points: DrawnPoint[];
   /** Candidates left out for lying too near to another point, by stratum. */
   leftOut: number[];
+}
+
+/** What a least distance does to the estimates; null without one. */
+export function describeSpacing(minSpacingMeters: number): string | null {
+  return minSpacingMeters > 0 ? SPACING_EFFECT : null;
 }
 
 /** Streams of random numbers hang on the code, so that a stratum's draw does not change with the others. */
