@@ -50,7 +50,7 @@ export async function findReferencePoint(
   return design && { point, design };
 }
 
-export async function countAnswers(app: App, designId: string): Promise<Map<string, number>> {
+async function countAnswers(app: App, designId: string): Promise<Map<string, number>> {
   const rows = await app.db
     .getRepository(ReferenceAnswer)
     .createQueryBuilder('answer')
@@ -64,9 +64,12 @@ export async function countAnswers(app: App, designId: string): Promise<Map<stri
 }
 
 async function loadWorklist(app: App, design: ReferenceDesign, userId: string): Promise<Worklist> {
-  const points = await app.db
-    .getRepository(ReferencePoint)
-    .find({ where: { designId: design.id }, order: { number: 'ASC' } });
+  const points = await app.db.getRepository(ReferencePoint).find({
+    where: { designId: design.id },
+    // Nothing of the map is even read here.
+    select: { id: true, number: true, pixelRow: true, pixelColumn: true, lon: true, lat: true, isCarried: true },
+    order: { number: 'ASC' },
+  });
   // Each interpreter has an order of their own, the same every time.
   createRng(hashText(design.id), hashText(userId)).shuffle(points);
   const answers = await app.db
@@ -111,11 +114,6 @@ function measureProgress(design: ReferenceDesign, { points, own, counts }: Workl
   const middle = seconds.length / 2;
   const median = ((seconds[Math.ceil(middle) - 1] ?? 0) + (seconds[Math.floor(middle)] ?? 0)) / 2;
   return { answered, skipped, left, total: points.length, secondsPerPoint: seconds.length > 0 ? median : null };
-}
-
-/** The viewer's own progress in a design. */
-export async function readProgress(app: App, design: ReferenceDesign, userId: string): Promise<OwnProgress> {
-  return measureProgress(design, await loadWorklist(app, design, userId));
 }
 
 function describePoint(design: ReferenceDesign, worklist: Worklist, index: number): OwnPoint {
