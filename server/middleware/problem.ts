@@ -1,8 +1,9 @@
 import type { ErrorRequestHandler, RequestHandler } from 'express';
 import { MulterError } from 'multer';
 import type { Logger } from 'pino';
+import { EntityNotFoundError } from 'typeorm';
 import type { Problem } from '../../shared/contracts/problem.ts';
-import { AppError, InvalidInput, NoRoom, NotFound, TooLarge, type ErrorKind } from '../errors.ts';
+import { AppError, Conflict, InvalidInput, NoRoom, NotFound, TooLarge, type ErrorKind } from '../errors.ts';
 import { hideSecrets } from './hide-secrets.ts';
 
 const STATUS: Record<ErrorKind, number> = {
@@ -34,7 +35,22 @@ function translate(error: unknown): unknown {
       advice: 'Delete scenes or runs that are no longer needed, or ask the site administrator for more room.',
     });
   }
-  return translateHttpError(error) ?? error;
+  return translateHttpError(error) ?? translateDatabaseError(error) ?? error;
+}
+
+/** Two people at once can pass a check that only the database decides; the later one is told so. */
+function translateDatabaseError(error: unknown): AppError | null {
+  if (error instanceof EntityNotFoundError) return new NotFound();
+  switch ((error as { code?: unknown } | null)?.code) {
+    case 'ER_DUP_ENTRY':
+      return new Conflict('Someone did the same at this moment.', { advice: 'Load the page again and look.' }, 'taken');
+    case 'ER_NO_REFERENCED_ROW_2':
+      return new Conflict('Something this needs was removed in between.', { advice: 'Load the page again.' }, 'gone');
+    case 'ER_ROW_IS_REFERENCED_2':
+      return new Conflict('Something came to need this in between.', { advice: 'Load the page again.' }, 'in-use');
+    default:
+      return null;
+  }
 }
 
 /** Body parsers and the file server throw errors that carry a status; those of the 400s are the sender's. */

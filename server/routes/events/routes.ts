@@ -1,5 +1,5 @@
 import type { Response } from 'express';
-import type { NumberedEvent } from '../../jobs/event-log.ts';
+import type { ProjectEvent } from '../../../shared/contracts/job.ts';
 import { findProjectTarget, projectParams } from '../find-project.ts';
 import { route } from '../route.ts';
 import { mayGoOn } from './watch-authority.ts';
@@ -47,7 +47,7 @@ export const eventRoutes = [
         isOver = true;
         res.end();
       };
-      const send = ({ id, event }: NumberedEvent) => {
+      const send = ({ id, event }: { id: number; event: ProjectEvent }) => {
         if (event.type === 'changed' && event.what === 'members') then(look);
         then(() => write(res, `id: ${id}\ndata: ${JSON.stringify(event)}\n\n`));
       };
