@@ -203,6 +203,10 @@ function judgeTarget(target: number | null, { low, high }: DesignFigure): Estima
   return { overall: target, verdict: low >= target ? 'met' : high < target ? 'missed' : 'uncertain' };
 }
 
+function isInterpreter(points: readonly AnsweredPoint[], userId: string): boolean {
+  return points.some(({ point, answers }) => point.decidedById === userId || answers.some((a) => a.userId === userId));
+}
+
 function listCautions(design: ReferenceDesign, points: readonly AnsweredPoint[], unsettled: number): string[] {
   const thin = points.filter(
     ({ answers, settled }) => settled?.by === 'agreement' && answers.length < design.answersPerPoint,
@@ -214,6 +218,9 @@ function listCautions(design: ReferenceDesign, points: readonly AnsweredPoint[],
         ]
       : []),
     ...(thin > 0 ? [`${thin} points have fewer answers than the ${design.answersPerPoint} the design asks for.`] : []),
+    ...(design.run.startedById !== null && isInterpreter(points, design.run.startedById)
+      ? ['Who started the run also interpreted points, and may have known its map.']
+      : []),
     ...(design.minSpacingMeters > 0
       ? [`${SPACING_EFFECT} Candidates left out here: ${design.leftOutBySpacing.reduce((sum, n) => sum + n, 0)}.`]
       : []),

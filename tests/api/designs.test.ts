@@ -595,67 +595,64 @@ const TABLE_8 = {
   areaHalf: [6_157.63, 3_755.83, 15_509.84, 16_281.66],
 };
 
-/** A closed design with the counts of a published table, on a run with its mapped pixels. */
-async function makePublishedDesign(): Promise<string> {
+interface Table {
+  /** Mapped pixels by class, and how many are left unclassified. */
+  pixels: number[];
+  unclassified?: number;
+  /** Rows are strata, the last one what is left unclassified. */
+  counts: number[][];
+}
+
+/** A closed design with the counts of a table, on a run with its mapped pixels. */
+async function makeTableDesign(table: Table, number: number): Promise<{ designId: string; ownRunId: string }> {
   const { db } = test.app;
   const run = await db.getRepository(RunEntity).findOneByOrFail({ id: runId });
   const job = await db.getRepository(Job).findOneByOrFail({ id: run.jobId });
   const [ownRunId, jobId, designId] = [randomUUID(), randomUUID(), randomUUID()];
-  const classes = TABLE_8.pixels.map((_, i) => ({
-    id: randomUUID(),
-    code: i + 1,
-    name: `Class ${i + 1}`,
-    colour: '#336699',
+  const classes = table.pixels.map((_, i) => ({
+    ...{ id: randomUUID(), code: i + 1, name: `Class ${i + 1}`, colour: '#336699' },
   }));
-  const byCode = (factor: number) => Object.fromEntries(TABLE_8.pixels.map((n, i) => [i + 1, n * factor]));
+  const left = table.unclassified ?? 0;
+  const mapped = [
+    ...classes.map(({ id, ...landClass }, i) => ({ ...landClass, classId: id, pixels: table.pixels[i]! })),
+    ...(left > 0 ? [{ classId: null, code: 0, name: 'Unclassified', colour: '#808080', pixels: left }] : []),
+  ];
+  const byCode = (factor: number) => Object.fromEntries(mapped.map(({ code, pixels }) => [code, pixels * factor]));
   const result = { ...run.result!, pixelsByCode: byCode(1), areaHaByCode: byCode(0.09) };
   await db.getRepository(Job).insert({ ...job, id: jobId, runId: ownRunId });
-  await db.getRepository(RunEntity).insert({ ...run, id: ownRunId, jobId, number: 900, classes, result } as never);
-  const strata = classes.map(({ id, ...landClass }, i) => ({
-    ...{ ...landClass, classId: id, pixels: TABLE_8.pixels[i]!, areaHa: TABLE_8.pixels[i]! * 0.09 },
-    ...{ share: TABLE_8.pixels[i]! / 10_000_000, expectedUsers: 0.8, expectedLow: null, expectedHigh: null },
-    points: TABLE_8.counts[i]!.reduce((sum, n) => sum + n, 0),
+  await db.getRepository(RunEntity).insert({ ...run, id: ownRunId, jobId, number, classes, result } as never);
+  const total = mapped.reduce((sum, { pixels }) => sum + pixels, 0);
+  const strata = mapped.map((stratum, h) => ({
+    ...{ ...stratum, areaHa: stratum.pixels * 0.09, share: stratum.pixels / total },
+    ...{ expectedUsers: null, expectedLow: null, expectedHigh: null },
+    points: table.counts[h]!.reduce((sum, n) => sum + n, 0),
   }));
   await db.getRepository(ReferenceDesign).insert({
-    ...{
-      id: designId,
-      projectId: run.projectId,
-      runId: ownRunId,
-      number: 900,
-      name: '',
-      state: 'closed',
-      strata,
-      classes,
-    },
+    ...{ id: designId, projectId: run.projectId, runId: ownRunId, number, name: '', state: 'closed', strata, classes },
     ...{ plan: {}, seed: 1, minSpacingMeters: 0, leftOutBySpacing: [], answersPerPoint: 1, digest: '0'.repeat(64) },
     ...{ augmentsId: null, createdById: null, openedAt: new Date(), closedAt: new Date() },
   } as never);
-  const cells = TABLE_8.counts.flatMap((row, i) =>
+  const cells = table.counts.flatMap((row, i) =>
     row.flatMap((n, j) => Array.from({ length: n }, () => [i, j] as const)),
   );
   const points = cells.map(([stratum], k) => ({
     ...{ id: randomUUID(), designId, number: k + 1, stratum, drawOrder: k, pixelRow: 0, pixelColumn: k },
-    ...{ lon: 0, lat: 0, mappedCode: stratum + 1, decisionNote: '' },
+    ...{ lon: 0, lat: 0, mappedCode: mapped[stratum]!.code, decisionNote: '' },
   }));
   await db.getRepository(ReferencePoint).insert(points);
   await db.getRepository(ReferenceAnswer).insert(
     points.map(({ id }, k) => ({
-      ...{
-        id: randomUUID(),
-        pointId: id,
-        userId: second.id,
-        classId: classes[cells[k]![1]]!.id,
-        alternateClassId: null,
-      },
-      ...{ confidence: 'high' as const, note: '', source: 'image' as const, seconds: null, answeredAt: new Date() },
+      ...{ id: randomUUID(), pointId: id, userId: second.id, classId: classes[cells[k]![1]]!.id },
+      ...{ alternateClassId: null, confidence: 'high' as const, note: '', source: 'image' as const, seconds: null },
+      answeredAt: new Date(),
     })),
   );
-  return designId;
+  return { designId, ownRunId };
 }
 
 describe('estimates of the published example', () => {
   it('are those of Olofsson et al. 2014, tables 8 and 9, and not the unweighted ones', async () => {
-    const designId = await makePublishedDesign();
+    const { designId } = await makeTableDesign(TABLE_8, 900);
     const estimates = (await lead.get(`${API}/designs/${designId}/estimates`).expect(200)).body as Estimates;
     expect(estimates.counts).toEqual(TABLE_8.counts);
     expect(estimates.overall.value).toBeCloseTo(0.946512, 5);
@@ -674,5 +671,78 @@ describe('estimates of the published example', () => {
     const sum = estimates.overall.value! + quantityDisagreement.value! + allocationDisagreement.value!;
     expect(sum).toBeCloseTo(1, 9);
     expect(estimates.kappa.caution).toContain('Foody');
+  });
+});
+
+describe('what the map leaves unclassified', () => {
+  it('is a stratum that is never right and whose area belongs to the classes found there', async () => {
+    const table: Table = {
+      pixels: [600, 300],
+      unclassified: 100,
+      counts: [
+        [18, 2],
+        [3, 7],
+        [4, 1],
+      ],
+    };
+    const { designId, ownRunId } = await makeTableDesign(table, 901);
+    const estimates = (await lead.get(`${API}/designs/${designId}/estimates`).expect(200)).body as Estimates;
+    expect(estimates.rows.map(({ name }) => name)).toEqual(['Class 1', 'Class 2', 'Unclassified']);
+    expect(estimates.columns).toHaveLength(2);
+    expect(estimates.counts).toEqual(table.counts);
+    // 0.6 · 18/20 + 0.3 · 7/10 + 0.1 · 0
+    expect(estimates.overall.value).toBeCloseTo(0.75, 12);
+    // 0.6 · 18/20 + 0.3 · 3/10 + 0.1 · 4/5, of 90 ha
+    expect(estimates.perClass[0]!.areaHa.value).toBeCloseTo(0.71 * 90, 9);
+    expect(estimates.perClass[0]!.producers.value).toBeCloseTo(0.54 / 0.71, 12);
+    expect(estimates.perClass[0]!.users.value).toBeCloseTo(0.9, 12);
+    const { body } = await lead
+      .post(`${projectPath}/designs/plan`)
+      .send({ runId: ownRunId, target: { kind: 'total', total: 40 }, allocation: { kind: 'neyman' } })
+      .expect(200);
+    const plan = body as DesignPlan;
+    // Nothing varies there, so Neyman gives it nothing; two points it gets all the same.
+    expect(plan.strata.at(-1)).toMatchObject({ classId: null, name: 'Unclassified', points: 2, expectedUsers: null });
+    expect(plan.n).toBe(42);
+  });
+
+  it('leaves a figure undefined that nothing is known of, and says why there is no estimate at all', async () => {
+    const unseen = await makeTableDesign(
+      {
+        pixels: [600, 300],
+        counts: [
+          [20, 0],
+          [10, 0],
+        ],
+      },
+      902,
+    );
+    const estimates = (await lead.get(`${API}/designs/${unseen.designId}/estimates`).expect(200)).body as Estimates;
+    expect(estimates.perClass[1]!.producers).toMatchObject({ value: null, standardError: null, low: null, high: null });
+    expect(estimates.perClass[1]!.users.value).toBe(0);
+    const empty = await makeTableDesign(
+      {
+        pixels: [600, 300],
+        counts: [
+          [20, 0],
+          [0, 0],
+        ],
+      },
+      903,
+    );
+    const none = (await lead.get(`${API}/designs/${empty.designId}/estimates`).expect(200)).body as Estimates;
+    expect(none.overall.value).toBeNull();
+    expect(none.proportions).toBeNull();
+    expect(none.problem).toContain('Class 2');
+    expect((await lead.get(`${API}/designs/${empty.designId}/estimates.csv`).expect(200)).text).toContain(none.problem);
+  });
+});
+
+describe('a project with designs', () => {
+  it('is deleted with all of them', async () => {
+    await lead.delete(projectPath).send({ confirmName: team.project.name }).expect(204);
+    expect(await test.app.db.getRepository(ReferenceDesign).countBy({ projectId: team.project.id })).toBe(0);
+    expect(await test.app.db.getRepository(ReferencePoint).count()).toBe(0);
+    expect(await test.app.db.getRepository(ReferenceAnswer).count()).toBe(0);
   });
 });
