@@ -9,6 +9,7 @@ import { Scene } from '../entities/scene.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import { areMapsWithheld } from './design-blindness.ts';
+import { listWaitingDesigns } from './design-waiting.ts';
 
 /** Figures, and what waits for the viewer. */
 export async function buildOverview(app: App, project: Project, viewer: Viewer): Promise<Omit<Overview, 'activity'>> {
@@ -23,7 +24,10 @@ export async function buildOverview(app: App, project: Project, viewer: Viewer):
   const best = finished.toSorted((a, b) => (b.result?.overallAccuracy ?? -1) - (a.result?.overallAccuracy ?? -1))[0];
   const readsAccuracy = can('accuracy.read', viewer.roles) && !(await areMapsWithheld(app, project.id, viewer));
   return {
-    waiting: listWaiting(project, viewer, scenes, samplesPerClass, runs),
+    waiting: [
+      ...listWaiting(project, viewer, scenes, samplesPerClass, runs),
+      ...(await listWaitingDesigns(app, project.id, viewer)),
+    ],
     figures: {
       sceneCount: scenes.length,
       sampleCount: samplesPerClass.reduce((sum, row) => sum + row.samples, 0),

@@ -23,6 +23,7 @@ import type {
   ImportReport,
   NextPoint,
 } from '../../shared/contracts/reference.ts';
+import type { Overview } from '../../shared/contracts/project.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround, type RunGround } from '../factories/make-run-ground.ts';
@@ -520,6 +521,30 @@ describe('the blind check', () => {
     const estimates = (await lead.get(`${API}/designs/${grown.id}/estimates`).expect(200)).body as Estimates;
     expect(estimates.design).toMatchObject({ n: 50, used: 36, unsettled: 14 });
     expect(estimates.cautions.join(' ')).toContain('14 of 50 points');
+  });
+});
+
+describe('two people at once', () => {
+  it('give a point no more answers than it wants', async () => {
+    const design = await draw({ ...askFor(20), answersPerPoint: 1 });
+    await lead.post(`${API}/designs/${design.id}/open`).send({}).expect(200);
+    const classId = ground.classes[0]!.id;
+    for (const { id } of (await pointsOf(design.id)).slice(0, 8)) {
+      const sent = [reviewer, reviewer2].map((agent) => agent.put(`${API}/points/${id}/answer`).send({ classId }));
+      const statuses = (await Promise.all(sent)).map(({ status }) => status);
+      expect(statuses.toSorted((a, b) => a - b)).toEqual([200, 409]);
+      expect(await test.app.db.getRepository(ReferenceAnswer).countBy({ pointId: id })).toBe(1);
+    }
+    const overview = (await reviewer.get(`${projectPath}/overview`).expect(200)).body as Overview;
+    expect(overview.waiting.map(({ text }) => text)).toContain(
+      `Interpret 12 points of reference design ${design.number}`,
+    );
+    await lead.post(`${API}/designs/${design.id}/adjudicate`).send({}).expect(200);
+    const after = (await reviewer.get(`${projectPath}/overview`).expect(200)).body as Overview;
+    expect(after.waiting.map(({ text }) => text)).toContain(`Decide 12 points of reference design ${design.number}`);
+    const ofLead = (await lead.get(`${projectPath}/overview`).expect(200)).body as Overview;
+    expect(ofLead.waiting.some(({ text }) => text.includes('reference design'))).toBe(false);
+    await lead.post(`${API}/designs/${design.id}/close`).send({ leaveUnsettled: true }).expect(200);
   });
 });
 
