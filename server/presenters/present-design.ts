@@ -1,5 +1,5 @@
-import type { z } from 'zod';
-import type { answerSchema, BlindPoint, Design, Disagreement, NextPoint } from '../../shared/contracts/reference.ts';
+import type { BlindPoint, Design, Disagreement, NextPoint } from '../../shared/contracts/reference.ts';
+import type { ReferenceAnswer as AnswerContract } from '../../shared/contracts/reference.ts';
 import type { ReferenceAnswer } from '../entities/reference-answer.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
 import type { ReferencePoint } from '../entities/reference-point.ts';
@@ -48,7 +48,7 @@ export function presentDesign(
   };
 }
 
-function presentAnswer(answer: ReferenceAnswer & { classId: string }): z.input<typeof answerSchema> {
+function presentAnswer(answer: ReferenceAnswer & { classId: string }): AnswerContract {
   const { classId, alternateClassId, confidence, note, source, answeredAt } = answer;
   return { classId, alternateClassId, confidence, note, source, answeredAt: answeredAt.toISOString() };
 }

@@ -1,4 +1,4 @@
-import { createHash, randomInt } from 'node:crypto';
+import { randomInt } from 'node:crypto';
 import type { EntityManager } from 'typeorm';
 import type { AugmentDesign, CreateDesign, DesignState, PlanDesign } from '../../shared/contracts/reference.ts';
 import type { App } from '../app-context.ts';
@@ -79,7 +79,7 @@ export async function createDesign(
     await recordActivity(manager, projectId, byId, `drew reference design ${design.number}`, 'accuracy');
     return design.id;
   });
-  return announce(app, projectId, id, byId);
+  return announceDesign(app, projectId, id, byId);
 }
 
 type NewDesign = Pick<
@@ -106,13 +106,14 @@ async function insertDesign(manager: EntityManager, fields: NewDesign): Promise<
   return manager.save(design);
 }
 
-async function announce(app: App, projectId: string, id: string, byId: string): Promise<ReferenceDesign> {
+/** Tells the project's browsers of a change, and gives the design as it now stands. */
+export async function announceDesign(app: App, projectId: string, id: string, byId: string): Promise<ReferenceDesign> {
   await app.events.publish(projectId, { type: 'changed', what: 'designs', id, by: byId });
   return requireDesign(app, id);
 }
 
 /** Locks a design in one of the states. @throws Conflict with `code` in another */
-async function lockDesign(
+export async function lockDesign(
   manager: EntityManager,
   id: string,
   states: readonly DesignState[],
@@ -193,86 +194,5 @@ export async function augmentDesign(
     }
     return current.id;
   });
-  return announce(app, projectId, id, byId);
-}
-
-/** Freezes a draft and opens it to interpretation. @throws Conflict "design-frozen" when it is no draft */
-export async function openDesign(app: App, design: ReferenceDesign, byId: string): Promise<ReferenceDesign> {
-  const run = await findPlannedRun(app, design.projectId, design.runId);
-  await app.db.transaction(async (manager) => {
-    const draft = await lockDesign(manager, design.id, ['draft'], 'design-frozen', 'The design was opened already.');
-    const points = await manager.find(ReferencePoint, { where: { designId: design.id }, order: { number: 'ASC' } });
-    const digest = digestDesign(requireResult(run).classMapSha256, draft, points);
-    await manager.update(ReferenceDesign, { id: design.id }, { state: 'open', digest, openedAt: new Date() });
-    await recordActivity(manager, design.projectId, byId, `opened reference design ${design.number}`, 'accuracy');
-  });
-  return announce(app, design.projectId, design.id, byId);
-}
-
-/** SHA-256 over all that the estimates' probabilities rest on: class map, strata, seed, distance, and every point. */
-export function digestDesign(
-  classMapSha256: string,
-  { strata, seed, minSpacingMeters }: Pick<ReferenceDesign, 'strata' | 'seed' | 'minSpacingMeters'>,
-  points: readonly Pick<
-    ReferencePoint,
-    'number' | 'stratum' | 'drawOrder' | 'pixelRow' | 'pixelColumn' | 'mappedCode'
-  >[],
-): string {
-  const content = {
-    classMapSha256,
-    seed,
-    minSpacingMeters,
-    strata: strata.map(({ code, pixels, areaHa, points: n }) => [code, pixels, areaHa, n]),
-    points: points.map(({ number, stratum, drawOrder, pixelRow, pixelColumn, mappedCode }) => [
-      ...[number, stratum, drawOrder, pixelRow, pixelColumn, mappedCode],
-    ]),
-  };
-  return createHash('sha256').update(JSON.stringify(content)).digest('hex');
-}
-
-/** Ends interpretation: no more answers are taken, and those given may be compared. @throws Conflict "not-open" */
-export async function endInterpretation(app: App, design: ReferenceDesign, byId: string): Promise<ReferenceDesign> {
-  await app.db.transaction(async (manager) => {
-    await lockDesign(manager, design.id, ['open'], 'not-open', 'The design is not being interpreted.');
-    await manager.update(ReferenceDesign, { id: design.id }, { state: 'adjudicating' });
-    await recordActivity(
-      ...([
-        manager,
-        design.projectId,
-        byId,
-        `ended interpretation of reference design ${design.number}`,
-        'accuracy',
-      ] as const),
-    );
-  });
-  return announce(app, design.projectId, design.id, byId);
-}
-
-/** Closes an adjudicated design. @throws Conflict "unsettled-points" unless they may be left, "still-interpreting" before */
-export async function closeDesign(
-  app: App,
-  design: ReferenceDesign,
-  byId: string,
-  { leaveUnsettled }: { leaveUnsettled: boolean },
-): Promise<ReferenceDesign> {
-  await app.db.transaction(async (manager) => {
-    await lockDesign(
-      ...([manager, design.id, ['adjudicating'], 'still-interpreting'] as const),
-      'Only a design whose interpretation has ended can be closed.',
-    );
-    const unsettled = (await loadAnsweredPoints(app, design.id)).filter(({ settled }) => settled === null);
-    if (unsettled.length > 0 && !leaveUnsettled) {
-      throw new Conflict(
-        'Some points have no settled class.',
-        {
-          found: `${unsettled.length} points are disputed or unanswered`,
-          advice: 'Decide them, or close and leave them out of the estimates.',
-        },
-        'unsettled-points',
-      );
-    }
-    await manager.update(ReferenceDesign, { id: design.id }, { state: 'closed', closedAt: new Date() });
-    await recordActivity(manager, design.projectId, byId, `closed reference design ${design.number}`, 'accuracy');
-  });
-  return announce(app, design.projectId, design.id, byId);
+  return announceDesign(app, projectId, id, byId);
 }

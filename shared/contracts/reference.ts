@@ -1,8 +1,11 @@
 import { z } from 'zod';
-import { colourSchema, idSchema, instantSchema, personSchema } from './common.ts';
+import { idSchema, instantSchema, personSchema } from './common.ts';
 import { boundsSchema, polygonSchema, positionSchema } from './geometry.ts';
+import { referenceClassSchema } from './reference-estimates.ts';
 import { confidenceSchema } from './sample.ts';
 import { lineSchema, textSchema } from './text.ts';
+
+export * from './reference-estimates.ts';
 
 const shareSchema = z.number().min(0).max(1);
 
@@ -106,13 +109,6 @@ export const closeDesignSchema = z
 /** draft: may be changed · open: frozen, being interpreted · adjudicating: no more answers, disagreements are decided · closed. */
 export const designStateSchema = z.enum(['draft', 'open', 'adjudicating', 'closed']);
 export type DesignState = z.infer<typeof designStateSchema>;
-
-export const referenceClassSchema = z.object({
-  id: idSchema,
-  code: z.number().int(),
-  name: z.string(),
-  colour: colourSchema,
-});
 
 export const designSchema = z.object({
   id: idSchema,
@@ -278,126 +274,6 @@ export const disagreementListSchema = z.object({
   disagreements: z.array(disagreementSchema),
   undecided: z.number().int(),
 });
-
-/** Where a figure comes from: the formula, who published it, and what went in. */
-export const howSchema = z.object({
-  formula: z.string(),
-  source: z.string(),
-  inputs: z.array(z.object({ name: z.string(), value: z.union([z.number(), z.string()]).nullable() })),
-});
-export type How = z.infer<typeof howSchema>;
-
-const intervalSchema = z.object({ low: z.number(), high: z.number() });
-/** A design-based figure. Null is "undefined", never 0. */
-export const designFigureSchema = z.object({
-  value: z.number().nullable(),
-  standardError: z.number().nullable(),
-  low: z.number().nullable(),
-  high: z.number().nullable(),
-  /** Points behind the denominator. */
-  n: z.number().int(),
-  /** Too few points for the large-sample interval; see `warning`. */
-  isFragile: z.boolean(),
-  /** Interval to quote where the figure is fragile; allows for what no point has shown. */
-  cautious: intervalSchema.nullable(),
-  how: howSchema,
-});
-export type DesignFigure = z.infer<typeof designFigureSchema>;
-
-export const estimatesClassSchema = z.object({
-  classId: idSchema,
-  code: z.number().int(),
-  name: z.string(),
-  colour: z.string(),
-  mappedPoints: z.number().int(),
-  referencePoints: z.number().int(),
-  users: designFigureSchema,
-  producers: designFigureSchema,
-  f1: designFigureSchema,
-  areaShare: designFigureSchema,
-  areaHa: designFigureSchema,
-  mappedAreaHa: z.number(),
-  /** Estimate less map. */
-  differenceHa: z.number().nullable(),
-  warning: z.string().nullable(),
-});
-export const estimatesSchema = z.object({
-  designId: idSchema,
-  runId: idSchema,
-  digest: z.string(),
-  /** How the design was drawn and what became of its points. */
-  design: z.object({
-    n: z.number().int(),
-    used: z.number().int(),
-    unsettled: z.number().int(),
-    decided: z.number().int(),
-    seed: z.number().int(),
-    minSpacingMeters: z.number(),
-    totalAreaHa: z.number(),
-    strata: z.array(
-      z.object({
-        code: z.number().int(),
-        name: z.string(),
-        colour: z.string(),
-        pixels: z.number().int(),
-        areaHa: z.number(),
-        weight: z.number(),
-        drawn: z.number().int(),
-        used: z.number().int(),
-      }),
-    ),
-  }),
-  /** Names the rows of both matrices: the classes, and what the map left unclassified where there is any (classId null). */
-  rows: z.array(
-    z.object({ classId: idSchema.nullable(), code: z.number().int(), name: z.string(), colour: z.string() }),
-  ),
-  /** Names the columns. */
-  columns: z.array(referenceClassSchema),
-  /** counts[mapped][reference]: rows are the mapped class, columns the reference class. */
-  counts: z.array(z.array(z.number().int())),
-  /** Estimated share of the area in each cell; null when a stratum has no usable point. */
-  proportions: z.array(z.array(z.number())).nullable(),
-  overall: designFigureSchema,
-  kappa: designFigureSchema.extend({ caution: z.string() }),
-  quantityDisagreement: designFigureSchema,
-  allocationDisagreement: designFigureSchema,
-  perClass: z.array(estimatesClassSchema),
-  /** The map counted right also where it shows the interpreter's second choice: lenient, quoted beside and never instead. */
-  eitherLabel: z.object({
-    overall: designFigureSchema,
-    perClass: z.array(z.object({ classId: idSchema, users: designFigureSchema, producers: designFigureSchema })),
-  }),
-  /** The project's target, against the interval of overall accuracy. */
-  target: z.object({ overall: z.number(), verdict: z.enum(['met', 'missed', 'uncertain']) }).nullable(),
-  /** Why there are no estimates, where there are none. */
-  problem: z.string().nullable(),
-  cautions: z.array(z.string()),
-});
-export type Estimates = z.infer<typeof estimatesSchema>;
-
-export const agreementFigureSchema = z.object({
-  value: z.number().nullable(),
-  standardError: z.number().nullable(),
-  low: z.number().nullable(),
-  high: z.number().nullable(),
-  n: z.number().int(),
-  how: howSchema,
-});
-export const agreementSchema = z.object({
-  designId: idSchema,
-  interpreters: z.array(z.object({ person: personSchema.nullable(), answered: z.number().int() })),
-  /** Points with at least two answers. */
-  nPoints: z.number().int(),
-  raw: agreementFigureSchema,
-  /** Each pair of interpreters who share points; indices into `interpreters`. */
-  cohen: z.array(z.object({ first: z.number().int(), second: z.number().int(), figure: agreementFigureSchema })),
-  fleiss: agreementFigureSchema,
-  krippendorff: agreementFigureSchema,
-  /** answers[first][second] of the two interpreters with most points in common, by class in the design's order. */
-  matrix: z.array(z.array(z.number().int())).nullable(),
-  cautions: z.array(z.string()),
-});
-export type Agreement = z.infer<typeof agreementSchema>;
 
 /** CSV with a heading: number or lon,lat; class_code or class; optional alternate_code or alternate, confidence, note. */
 export const importAnswersSchema = z

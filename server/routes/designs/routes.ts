@@ -11,16 +11,8 @@ import {
 import { can } from '../../policies/policy-table.ts';
 import { areMapsWithheld } from '../../services/design-blindness.ts';
 import { planDesign } from '../../services/design-plan.ts';
-import {
-  augmentDesign,
-  closeDesign,
-  createDesign,
-  deleteDesign,
-  endInterpretation,
-  findPlannedRun,
-  listDesigns,
-  openDesign,
-} from '../../services/designs.ts';
+import { closeDesign, endInterpretation, openDesign } from '../../services/design-transitions.ts';
+import { augmentDesign, createDesign, deleteDesign, findPlannedRun, listDesigns } from '../../services/designs.ts';
 import { findProjectTarget, projectParams } from '../find-project.ts';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
