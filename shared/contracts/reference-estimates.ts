@@ -128,3 +128,38 @@ export const agreementSchema = z.object({
   cautions: z.array(z.string()),
 });
 export type Agreement = z.infer<typeof agreementSchema>;
+
+export const compareMapsQuerySchema = z.object({
+  /** The other run; the first is the one the design was drawn for. */
+  runId: idSchema,
+});
+/** Two maps judged on the same reference points. */
+export const mapComparisonSchema = z.object({
+  designId: idSchema,
+  first: z.object({ runId: idSchema, number: z.number().int(), overall: z.number() }),
+  second: z.object({ runId: idSchema, number: z.number().int(), overall: z.number() }),
+  n: z.number().int(),
+  /** First less second. */
+  difference: z.number(),
+  standardError: z.number().nullable(),
+  low: z.number().nullable(),
+  high: z.number().nullable(),
+  covariance: z.number().nullable(),
+  pValue: z.number().nullable(),
+  /** Points only the first, only the second map has right. */
+  onlyFirstRight: z.number().int(),
+  onlySecondRight: z.number().int(),
+  /** On plain counts; null when the maps are right at the same points. */
+  mcNemar: z
+    .object({
+      chiSquare: z.number(),
+      pValue: z.number(),
+      exactPValue: z.number(),
+      /** Which p to quote. */
+      quoted: z.enum(['exact', 'chi-square']),
+    })
+    .nullable(),
+  how: z.array(howSchema),
+  cautions: z.array(z.string()),
+});
+export type MapComparison = z.infer<typeof mapComparisonSchema>;

@@ -148,6 +148,7 @@ const TABLE: Record<string, Row> = {
   'designs.estimates': ACCURACY,
   'designs.estimates-csv': ACCURACY,
   'designs.agreement': ACCURACY,
+  'designs.compare': ACCURACY,
   'designs.points-csv': ACCURACY,
   'events.stream': TEAM,
   'openapi.read': PUBLIC,
@@ -231,6 +232,7 @@ const SPARE: Record<string, () => Promise<Record<string, string>>> = {
 /** Queries that make a read complete; bodies stay empty, so that writes end at validation, after authority was decided. */
 const QUERY: Record<string, () => string> = {
   'scenes.probe': () => '?lon=-15&lat=60',
+  'designs.compare': () => `?runId=${runId}`,
   'runs.probe': () => '?lon=-15&lat=60',
   'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
 };

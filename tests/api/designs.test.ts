@@ -21,6 +21,7 @@ import type {
   Disagreement,
   Estimates,
   ImportReport,
+  MapComparison,
   NextPoint,
 } from '../../shared/contracts/reference.ts';
 import type { Overview } from '../../shared/contracts/project.ts';
@@ -50,10 +51,10 @@ let projectPath: string;
 /** Codes of the class map, row-major, as GDAL reads them from the download. */
 let codes: Buffer;
 
-async function readCodes(): Promise<Buffer> {
+async function readCodes(ofRun: string): Promise<Buffer> {
   const dir = await mkdtemp(join(tmpdir(), 'groundsel-designs-'));
   try {
-    await writeFile(join(dir, 'map.tif'), await readBytes(modeller, `${API}/runs/${runId}/class-map.tif`));
+    await writeFile(join(dir, 'map.tif'), await readBytes(modeller, `${API}/runs/${ofRun}/class-map.tif`));
     await promisify(execFile)('gdal_translate', ['-q', '-of', 'ENVI', join(dir, 'map.tif'), join(dir, 'raw')]);
     return await readFile(join(dir, 'raw'));
   } finally {
@@ -97,7 +98,7 @@ beforeAll(async () => {
   const { body } = await modeller.post(`${projectPath}/runs`).send({ recipe }).expect(201);
   runId = (body as Run).id;
   expect((await waitForRun(modeller, runId)).job.state).toBe('finished');
-  codes = await readCodes();
+  codes = await readCodes(runId);
 }, 120_000);
 afterAll(() => test.close());
 
@@ -499,6 +500,42 @@ describe('the blind check', () => {
     expect(row[head.indexOf('class_code')]).toBe(String(truthAt(points[0]!).code));
   });
 
+  it('compares the map with another run on the same points', async () => {
+    const { body } = await modeller
+      .post(`${projectPath}/runs`)
+      .send({ recipe: { ...ground.recipe, seed: 99 } })
+      .expect(201);
+    const other = (body as Run).id;
+    expect((await waitForRun(modeller, other)).job.state).toBe('finished');
+    const compared = (await lead.get(`${path}/compare?runId=${other}`).expect(200)).body as MapComparison;
+    const otherCodes = await readCodes(other);
+    const strata = design.strata!;
+    const total = strata.reduce((sum, { pixels }) => sum + pixels, 0);
+    const right = points.map((point) => {
+      const truth = truthAt(point).code;
+      const second = otherCodes[point.pixelRow * SIDE + point.pixelColumn] === truth;
+      return { h: point.stratum, first: Number(point.mappedCode === truth), second: Number(second) };
+    });
+    let difference = 0;
+    let variance = 0;
+    strata.forEach(({ pixels }, h) => {
+      const d = right.filter((unit) => unit.h === h).map(({ first, second: of }) => first - of);
+      const mean = d.reduce((sum, value) => sum + value, 0) / d.length;
+      const spread = d.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (d.length - 1);
+      difference += (pixels / total) * mean;
+      variance += ((pixels / total) ** 2 * spread) / d.length;
+    });
+    expect(compared.difference).toBeCloseTo(difference, 9);
+    expect(compared.standardError).toBeCloseTo(Math.sqrt(variance), 9);
+    expect(compared.onlyFirstRight).toBe(right.filter(({ first, second: of }) => first > of).length);
+    expect(compared.onlySecondRight).toBe(right.filter(({ first, second: of }) => first < of).length);
+    // The two maps differ, or this would prove little.
+    expect(compared.onlyFirstRight + compared.onlySecondRight).toBeGreaterThan(0);
+    expect(compared.mcNemar).toMatchObject({ quoted: 'exact' });
+    await lead.get(`${path}/compare?runId=${runId}`).expect(400);
+    await lead.get(`${path}/compare?runId=${NOWHERE}`).expect(400);
+  });
+
   it('carries a closed design on: same points with their classes, and others after them', async () => {
     const { target, allocation } = askFor(50);
     const grown = (await lead.post(`${path}/augment`).send({ target, allocation }).expect(200)).body as Design;
@@ -513,7 +550,14 @@ describe('the blind check', () => {
     const carried = (await reviewer.get(`${API}/designs/${grown.id}/points/1`).expect(200)).body as BlindPoint;
     expect(carried.takesAnswer).toBe(false);
     // The closed design shows the same points, so it is withheld as well.
-    for (const tail of ['estimates', 'estimates.csv', 'points.csv', 'agreement', 'disagreements']) {
+    for (const tail of [
+      'estimates',
+      'estimates.csv',
+      'points.csv',
+      'agreement',
+      'disagreements',
+      `compare?runId=${NOWHERE}`,
+    ]) {
       await reviewer.get(`${path}/${tail}`).expect(403);
     }
     await lead.post(`${API}/designs/${grown.id}/adjudicate`).send({}).expect(200);

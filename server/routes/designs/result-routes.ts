@@ -1,5 +1,11 @@
-import { agreementSchema, estimatesSchema } from '../../../shared/contracts/reference.ts';
+import {
+  agreementSchema,
+  compareMapsQuerySchema,
+  estimatesSchema,
+  mapComparisonSchema,
+} from '../../../shared/contracts/reference.ts';
 import { measureAgreement } from '../../services/design-agreement.ts';
+import { compareRuns } from '../../services/design-comparison.ts';
 import { requireMapsShown } from '../../services/design-blindness.ts';
 import { writeEstimatesCsv, writePointsCsv } from '../../services/design-csv.ts';
 import { estimateDesign } from '../../services/design-estimates.ts';
@@ -45,6 +51,17 @@ const estimateRoutes = [
       sendCsv(res, `reference-design-${design.number}-estimates`, text);
       return undefined;
     },
+  }),
+  route({
+    id: 'designs.compare',
+    method: 'get',
+    path: '/designs/:designId/compare',
+    summary: 'Overall accuracy of two maps on the same points: difference with its interval, and McNemar’s test',
+    access: estimates,
+    params: designParams,
+    query: compareMapsQuerySchema,
+    answer: mapComparisonSchema,
+    handle: ({ app, target, query }) => compareRuns(app, target.design, query.runId),
   }),
 ].map(hideWhileInterpreting);
 
