@@ -53,6 +53,9 @@ export async function importAnswers(
   const seen = new Map<number, number>();
   try {
     await app.db.transaction(async (manager) => {
+      // A transaction that met a deadlock begins anew.
+      rows.length = 0;
+      seen.clear();
       for (const { line, fields } of records) {
         const read = readRow(design, columns, fields, finder);
         if (typeof read === 'string') {
