@@ -1,4 +1,5 @@
 import type { DrawnPoint } from './draw-points.ts';
+import { createPointGrid } from './point-grid.ts';
 
 export interface SpacedDraw {
   /** Points kept, by stratum and in order of drawing. */
@@ -57,30 +58,4 @@ export function keepSpacing(
 
 function keyOf({ stratum, order }: DrawnPoint): string {
   return `${stratum}/${order}`;
-}
-
-/** Buckets as wide as the spacing: whatever is nearer lies in a point's bucket or one of the eight around it. */
-function createPointGrid(spacing: number): { add(point: DrawnPoint): void; hasNear(point: DrawnPoint): boolean } {
-  const side = Math.max(1, spacing);
-  const buckets = new Map<string, DrawnPoint[]>();
-  const keyAt = (x: number, y: number): string => `${x},${y}`;
-  return {
-    add(point) {
-      const key = keyAt(Math.floor(point.column / side), Math.floor(point.row / side));
-      const bucket = buckets.get(key);
-      if (bucket) bucket.push(point);
-      else buckets.set(key, [point]);
-    },
-    hasNear({ row, column }) {
-      const [x, y] = [Math.floor(column / side), Math.floor(row / side)];
-      for (let dy = -1; dy <= 1; dy++) {
-        for (let dx = -1; dx <= 1; dx++) {
-          for (const other of buckets.get(keyAt(x + dx, y + dy)) ?? []) {
-            if ((other.column - column) ** 2 + (other.row - row) ** 2 < spacing ** 2) return true;
-          }
-        }
-      }
-      return false;
-    },
-  };
 }
