@@ -9,6 +9,7 @@ import { classifyStrip } from '../raster/classify-strip.ts';
 import { prepareClassifier } from './compute/classifier-of-recipe.ts';
 import { finishMap } from './compute/finish-map.ts';
 import { readTraining } from './compute/read-training.ts';
+import { summariseSamples } from './compute/summarise-samples.ts';
 import { maskStrip } from './compute/study-area-mask.ts';
 import type { ComputeResult, ComputeTask, ComputeTasks } from './compute/tasks.ts';
 
@@ -66,6 +67,8 @@ async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint
 /** Worker entry: the heavy steps of a run. */
 export default async function compute(task: ComputeTask): Promise<ComputeResult> {
   switch (task.kind) {
+    case 'summarise-samples':
+      return summariseSamples(task, await openBands(task.scene.bandPaths));
     case 'read-training':
       return readTraining(task, await openBands(task.scene.bandPaths));
     case 'train-parts':

@@ -9,6 +9,7 @@ import { projectRoutes } from './projects/routes.ts';
 import type { Route } from './route.ts';
 import { runRoutes } from './runs/routes.ts';
 import { sampleRoutes } from './samples/routes.ts';
+import { signatureRoutes } from './samples/signature-routes.ts';
 import { sceneRoutes } from './scenes/routes.ts';
 import { sessionRoutes } from './session/routes.ts';
 
@@ -21,6 +22,7 @@ export const routes: readonly Route[] = [
   ...sceneRoutes,
   ...classRoutes,
   ...sampleRoutes,
+  ...signatureRoutes,
   ...runRoutes,
   ...accuracyRoutes,
   ...designRoutes,

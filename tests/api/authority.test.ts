@@ -111,6 +111,8 @@ const TABLE: Record<string, Row> = {
   'samples.list': TEAM,
   'samples.create': DRAWS,
   'samples.measure': TEAM,
+  'samples.judge': TEAM,
+  'signatures.read': TEAM,
   'samples.read': TEAM,
   'samples.update': MAKER_OR_LEAD,
   'samples.delete': MAKER_OR_LEAD,

@@ -1,6 +1,7 @@
 import type { ClassifierRecipe } from '../../../shared/contracts/run.ts';
 import type { TrainingSet } from '../../analysis/classifiers/classifier.ts';
 import type { MultiPolygon, Polygon } from '../../analysis/sampling/polygon.ts';
+import type { SampleSummary } from '../../analysis/spectral/sample-summary.ts';
 import type { RasterGrid } from '../../raster/raster-grid.ts';
 
 /** The pixels a run reads: band files in the recipe's order, on the scene's grid. */
@@ -41,11 +42,23 @@ export interface FinishedMap {
   nConflicting: number;
 }
 
+/** A sample in the features of a scene's bands, stored values. */
+export interface SampleDigest {
+  summary: SampleSummary;
+  /** Some of its pixels, row-major. */
+  kept: Float32Array;
+}
+
 /** One count in shared memory, written by the thread and looked at from outside. */
 export type SharedProgress = Int32Array;
 
 /** What the compute threads do: what each kind of task is given and gives back. */
 export interface ComputeTasks {
+  /** The results are in the order of the polygons; a null polygon has no place in the scene. */
+  'summarise-samples': {
+    input: { scene: SceneInput; polygons: readonly (Polygon | null)[]; pixelsKept: number };
+    result: SampleDigest[];
+  };
   'read-training': {
     input: {
       scene: SceneInput;
