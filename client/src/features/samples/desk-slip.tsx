@@ -23,6 +23,8 @@ export function DeskSlip({ desk, viewerId, scenes, measure }: DeskSlipProps) {
         draft={draft}
         classes={classes}
         measure={measure}
+        projectId={desk.project.id}
+        scene={scene}
         isFromBefore={desk.isFromBefore}
         isSaving={desk.isBusy}
         error={desk.saveError}

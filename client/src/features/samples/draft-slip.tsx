@@ -15,14 +15,19 @@ import { formatHectares, formatNumber } from '../../lib/format.ts';
 import type { ProblemError } from '../../lib/problem-error.ts';
 import { CONFIDENCE_TEXT } from './confidence-text.ts';
 import { type Draft, isUnchanged } from './draft.ts';
-import type { useMeasure } from './measure-query.ts';
+import { JudgementBlock } from './judgement-block.tsx';
+import { useJudgement } from './judgement-query.ts';
+import type { MeasuredScene, useMeasure } from './measure-query.ts';
 import { RefusalNote } from './refusal-note.tsx';
 import { SpectrumBlock } from './spectrum-block.tsx';
+import { rivalSeries } from './spectrum-series.ts';
 
 export interface DraftSlipProps {
   draft: Draft;
   classes: readonly LandClass[];
   measure: ReturnType<typeof useMeasure>;
+  projectId: string;
+  scene: MeasuredScene;
   /** The drawing comes from before a reload. */
   isFromBefore: boolean;
   isSaving: boolean;
@@ -34,10 +39,17 @@ export interface DraftSlipProps {
 
 /** A drawing not saved yet: what is inside, its class, confidence and note. */
 export function DraftSlip(props: DraftSlipProps) {
-  const { draft, classes, measure, isFromBefore, isSaving, error, onChange, onSave, onDiscard } = props;
+  const { draft, classes, measure, projectId, scene, isFromBefore, isSaving, error, onChange, onSave, onDiscard } =
+    props;
   const landClass = classes.find((one) => one.id === draft.classId);
   const refusal = measure.data?.refusal ?? null;
   const isSame = isUnchanged(draft);
+  const judgement = useJudgement(
+    projectId,
+    scene,
+    { classId: draft.classId, geometry: draft.geometry, sampleId: draft.id },
+    measure.data !== undefined && refusal === null,
+  );
   return (
     <Slip
       title={draft.base ? `Sample ${draft.base.number}, changing` : 'New sample'}
@@ -66,10 +78,20 @@ export function DraftSlip(props: DraftSlipProps) {
           This drawing was not saved when the page was left. Save it or discard it.
         </Callout>
       )}
-      <SpectrumBlock measure={measure} name="This drawing" colour={landClass?.colour ?? 'var(--ink)'} />
+      <SpectrumBlock
+        measure={measure}
+        name="This drawing"
+        colour="var(--ink)"
+        behind={(spectrum) => rivalSeries(judgement.data?.rivals ?? [], spectrum, classes)}
+      />
       {refusal && <RefusalNote refusal={refusal} />}
       {error && <ErrorState error={error} isInline />}
-      {measure.data && !refusal && <MeasureFacts measure={measure.data} isOld={measure.isPlaceholderData} />}
+      {measure.data && !refusal && (
+        <>
+          <MeasureFacts measure={measure.data} isOld={measure.isPlaceholderData} />
+          <JudgementBlock judgement={judgement} classes={classes} />
+        </>
+      )}
       <div className="space-y-3 border-t border-line pt-3">
         <Field label="Class">
           <Select

@@ -8,9 +8,12 @@ import { Kbd } from '../../components/ui/kbd.tsx';
 import { formatDateTime, formatSince } from '../../lib/format-date.ts';
 import { formatHectares, formatNumber } from '../../lib/format.ts';
 import { CONFIDENCE_TEXT } from './confidence-text.ts';
+import { JudgementBlock } from './judgement-block.tsx';
+import { useJudgement } from './judgement-query.ts';
 import { type MeasuredScene, useMeasure } from './measure-query.ts';
 import { SampleHistory } from './sample-history.tsx';
 import { SpectrumBlock } from './spectrum-block.tsx';
+import { rivalSeries } from './spectrum-series.ts';
 
 export interface SampleSlipProps {
   sample: Sample;
@@ -31,6 +34,11 @@ export interface SampleSlipProps {
 export function SampleSlip(props: SampleSlipProps) {
   const { sample, scene, classes, viewerId, isBusy, shownVersion } = props;
   const measure = useMeasure(sample.projectId, scene, sample.geometry);
+  const judgement = useJudgement(sample.projectId, scene, {
+    classId: sample.classId,
+    geometry: sample.geometry,
+    sampleId: sample.id,
+  });
   const landClass = classes.find((one) => one.id === sample.classId);
   const className = landClass?.name ?? 'Class taken away';
   const author = sample.createdBy?.id === viewerId ? 'you' : (sample.createdBy?.name ?? 'someone no longer here');
@@ -59,7 +67,12 @@ export function SampleSlip(props: SampleSlipProps) {
         ) : undefined
       }
     >
-      <SpectrumBlock measure={measure} name="This sample" colour={landClass?.colour ?? 'var(--ink)'} />
+      <SpectrumBlock
+        measure={measure}
+        name="This sample"
+        colour="var(--ink)"
+        behind={(spectrum) => rivalSeries(judgement.data?.rivals ?? [], spectrum, classes)}
+      />
       <Facts
         facts={[
           { name: 'Pixels (centre inside)', value: formatNumber(sample.pixelCount) },
@@ -69,6 +82,7 @@ export function SampleSlip(props: SampleSlipProps) {
           ...(wasChanged ? [{ name: 'Last changed', value: formatDateTime(sample.updatedAt) }] : []),
         ]}
       />
+      <JudgementBlock judgement={judgement} classes={classes} />
       {sample.note && <p className="border-t border-line pt-2.5 whitespace-pre-line">{sample.note}</p>}
       {!sample.abilities.edit && (
         <p className="border-t border-line pt-2.5 text-ink-soft">

@@ -1,5 +1,6 @@
 import type { UseQueryResult } from '@tanstack/react-query';
 import type { DrawingMeasure } from '../../../../shared/contracts/sample.ts';
+import type { SpectralSeries } from '../../components/charts/spectral-series.ts';
 import { SpectralProfile } from '../../components/charts/spectral-profile.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
@@ -10,17 +11,26 @@ export interface SpectrumBlockProps {
   measure: UseQueryResult<DrawingMeasure>;
   name: string;
   colour: string;
+  /** Drawn behind it: its class so far, and the nearest others. */
+  behind?: (spectrum: DrawingMeasure['spectrum']) => readonly SpectralSeries[];
 }
 
 /** The spectrum of an outline, or why there is none to show. */
-export function SpectrumBlock({ measure, name, colour }: SpectrumBlockProps) {
+export function SpectrumBlock({ measure, name, colour, behind }: SpectrumBlockProps) {
   if (measure.isPending) return <PendingState label="Reading the pixels inside" shape="block" />;
   if (measure.isError) return <ErrorState error={measure.error} onRetry={() => void measure.refetch()} isInline />;
   const series = measureSeries(measure.data.spectrum, name, colour);
   if (series.points.length === 0) {
     return <BandMeans spectrum={measure.data.spectrum} />;
   }
-  return <SpectralProfile title="Spectrum of the pixels inside" isTitleHidden series={[series]} plotHeight={150} />;
+  return (
+    <SpectralProfile
+      title="Spectrum of the pixels inside"
+      isTitleHidden
+      series={[...(behind?.(measure.data.spectrum) ?? []), series]}
+      plotHeight={150}
+    />
+  );
 }
 
 /** The means in a table, for a scene whose bands have no wavelength to draw them along. */

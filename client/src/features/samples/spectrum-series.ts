@@ -1,6 +1,8 @@
 import { BAND_QUANTITIES, type BandQuantity } from '../../../../shared/constants/bands.ts';
+import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Probe } from '../../../../shared/contracts/scene.ts';
 import type { DrawingMeasure } from '../../../../shared/contracts/sample.ts';
+import type { DrawingJudgement } from '../../../../shared/contracts/signature.ts';
 import type { SpectralPoint, SpectralSeries } from '../../components/charts/spectral-series.ts';
 
 type MeasuredBand = DrawingMeasure['spectrum'][number];
@@ -20,6 +22,31 @@ export function measureSeries(spectrum: readonly MeasuredBand[], name: string, c
     ];
   });
   return { id: 'outline', name, colour, isMain: true, points };
+}
+
+/** The class of an outline and its nearest rivals, to be drawn behind the outline's own spectrum. */
+export function rivalSeries(
+  rivals: DrawingJudgement['rivals'],
+  spectrum: readonly MeasuredBand[],
+  classes: readonly LandClass[],
+): SpectralSeries[] {
+  return rivals.flatMap((rival): SpectralSeries[] => {
+    const landClass = classes.find(({ id }) => id === rival.classId);
+    if (!landClass) return [];
+    const points = spectrum.flatMap((band, place): SpectralPoint[] => {
+      const mean = rival.mean[place] ?? null;
+      if (band.centreWavelengthUm === null || mean === null) return [];
+      return [
+        {
+          ...{ wavelengthUm: band.centreWavelengthUm, bandName: band.name, mean },
+          sd: rival.isOwn ? (rival.standardDeviation[place] ?? null) : null,
+          quantity: asQuantity(band.quantity),
+        },
+      ];
+    });
+    const name = rival.isOwn ? `${landClass.name} so far` : landClass.name;
+    return [{ id: rival.classId, name, colour: landClass.colour, line: rival.isOwn ? 'dashed' : 'dotted', points }];
+  });
 }
 
 /** The spectrum of one pixel. */
