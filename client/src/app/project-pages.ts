@@ -28,6 +28,10 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/samples/samples-page.tsx'), 'SamplesPage'),
   },
   {
+    path: 'samples/signatures',
+    lazy: lazyPage(() => import('../pages/signatures/signatures-page.tsx'), 'SignaturesPage'),
+  },
+  {
     path: 'runs',
     lazy: lazyPage(() => import('../pages/runs/runs-page.tsx'), 'RunsPage'),
   },

@@ -14,6 +14,7 @@ export const paths = {
   sceneBands: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}/bands`,
   classes: (projectId: string) => `/projects/${projectId}/classes`,
   samples: (projectId: string) => `/projects/${projectId}/samples`,
+  signatures: (projectId: string) => `/projects/${projectId}/samples/signatures`,
   /** The sampling desk with these samples shown and the first of them selected. */
   samplesChosen: (projectId: string, sampleIds: readonly string[]) =>
     `/projects/${projectId}/samples?samples=${sampleIds.join(',')}`,

@@ -1,5 +1,6 @@
-import { List, PenTool } from 'lucide-react';
+import { ChartSpline, List, PenTool } from 'lucide-react';
 import { useRef } from 'react';
+import { Link } from 'react-router-dom';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Sample } from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
@@ -9,7 +10,7 @@ import { CompositeControl } from '../../components/map/composite-control.tsx';
 import { SceneChoice } from '../../components/map/scene-choice.tsx';
 import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import { StretchControl } from '../../components/map/stretch-control.tsx';
-import { Button } from '../../components/ui/button.tsx';
+import { Button, buttonClass } from '../../components/ui/button.tsx';
 import { ConflictDialog } from '../../features/samples/conflict-dialog.tsx';
 import { DeskMap } from '../../features/samples/desk-map.tsx';
 import { DeskSlip } from '../../features/samples/desk-slip.tsx';
@@ -20,6 +21,7 @@ import { useDraftMeasure } from '../../features/samples/measure-query.ts';
 import { SampleList } from '../../features/samples/sample-list.tsx';
 import { useDesk } from '../../features/samples/use-desk.ts';
 import { toolHelp, useDeskKeys } from '../../features/samples/use-desk-keys.ts';
+import { paths } from '../../lib/paths.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useSceneView } from '../../lib/use-scene-view.ts';
 
@@ -51,6 +53,10 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
             title="Sampling desk"
             action={
               <>
+                <Link to={paths.signatures(project.id)} className={buttonClass('secondary', 'sm')}>
+                  <ChartSpline aria-hidden />
+                  Signatures
+                </Link>
                 <Button
                   size="sm"
                   kind={desk.isListOpen ? 'strong' : 'secondary'}
