@@ -48,6 +48,14 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/accuracy/accuracy-page.tsx'), 'AccuracyPage'),
   },
   {
+    path: 'accuracy/designs/new',
+    lazy: lazyPage(() => import('../pages/design-plan/design-plan-page.tsx'), 'DesignPlanPage'),
+  },
+  {
+    path: 'accuracy/designs/:designId',
+    lazy: lazyPage(() => import('../pages/design/design-page.tsx'), 'DesignPage'),
+  },
+  {
     path: 'handover',
     lazy: lazyPage(() => import('../pages/handover/handover-page.tsx'), 'HandoverPage'),
   },

@@ -24,6 +24,11 @@ export const paths = {
     `/projects/${projectId}/runs/new${fromRunId ? `?from=${fromRunId}` : ''}`,
   run: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}`,
   accuracy: (projectId: string, runId?: string) => `/projects/${projectId}/accuracy${runId ? `?run=${runId}` : ''}`,
+  newDesign: (projectId: string, runId?: string) =>
+    `/projects/${projectId}/accuracy/designs/new${runId ? `?run=${runId}` : ''}`,
+  design: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}`,
+  blindCheck: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}/check`,
+  adjudication: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}/decide`,
   handover: (projectId: string) => `/projects/${projectId}/handover`,
   members: (projectId: string) => `/projects/${projectId}/members`,
 } as const;
