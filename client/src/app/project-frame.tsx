@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { Outlet, useOutletContext, useParams } from 'react-router-dom';
+import { Outlet, useMatches, useOutletContext, useParams } from 'react-router-dom';
 import type { Account } from '../../../shared/contracts/account.ts';
 import type { Project, Stage } from '../../../shared/contracts/project.ts';
 import { ROLE_TEXT } from '../../../shared/constants/roles.ts';
@@ -8,6 +8,7 @@ import { PendingState } from '../components/ui/pending-state.tsx';
 import { ProblemError } from '../lib/problem-error.ts';
 import { ProjectContext } from '../lib/project/project-context.ts';
 import { projectQuery } from '../lib/project/project-query.ts';
+import { FULL_SCREEN } from './full-screen.ts';
 import { ProjectProblem } from './project-problem.tsx';
 import { ProjectRailExtra } from './project-rail-extra.tsx';
 import { useSignOutAndLeave } from './shell-frame.tsx';
@@ -24,6 +25,16 @@ export function ProjectFrame() {
   const project = isRefused ? undefined : query.data;
   const isTeam = project !== undefined && isOfTeam(project);
   const isLive = useProjectEvents(isTeam ? projectId : null);
+  const isFullScreen = useMatches().some(({ handle }) => handle === FULL_SCREEN);
+  if (project && isFullScreen) {
+    return (
+      <ProjectContext value={project}>
+        <main id="page" tabIndex={-1}>
+          <Outlet context={account} />
+        </main>
+      </ProjectContext>
+    );
+  }
   const roles = project?.roles.map((role) => ROLE_TEXT[role].name).join(', ');
   return (
     <AppShell

@@ -1,4 +1,5 @@
 import type { RouteObject } from 'react-router-dom';
+import { FULL_SCREEN } from './full-screen.ts';
 import { lazyPage } from './lazy-page.ts';
 
 /** The pages of a project, each fetched when first opened; paths are within `/projects/:projectId`. */
@@ -54,6 +55,16 @@ export const projectPages: RouteObject[] = [
   {
     path: 'accuracy/designs/:designId',
     lazy: lazyPage(() => import('../pages/design/design-page.tsx'), 'DesignPage'),
+  },
+  {
+    path: 'accuracy/designs/:designId/check',
+    handle: FULL_SCREEN,
+    lazy: lazyPage(() => import('../pages/blind-check/blind-check-page.tsx'), 'BlindCheckPage'),
+  },
+  {
+    path: 'accuracy/designs/:designId/decide',
+    handle: FULL_SCREEN,
+    lazy: lazyPage(() => import('../pages/adjudication/adjudication-page.tsx'), 'AdjudicationPage'),
   },
   {
     path: 'handover',

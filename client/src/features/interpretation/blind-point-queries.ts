@@ -1,0 +1,53 @@
+import { queryOptions, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
+import {
+  type BlindPoint,
+  blindPointSchema,
+  nextPointSchema,
+  type PutAnswer,
+} from '../../../../shared/contracts/reference.ts';
+import { fetchJson } from '../../lib/fetch-json.ts';
+import { projectKey } from '../../lib/project/project-query.ts';
+
+const checkKey = (projectId: string, designId: string, ...rest: readonly unknown[]) =>
+  projectKey(projectId, 'accuracy', 'blind-check', designId, ...rest);
+
+/** The point to look at: one by its number, or with null the next that waits. */
+const pointQuery = (projectId: string, designId: string, number: number | null) =>
+  queryOptions({
+    queryKey: checkKey(projectId, designId, number ?? 'next'),
+    queryFn: async ({ signal }) => {
+      if (number === null) return fetchJson(`/designs/${designId}/next`, nextPointSchema, { signal });
+      const point = await fetchJson(`/designs/${designId}/points/${number}`, blindPointSchema, { signal });
+      return { point, progress: point.progress };
+    },
+    // What waits next is decided by the server when it is asked, not remembered.
+    gcTime: 0,
+    refetchOnWindowFocus: false,
+  });
+
+export function useBlindPoint(projectId: string, designId: string, number: number | null) {
+  return useQuery(pointQuery(projectId, designId, number));
+}
+
+/** Stores an answer, and forgets what was asked before so that the next point is the server's choice. */
+export function usePutAnswer(projectId: string, designId: string) {
+  const queryClient = useQueryClient();
+  return useMutation({
+    mutationFn: ({ point, answer }: { point: BlindPoint; answer: PutAnswer }) =>
+      fetchJson(`/points/${point.id}/answer`, blindPointSchema, { method: 'PUT', body: answer }),
+    onSuccess: () => {
+      queryClient.removeQueries({ queryKey: checkKey(projectId, designId), type: 'inactive' });
+      void queryClient.invalidateQueries({ queryKey: projectKey(projectId, 'designs') });
+    },
+  });
+}
+
+/** Puts a point at the end of the viewer's order. */
+export function useSkipPoint(projectId: string, designId: string) {
+  const queryClient = useQueryClient();
+  return useMutation({
+    mutationFn: (point: BlindPoint) =>
+      fetchJson(`/points/${point.id}/skip`, nextPointSchema, { method: 'POST', body: {} }),
+    onSuccess: () => queryClient.removeQueries({ queryKey: checkKey(projectId, designId), type: 'inactive' }),
+  });
+}
