@@ -1,4 +1,4 @@
-import type { BlindPoint, Design, Disagreement, NextPoint } from '../../shared/contracts/reference.ts';
+import type { BlindPoint, CellPoint, Design, Disagreement, NextPoint } from '../../shared/contracts/reference.ts';
 import type { ReferenceAnswer as AnswerContract } from '../../shared/contracts/reference.ts';
 import type { ReferenceAnswer } from '../entities/reference-answer.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
@@ -85,6 +85,24 @@ export function presentNextPoint(
   return { point: next && presentBlindPoint(design, placed, next, progress), progress };
 }
 
+/** A point of a closed design, with what was said of it. */
+export function presentCellPoint(
+  design: ReferenceDesign,
+  placed: PlacedScene,
+  { point, answers, settled }: AnsweredPoint,
+): CellPoint {
+  return {
+    ...presentPlace(design, placed, point),
+    settledBy: settled?.by ?? 'agreement',
+    answers: answers.map(presentAnswerOf),
+    note: point.decisionNote,
+  };
+}
+
+function presentAnswerOf(answer: AnsweredPoint['answers'][number]): Disagreement['answers'][number] {
+  return { ...presentAnswer(answer), by: answer.user ? { id: answer.user.id, name: answer.user.name } : null };
+}
+
 /** A disputed point with everybody's answers, but still without the mapped class. */
 export function presentDisagreement(
   design: ReferenceDesign,
@@ -94,10 +112,7 @@ export function presentDisagreement(
   const { decisionClassId, decisionAlternateClassId, decisionNote, decidedBy, decidedAt } = point;
   return {
     point: presentPlace(design, placed, point),
-    answers: answers.map((answer) => ({
-      ...presentAnswer(answer),
-      by: answer.user ? { id: answer.user.id, name: answer.user.name } : null,
-    })),
+    answers: answers.map(presentAnswerOf),
     decision:
       decisionClassId !== null && decidedAt !== null
         ? {

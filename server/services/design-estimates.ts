@@ -67,18 +67,22 @@ function estimate(
   return { counts, estimate: result, report };
 }
 
+/** @throws Conflict "not-closed" before, so that nobody stops when the figures please */
+export function requireClosed({ state }: Pick<ReferenceDesign, 'state'>): void {
+  if (state === 'closed') return;
+  throw new Conflict(
+    'Estimates are made once the design is closed, so that nobody stops when the figures please.',
+    { found: `it is ${state}`, wanted: 'closed' },
+    'not-closed',
+  );
+}
+
 /**
  * Accuracy and areas from the reference points of a closed design, weighted by the strata they were drawn from.
- * @throws Conflict "not-closed" before, so that nobody stops when the figures please
+ * @throws Conflict "not-closed" before
  */
 export async function estimateDesign(app: App, design: ReferenceDesign): Promise<Estimates> {
-  if (design.state !== 'closed' || design.digest === null) {
-    throw new Conflict(
-      'Estimates are made once the design is closed, so that nobody stops when the figures please.',
-      { found: `it is ${design.state}`, wanted: 'closed' },
-      'not-closed',
-    );
-  }
+  requireClosed(design);
   const points = await loadAnsweredPoints(app, design.id);
   const project = await app.db.getRepository(Project).findOneByOrFail({ id: design.projectId });
   const { strata } = design;
@@ -102,7 +106,7 @@ export async function estimateDesign(app: App, design: ReferenceDesign): Promise
   const unsettled = points.length - units.length;
   const empty = strata.filter((_, h) => usedOf[h] === 0).map(({ name }) => name);
   return {
-    ...{ designId: design.id, runId: design.runId, digest: design.digest },
+    ...{ designId: design.id, runId: design.runId, digest: design.digest ?? '' },
     design: {
       ...{ n: points.length, used: units.length, unsettled, seed: design.seed },
       decided: points.filter(({ settled }) => settled?.by === 'decision').length,

@@ -275,6 +275,20 @@ export const disagreementListSchema = z.object({
   undecided: z.number().int(),
 });
 
+/** A cell of the matrix: class code the map shows, and reference class. */
+export const cellPointsQuerySchema = z.object({ mapped: z.coerce.number().int(), reference: idSchema });
+/** Points behind a cell of the matrix of a closed design. */
+export const cellPointsSchema = z.object({
+  points: z.array(
+    disagreementSchema.shape.point.extend({
+      settledBy: z.enum(['agreement', 'decision']),
+      answers: disagreementSchema.shape.answers,
+      note: z.string(),
+    }),
+  ),
+});
+export type CellPoint = z.infer<typeof cellPointsSchema>['points'][number];
+
 /** CSV with a heading: number or lon,lat; class_code or class; optional alternate_code or alternate, confidence, note. */
 export const importAnswersSchema = z
   .object({ csv: z.string().min(1, 'The file is empty.').max(6_000_000), dryRun: z.boolean().default(false) })

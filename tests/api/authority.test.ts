@@ -150,6 +150,7 @@ const TABLE: Record<string, Row> = {
   'designs.estimates': ACCURACY,
   'designs.estimates-csv': ACCURACY,
   'designs.agreement': ACCURACY,
+  'designs.cell': ACCURACY,
   'designs.compare': ACCURACY,
   'designs.points-csv': ACCURACY,
   'events.stream': TEAM,

@@ -1,19 +1,23 @@
 import {
   agreementSchema,
+  cellPointsQuerySchema,
+  cellPointsSchema,
   compareMapsQuerySchema,
   estimatesSchema,
   mapComparisonSchema,
 } from '../../../shared/contracts/reference.ts';
+import { presentCellPoint } from '../../presenters/present-design.ts';
 import { measureAgreement } from '../../services/design-agreement.ts';
 import { compareRuns } from '../../services/design-comparison.ts';
 import { requireMapsShown } from '../../services/design-blindness.ts';
 import { writeEstimatesCsv, writePointsCsv } from '../../services/design-csv.ts';
 import { estimateDesign } from '../../services/design-estimates.ts';
+import { listCellPoints } from '../../services/design-cell.ts';
 import { loadAnsweredPoints } from '../../services/design-settle.ts';
 import type { Response } from 'express';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
-import { designParams, findDesignTarget } from './find-design.ts';
+import { designParams, findDesignTarget, findPlace } from './find-design.ts';
 
 const estimates = { kind: 'project', action: 'design.estimates', find: findDesignTarget } as const;
 const read = { kind: 'project', action: 'design.read', find: findDesignTarget } as const;
@@ -62,6 +66,21 @@ const estimateRoutes = [
     query: compareMapsQuerySchema,
     answer: mapComparisonSchema,
     handle: ({ app, target, query }) => compareRuns(app, target.design, query.runId),
+  }),
+  route({
+    id: 'designs.cell',
+    method: 'get',
+    path: '/designs/:designId/cell',
+    summary: 'The reference points behind a cell of the matrix',
+    access: estimates,
+    params: designParams,
+    query: cellPointsQuerySchema,
+    answer: cellPointsSchema,
+    async handle({ app, query, target: { design } }) {
+      const points = await listCellPoints(app, design, query.mapped, query.reference);
+      const placed = await findPlace(app, design);
+      return { points: points.map((point) => presentCellPoint(design, placed, point)) };
+    },
   }),
 ].map(hideWhileInterpreting);
 

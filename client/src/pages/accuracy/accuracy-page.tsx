@@ -1,34 +1,38 @@
 import { Download, Printer } from 'lucide-react';
 import { Link, useSearchParams } from 'react-router-dom';
-import { type AccuracyUnit, accuracyUnitSchema } from '../../../../shared/contracts/accuracy.ts';
+import type { DesignList } from '../../../../shared/contracts/reference.ts';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import { PageHeader } from '../../components/layout/page-header.tsx';
 import { ReadingPage } from '../../components/layout/reading-page.tsx';
 import { ForbiddenState, NotFoundState } from '../../components/ui/access-states.tsx';
 import { buttonClass } from '../../components/ui/button.tsx';
+import { Callout } from '../../components/ui/callout.tsx';
 import { EmptyState } from '../../components/ui/empty-state.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { IconButton } from '../../components/ui/icon-button.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
-import { Segmented } from '../../components/ui/segmented.tsx';
 import { Select } from '../../components/ui/select.tsx';
-import { AccuracyReport } from '../../features/accuracy/accuracy-report.tsx';
-import { useAccuracy } from '../../features/accuracy/get-accuracy.ts';
+import { DesignList as DesignListing } from '../../features/designs/design-list.tsx';
+import { useDesigns } from '../../features/designs/list-designs.ts';
 import { useRuns } from '../../features/runs/list-runs.ts';
-import { describeRecipe, runTitle } from '../../features/runs/recipe-text.ts';
+import { runTitle } from '../../features/runs/recipe-text.ts';
 import { apiUrl } from '../../lib/fetch-json.ts';
 import { formatPercent } from '../../lib/format.ts';
 import { paths } from '../../lib/paths.ts';
 import { useClasses } from '../../lib/project/classes-query.ts';
 import { useProject } from '../../lib/project/project-context.ts';
+import { DesignEstimates } from './design-estimates.tsx';
+import { HeldOutAccuracy } from './held-out-accuracy.tsx';
+import { NoEstimates } from './no-estimates.tsx';
 
 const TITLE = 'Accuracy';
 
-/** How well a run's map agrees with the samples held out from it; `?run=` and `?unit=` choose. */
+/** How good a run's map is: from reference points, and from held-out samples; `?run=`, `?design=` and `?unit=` choose. */
 export function AccuracyPage() {
   const { id, abilities } = useProject();
   const [query] = useSearchParams();
   const runs = useRuns(id, abilities.readAccuracy && abilities.readRuns);
+  const designs = useDesigns(id, abilities.readAccuracy);
   if (!abilities.readAccuracy) {
     return (
       <Plain>
@@ -39,24 +43,36 @@ export function AccuracyPage() {
       </Plain>
     );
   }
-  if (runs.isPending) {
+  const failed = [runs, designs].find((one) => one.isError && !one.data);
+  if (failed) {
+    return (
+      <Plain>
+        <ErrorState error={failed.error} onRetry={() => void failed.refetch()} />
+      </Plain>
+    );
+  }
+  if (!runs.data || !designs.data) {
     return (
       <Plain>
         <PendingState label="Loading runs" rows={3} />
       </Plain>
     );
   }
-  if (runs.isError && !runs.data) {
+  if (designs.data.mapsWithheld) {
     return (
       <Plain>
-        <ErrorState error={runs.error} onRetry={() => void runs.refetch()} />
+        <Callout tone="beware" title="Kept from you while you interpret." className="mb-6 max-w-3xl">
+          You may interpret the points of an open reference design, so no map, area or accuracy of this project is shown
+          to you until it is closed. That keeps the check blind.
+        </Callout>
+        <DesignListing designs={designs.data.designs} />
       </Plain>
     );
   }
   const finished = runs.data.filter((run) => run.job.state === 'finished').toSorted((a, b) => b.number - a.number);
   const wantedId = query.get('run');
   const run = wantedId ? finished.find((one) => one.id === wantedId) : finished[0];
-  if (run) return <RunAccuracy run={run} finished={finished} />;
+  if (run) return <RunAccuracy key={run.id} run={run} finished={finished} list={designs.data} />;
   return (
     <Plain>
       {finished.length > 0 ? (
@@ -91,15 +107,21 @@ function Plain({ children }: { children: React.ReactNode }) {
   return <ReadingPage header={<PageHeader title={TITLE} />}>{children}</ReadingPage>;
 }
 
-function RunAccuracy({ run, finished }: { run: Run; finished: readonly Run[] }) {
+interface RunAccuracyProps {
+  run: Run;
+  finished: readonly Run[];
+  list: DesignList;
+}
+
+/** Two kinds of evidence, one below the other and never mixed: reference points first, then held-out samples. */
+function RunAccuracy({ run, finished, list }: RunAccuracyProps) {
   const project = useProject();
   const [query, setQuery] = useSearchParams();
-  const parsed = accuracyUnitSchema.safeParse(query.get('unit'));
-  const unit: AccuracyUnit = parsed.success ? parsed.data : 'pixel';
-  const accuracy = useAccuracy(project.id, run.id, unit);
   const classes = useClasses(project.id);
-  const choose = (next: { run?: string; unit?: AccuracyUnit }) =>
-    setQuery({ run: next.run ?? run.id, unit: next.unit ?? unit }, { replace: true });
+  const positions = new Map(classes.data?.map(({ id, position }) => [id, position]));
+  const ofRun = list.designs.filter(({ runId }) => runId === run.id);
+  const closed = ofRun.filter(({ state }) => state === 'closed');
+  const design = closed.find(({ id }) => id === query.get('design')) ?? closed[0];
   return (
     <ReadingPage
       header={
@@ -108,15 +130,15 @@ function RunAccuracy({ run, finished }: { run: Run; finished: readonly Run[] }) 
           action={
             <>
               <IconButton label="Print" kind="secondary" icon={<Printer />} onClick={() => window.print()} />
-              <a
-                href={apiUrl(`/runs/${run.id}/accuracy.csv`, { unit })}
-                download
-                className={buttonClass('secondary')}
-                aria-label="Download the figures as CSV"
-              >
-                <Download aria-hidden />
-                CSV
-              </a>
+              {design && <EstimateDownload designId={design.id} />}
+              {list.abilities.plan && (
+                <Link
+                  to={paths.newDesign(project.id, run.id)}
+                  className={buttonClass(ofRun.length === 0 ? 'primary' : 'secondary')}
+                >
+                  Plan reference points
+                </Link>
+              )}
             </>
           }
         >
@@ -125,42 +147,55 @@ function RunAccuracy({ run, finished }: { run: Run; finished: readonly Run[] }) 
             size="sm"
             className="w-auto! max-w-64"
             value={run.id}
-            onChange={(runId) => choose({ run: runId })}
+            onChange={(runId) => setQuery({ run: runId }, { replace: true })}
             options={finished.map((one) => ({ value: one.id, label: runLabel(one) }))}
-          />
-          <Segmented<AccuracyUnit>
-            label="Counted by"
-            value={unit}
-            onChange={(next) => choose({ unit: next })}
-            options={[
-              { value: 'pixel', label: 'By pixel' },
-              { value: 'polygon', label: 'By polygon' },
-            ]}
           />
         </PageHeader>
       }
     >
-      {accuracy.isPending && (
-        <>
-          <PendingState label="Loading the accuracy" rows={3} />
-          <PendingState label="Loading the matrix" shape="table" rows={8} className="mt-10" />
-        </>
-      )}
-      {accuracy.isError && !accuracy.data && (
-        <ErrorState error={accuracy.error} onRetry={() => void accuracy.refetch()} />
-      )}
-      {accuracy.data && (
-        <AccuracyReport
-          key={`${accuracy.data.runId} ${accuracy.data.unit}`}
-          projectId={project.id}
-          accuracy={accuracy.data}
-          runLine={[runTitle(run), run.name, run.sceneName, describeRecipe(run.recipe)].filter(Boolean).join(' · ')}
-          runNumber={run.number}
-          target={project.targetOverallAccuracy}
-          scheme={classes.data ?? []}
-        />
-      )}
+      <div className="space-y-12">
+        <section aria-labelledby="from-points">
+          <h2 id="from-points" className="mb-4 border-b-2 border-ink pb-1 text-xl font-semibold">
+            From reference points
+          </h2>
+          {design ? (
+            <DesignEstimates
+              design={design}
+              positions={positions}
+              others={finished.filter(({ id }) => id !== run.id)}
+            />
+          ) : (
+            <NoEstimates run={run} designs={ofRun} mayPlan={list.abilities.plan} />
+          )}
+          {ofRun.length > 0 && (
+            <div className="mt-8">
+              <h3 className="mb-2 text-lg font-semibold">Reference designs of this run</h3>
+              <DesignListing designs={ofRun} />
+            </div>
+          )}
+        </section>
+        <section aria-labelledby="from-held-out">
+          <h2 id="from-held-out" className="mb-4 border-b-2 border-ink pb-1 text-xl font-semibold">
+            From held-out samples
+          </h2>
+          <HeldOutAccuracy run={run} scheme={classes.data ?? []} />
+        </section>
+      </div>
     </ReadingPage>
+  );
+}
+
+function EstimateDownload({ designId }: { designId: string }) {
+  return (
+    <a
+      href={apiUrl(`/designs/${designId}/estimates.csv`)}
+      download
+      className={buttonClass('secondary')}
+      aria-label="Download the estimates as CSV"
+    >
+      <Download aria-hidden />
+      CSV
+    </a>
   );
 }
 

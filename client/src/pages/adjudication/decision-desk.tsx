@@ -6,8 +6,8 @@ import type { Design, disagreementListSchema } from '../../../../shared/contract
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { buttonClass } from '../../components/ui/button.tsx';
 import { designTitle } from '../../features/designs/design-state.tsx';
-import { useContextViews } from '../../features/interpretation/use-context-views.ts';
-import { ViewPicker } from '../../features/interpretation/view-picker.tsx';
+import { useContextViews } from '../../components/place/use-context-views.ts';
+import { ViewPicker } from '../../components/place/view-picker.tsx';
 import { classNames } from '../../lib/class-names.ts';
 import { formatCount } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';

@@ -17,9 +17,9 @@ import {
 } from '../../features/interpretation/answer-draft.ts';
 import { AnswerForm } from '../../features/interpretation/answer-form.tsx';
 import { usePutAnswer, useSkipPoint } from '../../features/interpretation/blind-point-queries.ts';
-import { ContextViews } from '../../features/interpretation/context-views.tsx';
-import { PointSpectra } from '../../features/interpretation/point-spectra.tsx';
-import type { useContextViews } from '../../features/interpretation/use-context-views.ts';
+import { ContextViews } from '../../components/place/context-views.tsx';
+import { PointSpectra } from '../../components/place/point-spectra.tsx';
+import type { useContextViews } from '../../components/place/use-context-views.ts';
 import { formatCoordinates } from '../../lib/format-coordinates.ts';
 import { type KeyMap, useKeys } from '../../lib/keys.ts';
 

@@ -1,7 +1,7 @@
 import { Images } from 'lucide-react';
-import { Button } from '../../components/ui/button.tsx';
-import { Checkbox } from '../../components/ui/checkbox.tsx';
-import { Popover } from '../../components/ui/popover.tsx';
+import { Button } from '../ui/button.tsx';
+import { Checkbox } from '../ui/checkbox.tsx';
+import { Popover } from '../ui/popover.tsx';
 import type { ContextView } from './context-choice.ts';
 
 export interface ViewPickerProps {

@@ -3,10 +3,10 @@ import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import { BAND_QUANTITIES } from '../../../../shared/constants/bands.ts';
 import { drawingMeasureSchema } from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
-import { SpectralProfile } from '../../components/charts/spectral-profile.tsx';
-import type { SpectralSeries } from '../../components/charts/spectral-series.ts';
-import { ErrorState } from '../../components/ui/error-state.tsx';
-import { PendingState } from '../../components/ui/pending-state.tsx';
+import { SpectralProfile } from '../charts/spectral-profile.tsx';
+import type { SpectralSeries } from '../charts/spectral-series.ts';
+import { ErrorState } from '../ui/error-state.tsx';
+import { PendingState } from '../ui/pending-state.tsx';
 import { fetchJson } from '../../lib/fetch-json.ts';
 import { projectKey } from '../../lib/project/project-query.ts';
 

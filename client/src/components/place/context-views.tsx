@@ -1,5 +1,5 @@
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
-import { ContextMap } from '../../components/map/context-map.tsx';
+import { ContextMap } from '../map/context-map.tsx';
 import { formatCalendarDate } from '../../lib/format-date.ts';
 import type { ContextView } from './context-choice.ts';
 

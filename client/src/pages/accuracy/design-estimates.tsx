@@ -1,0 +1,64 @@
+import type { CellPoint, Design } from '../../../../shared/contracts/reference.ts';
+import type { Run } from '../../../../shared/contracts/run.ts';
+import { ContextViews } from '../../components/place/context-views.tsx';
+import { PointSpectra } from '../../components/place/point-spectra.tsx';
+import { useContextViews } from '../../components/place/use-context-views.ts';
+import { Section } from '../../components/layout/reading-page.tsx';
+import { ErrorState } from '../../components/ui/error-state.tsx';
+import { PendingState } from '../../components/ui/pending-state.tsx';
+import { designTitle } from '../../features/designs/design-state.tsx';
+import { EstimateReport } from '../../features/estimates/estimate-report.tsx';
+import { useEstimates } from '../../features/estimates/get-estimates.ts';
+import { MapComparisonPart } from '../../features/estimates/map-comparison-part.tsx';
+import { formatDateTime } from '../../lib/format-date.ts';
+import { useProject } from '../../lib/project/project-context.ts';
+import { useScenes } from '../../lib/project/scenes-query.ts';
+
+export interface DesignEstimatesProps {
+  design: Design;
+  positions: ReadonlyMap<string, number>;
+  /** Other finished runs, for a comparison on the same points. */
+  others: readonly Run[];
+}
+
+/** The estimates of a closed design, and other maps on the same points. */
+export function DesignEstimates({ design, positions, others }: DesignEstimatesProps) {
+  const { id } = useProject();
+  const estimates = useEstimates(id, design.id);
+  if (estimates.isPending) return <PendingState label="Computing the estimates" rows={6} />;
+  if (estimates.isError) return <ErrorState error={estimates.error} onRetry={() => void estimates.refetch()} />;
+  const closedAt = design.closedAt ? `, closed ${formatDateTime(design.closedAt)}` : '';
+  return (
+    <>
+      <EstimateReport
+        key={design.id}
+        projectId={id}
+        estimates={estimates.data}
+        designLine={`${designTitle(design)}${closedAt}`}
+        positions={positions}
+        renderPlace={(point) => <PlaceOfPoint key={point.id} point={point} />}
+      />
+      {others.length > 0 && (
+        <Section title="Another map on the same points" className="mt-9">
+          <MapComparisonPart projectId={id} designId={design.id} runs={others} />
+        </Section>
+      )}
+    </>
+  );
+}
+
+function PlaceOfPoint({ point }: { point: CellPoint }) {
+  const { id } = useProject();
+  const scenes = useScenes(id);
+  const ready = scenes.data?.filter(({ state }) => state === 'ready') ?? [];
+  const { shown } = useContextViews(id, ready);
+  if (!scenes.data) return <PendingState label="Loading the scenes" shape="block" />;
+  return (
+    <div className="space-y-3">
+      <div className="h-52">
+        <ContextViews place={point} views={shown.slice(0, 2)} zoomSteps={-1} />
+      </div>
+      <PointSpectra projectId={id} scenes={ready} outline={point.outline} outline3={point.outline3} />
+    </div>
+  );
+}
