@@ -16,6 +16,7 @@ export const DEMO_PEOPLE: readonly DemoPerson[] = [
   { email: 'labeller-b@vennory.example', name: 'Labeller B', roles: ['labeller'] },
   { email: 'modeller@vennory.example', name: 'Modeller', roles: ['modeller'] },
   { email: 'reviewer@vennory.example', name: 'Reviewer', roles: ['reviewer'] },
+  { email: 'reviewer-b@vennory.example', name: 'Reviewer B', roles: ['reviewer'] },
   { email: 'client@vennory.example', name: 'Client', roles: ['client'] },
   { email: 'admin@vennory.example', name: 'Site administrator', roles: [], siteAdmin: true },
 ];

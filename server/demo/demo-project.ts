@@ -16,6 +16,8 @@ export interface DemoActors {
   labellerA: string;
   labellerB: string;
   modeller: string;
+  reviewer: string;
+  reviewerB: string;
 }
 
 export async function addDemoPeople(app: App): Promise<DemoActors> {
@@ -26,8 +28,8 @@ export async function addDemoPeople(app: App): Promise<DemoActors> {
     const user = await users.save(users.create({ email, name, siteAdmin, passwordHash, closedAt: null }));
     ids.push(user.id);
   }
-  const [lead = '', labellerA = '', labellerB = '', modeller = ''] = ids;
-  return { lead, labellerA, labellerB, modeller };
+  const [lead = '', labellerA = '', labellerB = '', modeller = '', reviewer = '', reviewerB = ''] = ids;
+  return { lead, labellerA, labellerB, modeller, reviewer, reviewerB };
 }
 
 export async function createDemoProject(app: App, leadId: string): Promise<Project> {

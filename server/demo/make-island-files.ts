@@ -9,6 +9,8 @@ import { writeGeoTiffFromRaw } from '../raster/raw-to-geotiff.ts';
 export interface IslandFiles {
   scenes: { name: string; acquiredOn: string; bands: (Omit<IslandBand, 'dn'> & { path: string })[] }[];
   samples: HumanSample[];
+  /** True class of each pixel, 1–10, row-major; the scenes' own grid. */
+  trueClass: Uint8Array;
 }
 
 /**
@@ -37,5 +39,5 @@ export default async function makeIslandFiles(task: { dir: string; wkt: string }
     }
     scenes.push({ name, acquiredOn, bands: written });
   }
-  return { scenes, samples: drawHumanSamples(island) };
+  return { scenes, samples: drawHumanSamples(island), trueClass: island.trueClass };
 }
