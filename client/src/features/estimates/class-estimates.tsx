@@ -4,7 +4,7 @@ import { IntervalBar } from '../../components/charts/interval-bar.tsx';
 import { HowComputed } from '../../components/figures/how-computed.tsx';
 import { ClassSwatch } from '../../components/ui/class-swatch.tsx';
 import { Popover } from '../../components/ui/popover.tsx';
-import { figurePhrase, quotedInterval, sharePhrase } from './figure-text.ts';
+import { figureParts, quotedInterval } from './figure-text.ts';
 
 export interface ClassEstimatesProps {
   estimates: Estimates;
@@ -94,17 +94,9 @@ export function ClassEstimates({ estimates, positions }: ClassEstimatesProps) {
                       label={`${row.name}, user’s accuracy in %`}
                     />
                   </td>
-                  <FigureCell
-                    name={`User’s accuracy of ${row.name}`}
-                    figure={row.users}
-                    text={sharePhrase(row.users)}
-                  />
-                  <FigureCell
-                    name={`Producer’s accuracy of ${row.name}`}
-                    figure={row.producers}
-                    text={sharePhrase(row.producers)}
-                  />
-                  <FigureCell name={`F1 of ${row.name}`} figure={row.f1} text={figurePhrase(row.f1, 2)} />
+                  <FigureCell name={`User’s accuracy of ${row.name}`} figure={row.users} />
+                  <FigureCell name={`Producer’s accuracy of ${row.name}`} figure={row.producers} />
+                  <FigureCell name={`F1 of ${row.name}`} figure={row.f1} isShare={false} />
                   <td className="whitespace-nowrap">
                     {row.mappedPoints}
                     <span className="block text-xs text-ink-soft">{row.referencePoints} of reference</span>
@@ -119,10 +111,12 @@ export function ClassEstimates({ estimates, positions }: ClassEstimatesProps) {
   );
 }
 
-function FigureCell({ name, figure, text }: { name: string; figure: DesignFigure; text: string }) {
+function FigureCell({ name, figure, isShare = true }: { name: string; figure: DesignFigure; isShare?: boolean }) {
+  const { value, interval } = figureParts(figure, isShare);
   return (
-    <td>
-      <HowComputed name={name} how={figure.how} trigger={text} />
+    <td className="whitespace-nowrap">
+      <HowComputed name={name} how={figure.how} trigger={value} />
+      {interval && <span className="block text-xs text-ink-soft">{interval}</span>}
     </td>
   );
 }

@@ -69,18 +69,19 @@ export function EstimateReport({ projectId, estimates, designLine, positions, re
 }
 
 function Beware({ estimates }: { estimates: Estimates }) {
-  const warned = estimates.perClass.flatMap(({ name, warning }) => (warning ? [{ name, warning }] : []));
+  const warned = estimates.perClass.filter(({ warning }) => warning !== null).map(({ name }) => name);
   return (
     <section aria-labelledby="beware-of" className="text-sm">
       <h3 id="beware-of" className="text-lg font-semibold">
         What to beware of
       </h3>
       <ul className="mt-2 list-disc space-y-1.5 pl-5">
-        {warned.map(({ name, warning }) => (
-          <li key={name}>
-            <span className="font-medium">{name}:</span> {warning}
+        {warned.length > 0 && (
+          <li>
+            <span className="font-medium">Few points:</span> {warned.join(', ')}. Fewer than 50 points are mapped as the
+            class or are of it (rule of thumb, Congalton 1991), so go by the intervals, not by the figures.
           </li>
-        ))}
+        )}
         {estimates.cautions.map((text) => (
           <li key={text} className="text-ink-soft">
             {text}

@@ -7,13 +7,15 @@ export function quotedInterval(figure: DesignFigure): { low: number; high: numbe
   return figure.low === null || figure.high === null ? null : { low: figure.low, high: figure.high };
 }
 
-/** A share as per cent with its interval: "84.0 % (79.8 to 88.2)"; "undefined" where it is. */
-export function sharePhrase(figure: DesignFigure, decimals = 1): string {
-  if (figure.value === null) return 'undefined';
-  const value = `${formatNumber(figure.value * 100, decimals)} %`;
-  const interval = quotedInterval(figure);
-  if (!interval) return `${value} (no interval)`;
-  return `${value} (${formatNumber(interval.low * 100, decimals)} to ${formatNumber(interval.high * 100, decimals)})`;
+/** A figure and its interval apart: as per cent, or as a plain number of two decimals. */
+export function figureParts(figure: DesignFigure, isShare: boolean): { value: string; interval: string | null } {
+  if (figure.value === null) return { value: 'undefined', interval: null };
+  const format = (number: number) => (isShare ? formatNumber(number * 100, 1) : formatNumber(number, 2));
+  const quoted = quotedInterval(figure);
+  return {
+    value: isShare ? `${format(figure.value)} %` : format(figure.value),
+    interval: quoted ? `${format(quoted.low)} to ${format(quoted.high)}` : 'no interval',
+  };
 }
 
 /** A plain figure with its interval. */
