@@ -1,3 +1,4 @@
+import type { CSSProperties } from 'react';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import { ContextMap } from '../map/context-map.tsx';
 import { formatCalendarDate } from '../../lib/format-date.ts';
@@ -18,7 +19,8 @@ export interface ContextViewsProps {
   zoomSteps: number;
 }
 
-const PIXEL_ON_SCREEN = 26;
+/** Near enough to see the pixel, far enough to see what it is part of. */
+const PIXEL_ON_SCREEN = 14;
 const TILE = 256;
 
 /** The same place in several composites and dates, at one scale. */
@@ -27,7 +29,10 @@ export function ContextViews({ place, views, zoomSteps }: ContextViewsProps) {
   const [lon, lat] = place.position;
   const outlines = [place.outline, place.outline3, place.outline5];
   return (
-    <ul className="grid h-full min-h-0 auto-rows-fr grid-cols-[repeat(auto-fit,minmax(15rem,1fr))] gap-2">
+    <ul
+      style={{ '--columns': Math.min(3, widestRow(views)) } as CSSProperties}
+      className="grid h-full min-h-0 auto-rows-fr grid-cols-[repeat(var(--columns),minmax(0,1fr))] gap-2 max-lg:grid-cols-2"
+    >
       {views.map(({ id, scene, view, composite }) => (
         <li key={id} className="relative min-h-44 overflow-hidden rounded-lg border border-line">
           <ContextMap
@@ -46,6 +51,13 @@ export function ContextViews({ place, views, zoomSteps }: ContextViewsProps) {
       ))}
     </ul>
   );
+}
+
+/** Most pictures of one scene: each date gets a row of its own where three fit. */
+function widestRow(views: readonly ContextView[]): number {
+  const counts = new Map<string, number>();
+  for (const { scene } of views) counts.set(scene.id, (counts.get(scene.id) ?? 0) + 1);
+  return Math.max(1, ...counts.values());
 }
 
 /** The whole zoom step at which one pixel is nearest to a good size on the screen. */

@@ -8,13 +8,13 @@ import {
 import { fetchJson } from '../../lib/fetch-json.ts';
 import { projectKey } from '../../lib/project/project-query.ts';
 
-const checkKey = (projectId: string, designId: string, ...rest: readonly unknown[]) =>
-  projectKey(projectId, 'accuracy', 'blind-check', designId, ...rest);
+/** Outside the project's topics: what others do must not change the point under somebody's eyes. */
+const checkKey = (designId: string, ...rest: readonly unknown[]) => ['blind-check', designId, ...rest];
 
 /** The point to look at: one by its number, or with null the next that waits. */
-const pointQuery = (projectId: string, designId: string, number: number | null) =>
+const pointQuery = (designId: string, number: number | null) =>
   queryOptions({
-    queryKey: checkKey(projectId, designId, number ?? 'next'),
+    queryKey: checkKey(designId, number ?? 'next'),
     queryFn: async ({ signal }) => {
       if (number === null) return fetchJson(`/designs/${designId}/next`, nextPointSchema, { signal });
       const point = await fetchJson(`/designs/${designId}/points/${number}`, blindPointSchema, { signal });
@@ -25,8 +25,8 @@ const pointQuery = (projectId: string, designId: string, number: number | null) 
     refetchOnWindowFocus: false,
   });
 
-export function useBlindPoint(projectId: string, designId: string, number: number | null) {
-  return useQuery(pointQuery(projectId, designId, number));
+export function useBlindPoint(designId: string, number: number | null) {
+  return useQuery(pointQuery(designId, number));
 }
 
 /** Stores an answer, and forgets what was asked before so that the next point is the server's choice. */
@@ -36,18 +36,18 @@ export function usePutAnswer(projectId: string, designId: string) {
     mutationFn: ({ point, answer }: { point: BlindPoint; answer: PutAnswer }) =>
       fetchJson(`/points/${point.id}/answer`, blindPointSchema, { method: 'PUT', body: answer }),
     onSuccess: () => {
-      queryClient.removeQueries({ queryKey: checkKey(projectId, designId), type: 'inactive' });
+      queryClient.removeQueries({ queryKey: checkKey(designId), type: 'inactive' });
       void queryClient.invalidateQueries({ queryKey: projectKey(projectId, 'designs') });
     },
   });
 }
 
 /** Puts a point at the end of the viewer's order. */
-export function useSkipPoint(projectId: string, designId: string) {
+export function useSkipPoint(designId: string) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: (point: BlindPoint) =>
       fetchJson(`/points/${point.id}/skip`, nextPointSchema, { method: 'POST', body: {} }),
-    onSuccess: () => queryClient.removeQueries({ queryKey: checkKey(projectId, designId), type: 'inactive' }),
+    onSuccess: () => queryClient.removeQueries({ queryKey: checkKey(designId), type: 'inactive' }),
   });
 }

@@ -32,7 +32,7 @@ export function CheckDesk({ design, scenes, scheme }: CheckDeskProps) {
   const [number, setNumber] = useState<number | null>(null);
   const [areKeysOpen, setAreKeysOpen] = useState(false);
   const context = useContextViews(projectId, scenes);
-  const current = useBlindPoint(projectId, id, number);
+  const current = useBlindPoint(id, number);
   const progress = current.data?.progress;
   useTitle(['Blind check', designTitle(design)], progress ? progress.answered / Math.max(1, progress.total) : null);
   useKeys({

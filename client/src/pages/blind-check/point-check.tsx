@@ -53,7 +53,7 @@ export function PointCheck({ design, point, classes, scenes, context, onGo, onNe
   const [beganAt] = useState(() => Date.now());
   const note = useRef<HTMLTextAreaElement>(null);
   const put = usePutAnswer(design.projectId, design.id);
-  const skip = useSkipPoint(design.projectId, design.id);
+  const skip = useSkipPoint(design.id);
   const change = (next: AnswerDraft) => {
     setDraft(next);
     keepDraft(point.id, next);
