@@ -21,6 +21,7 @@ import { Scene } from './entities/scene.ts';
 import { Session } from './entities/session.ts';
 import { SiteSetting } from './entities/site-setting.ts';
 import { User } from './entities/user.ts';
+import { ZoneLayer } from './entities/zone-layer.ts';
 import { migrations } from './migrations/index.ts';
 import { RetryingDataSource } from './retrying-data-source.ts';
 
@@ -45,6 +46,7 @@ export const entities = [
   Session,
   SiteSetting,
   User,
+  ZoneLayer,
 ];
 
 /** A MariaDB connection pool with our entities; the schema comes from migrations only. Call `initialize()`. */

@@ -3,6 +3,7 @@ import { SiteSettings1796100000000 } from './1796100000000-site-settings.ts';
 import { SceneGuessedRoles1796101200000 } from './1796101200000-scene-guessed-roles.ts';
 import { RunSnapshot1796101500000 } from './1796101500000-run-snapshot.ts';
 import { ReferenceDesigns1796104000000 } from './1796104000000-reference-designs.ts';
+import { ZoneLayers1796117000000 } from './1796117000000-zone-layers.ts';
 
 /** In the order they run; a new one goes to the end. */
 export const migrations = [
@@ -11,4 +12,5 @@ export const migrations = [
   SceneGuessedRoles1796101200000,
   RunSnapshot1796101500000,
   ReferenceDesigns1796104000000,
+  ZoneLayers1796117000000,
 ];

@@ -24,6 +24,7 @@ export function presentDesign(
     ...{ id: design.id, projectId: design.projectId, runId: design.runId, runNumber: design.run.number },
     ...{ number: design.number, name: design.name, state, n: progress.points, classes: design.classes },
     ...{ answersPerPoint: design.answersPerPoint, minSpacingMeters: design.minSpacingMeters },
+    strataKind: design.plan.strata,
     ...{ spacingEffect: describeSpacing(design.minSpacingMeters), digest: design.digest },
     augmentsId: design.augmentsId,
     strata: isMapWithheld ? null : design.strata,

@@ -1,7 +1,8 @@
 import { spawn } from 'node:child_process';
 import { isAbsolute } from 'node:path';
 
-export type GdalTool = 'gdalinfo' | 'gdal_translate' | 'gdaladdo' | 'gdalsrsinfo' | 'gdaltransform' | 'gdalwarp';
+export type GdalTool =
+  'gdalinfo' | 'gdal_translate' | 'gdaladdo' | 'gdalsrsinfo' | 'gdaltransform' | 'gdalwarp' | 'ogr2ogr' | 'ogrinfo';
 
 /** Why a GDAL tool did not deliver. */
 export type GdalFailure = 'failed' | 'timeout' | 'aborted' | 'too-much-output' | 'not-installed';
@@ -41,10 +42,15 @@ export interface GdalRunOptions {
   config?: Record<string, string>;
 }
 
-/** The only drivers that may open an upload; GTiff also reads COG. */
-const uploadDrivers = ['GTiff', 'JP2OpenJPEG'] as const;
-
-const toolsWithInputFormat: readonly GdalTool[] = ['gdalinfo', 'gdal_translate'];
+/** The only drivers that may open an upload, by tool; GTiff also reads COG. */
+const rasterDrivers = ['GTiff', 'JP2OpenJPEG'];
+const vectorDrivers = ['GeoJSON', 'GPKG', 'ESRI Shapefile', 'LIBKML', 'KML'];
+const uploadDrivers: Partial<Record<GdalTool, readonly string[]>> = {
+  gdalinfo: rasterDrivers,
+  gdal_translate: rasterDrivers,
+  ogr2ogr: vectorDrivers,
+  ogrinfo: vectorDrivers,
+};
 const stderrTailBytes = 4000;
 
 const sharedConfig: Record<string, string> = {
@@ -77,8 +83,8 @@ export function runGdal(
   }
   const { timeoutMs = 120_000, memoryBytes = 2 * 1024 ** 3, maxOutputBytes = 16 * 1024 ** 2, signal } = options;
   if (signal?.aborted) return Promise.reject(new GdalProcessError(tool, 'aborted', null, ''));
-  const limitDrivers = options.origin === 'upload' && toolsWithInputFormat.includes(tool);
-  const driverArgs = limitDrivers ? uploadDrivers.flatMap((driver) => ['-if', driver]) : [];
+  const drivers = options.origin === 'upload' ? (uploadDrivers[tool] ?? []) : [];
+  const driverArgs = drivers.flatMap((driver) => ['-if', driver]);
   const cpuSeconds = Math.ceil(timeoutMs / 1000) * 4;
   const limits = [`--as=${memoryBytes}`, `--cpu=${cpuSeconds}`, '--core=0', '--', tool];
 

@@ -12,6 +12,7 @@ import { sampleRoutes } from './samples/routes.ts';
 import { signatureRoutes } from './samples/signature-routes.ts';
 import { sceneRoutes } from './scenes/routes.ts';
 import { sessionRoutes } from './session/routes.ts';
+import { zoneRoutes } from './zones/routes.ts';
 
 /** Every route of the product, in the order the API document lists them. */
 export const routes: readonly Route[] = [
@@ -26,6 +27,7 @@ export const routes: readonly Route[] = [
   ...runRoutes,
   ...accuracyRoutes,
   ...designRoutes,
+  ...zoneRoutes,
   ...eventRoutes,
   ...createOpenApiRoutes(() => routes),
 ];

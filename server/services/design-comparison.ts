@@ -2,14 +2,11 @@ import type { MapComparison } from '../../shared/contracts/reference.ts';
 import { compareMaps, type PairedUnit } from '../analysis/accuracy/compare-maps.ts';
 import type { App } from '../app-context.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
-import type { ReferencePoint } from '../entities/reference-point.ts';
-import type { Run, RunClass } from '../entities/run.ts';
-import { Conflict, InvalidInput, NotFound } from '../errors.ts';
-import { isSameGrid } from '../raster/raster-grid.ts';
-import { requireResult } from './accuracy.ts';
+import type { RunClass } from '../entities/run.ts';
+import { Conflict, InvalidInput } from '../errors.ts';
 import { loadAnsweredPoints } from './design-settle.ts';
-import { findPlannedRun } from './designs.ts';
-import { placeScene } from './run-scene.ts';
+import { haveSamePixels, readCodesAt } from './map-pixels.ts';
+import { findPlannedRun } from './planned-run.ts';
 
 const HOW: MapComparison['how'] = [
   {
@@ -47,7 +44,7 @@ export async function compareRuns(app: App, design: ReferenceDesign, otherRunId:
   const secondCodes = await readCodesAt(
     app,
     second,
-    settled.map(({ point }) => point),
+    settled.map(({ point }) => ({ row: point.pixelRow, column: point.pixelColumn })),
   );
   const units = settled.map(({ point, settled: standing }, i): PairedUnit => ({
     stratum: point.stratum,
@@ -80,27 +77,9 @@ export async function compareRuns(app: App, design: ReferenceDesign, otherRunId:
   };
 }
 
-function haveSamePixels(first: Run, second: Run): boolean {
-  const [a, b] = [placeScene(first.scene), placeScene(second.scene)];
-  return a !== null && b !== null && a.proj4 === b.proj4 && isSameGrid(a.grid, b.grid);
-}
-
 /** Place of a run's code among the design's classes; one past them for what is no class of the design and never right. */
 function indexOfCode(code: number, ofRun: readonly RunClass[], ofDesign: readonly RunClass[]): number {
   const id = ofRun.find((landClass) => landClass.code === code)?.id;
   const index = ofDesign.findIndex((landClass) => landClass.id === id);
   return index < 0 ? ofDesign.length : index;
-}
-
-async function readCodesAt(app: App, run: Run, points: readonly ReferencePoint[]): Promise<number[]> {
-  const band = await app.bands.open(await app.files.localPath(requireResult(run).mapKey));
-  // From the top, so that each block is decoded once.
-  const inOrder = points.map((point, i) => ({ point, i })).sort((a, b) => a.point.pixelRow - b.point.pixelRow);
-  const codes = new Array<number>(points.length).fill(0);
-  for (const { point, i } of inOrder) {
-    const [code] = await band.readWindow(0, point.pixelColumn, point.pixelRow, 1, 1);
-    if (code === undefined) throw new NotFound();
-    codes[i] = code;
-  }
-  return codes;
 }

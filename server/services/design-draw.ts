@@ -1,10 +1,10 @@
 import { createPointFinder, type DrawnPoint, type DrawStratum } from '../analysis/sampling/draw-points.ts';
 import { keepSpacing, SPACING_EFFECT } from '../analysis/sampling/keep-spacing.ts';
-import type { App } from '../app-context.ts';
 import type { DesignStratum } from '../entities/reference-design.ts';
 import type { Run } from '../entities/run.ts';
-import { InvalidInput } from '../errors.ts';
-import { requireResult } from './accuracy.ts';
+import { InvalidInput, NotFound } from '../errors.ts';
+import type { ReadStrata } from './design-strata.ts';
+import { placeScene } from './run-scene.ts';
 
 const STRIP_ROWS = 256;
 const M2_PER_HECTARE = 10_000;
@@ -26,14 +26,13 @@ function toDrawStrata(strata: readonly DesignStratum[]): DrawStratum[] {
 }
 
 /**
- * Draws each stratum's points at random without replacement from the class map, reading it in strips. `existing` points
+ * Draws each stratum's points at random without replacement from the raster of strata, reading it in strips. `existing` points
  * are kept, and a larger draw with the same seed begins with the smaller one's.
  * @throws InvalidInput "spacing-too-large" when a stratum runs out of pixels far enough apart
  */
 export async function drawDesign(
-  app: App,
   run: Run,
-  strata: readonly DesignStratum[],
+  { strata, read }: { strata: readonly DesignStratum[]; read: ReadStrata },
   { seed, minSpacingMeters, existing = [] }: { seed: number; minSpacingMeters: number; existing?: DrawnPoint[] },
 ): Promise<DesignDraw> {
   const sizes = strata.map(({ pixels }) => pixels);
@@ -42,7 +41,7 @@ export async function drawDesign(
   // Without a distance every candidate is kept, so that as many are drawn as are wanted.
   let candidates = wanted.map((n, h) => (spacing > 0 ? Math.min(sizes[h] ?? 0, n * 2 + 20) : n));
   for (;;) {
-    const drawn = await findPoints(app, run, strata, candidates, seed);
+    const drawn = await findPoints(run, { strata, read }, candidates, seed);
     const { kept, nTooNear, nLacking } = keepSpacing(drawn, wanted, spacing, existing);
     if (nLacking.every((n) => n === 0)) return { points: kept, leftOut: nTooNear };
     const empty = strata.filter((_, h) => (nLacking[h] ?? 0) > 0 && (candidates[h] ?? 0) >= (sizes[h] ?? 0));
@@ -67,14 +66,14 @@ function meanPixelAreaM2(strata: readonly DesignStratum[]): number {
 }
 
 async function findPoints(
-  app: App,
   run: Run,
-  strata: readonly DesignStratum[],
+  { strata, read }: { strata: readonly DesignStratum[]; read: ReadStrata },
   wanted: readonly number[],
   seed: number,
 ): Promise<DrawnPoint[]> {
-  const band = await app.bands.open(await app.files.localPath(requireResult(run).mapKey));
-  const { width, height } = band.grid;
+  const placed = placeScene(run.scene);
+  if (!placed) throw new NotFound();
+  const { width, height } = placed.grid;
   const finder = createPointFinder(
     toDrawStrata(strata),
     strata.map(({ pixels }) => pixels),
@@ -83,9 +82,7 @@ async function findPoints(
   );
   for (let firstRow = 0; firstRow < height; firstRow += STRIP_ROWS) {
     const rows = Math.min(STRIP_ROWS, height - firstRow);
-    // The whole map goes by once; its blocks would push others out of the cache.
-    const codes = await band.readWindow(0, 0, firstRow, width, rows, { keep: false });
-    finder.addStrip({ firstRow, width, codes });
+    finder.addStrip({ firstRow, width, codes: await read(firstRow, rows) });
   }
   return finder.points();
 }

@@ -15,19 +15,20 @@ import type { App } from '../app-context.ts';
 import { Project } from '../entities/project.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
 import { Conflict } from '../errors.ts';
+import { requireResult } from './accuracy.ts';
 import { presentFigure, presentPlain } from './design-figures.ts';
 import { loadAnsweredPoints, type AnsweredPoint } from './design-settle.ts';
 
 type Rows = Estimates['rows'];
 
-/** Rows of the matrices: the classes, and what the map left unclassified where points were drawn from it. */
-function listRows({ classes, strata }: Pick<ReferenceDesign, 'classes' | 'strata'>): Rows {
+/** Rows of the matrices: the classes, and what the map left unclassified where there is any. */
+export function listRows({ classes, run }: Pick<ReferenceDesign, 'classes' | 'run'>): Rows {
   const rows: Rows = classes.map(({ id, code, name, colour }) => ({ classId: id, code, name, colour }));
-  const left = strata.find(({ code }) => code === UNCLASSIFIED_CODE);
-  return left ? [...rows, { classId: null, code: left.code, name: left.name, colour: left.colour }] : rows;
+  const isLeft = (requireResult(run).pixelsByCode[UNCLASSIFIED_CODE] ?? 0) > 0;
+  return isLeft ? [...rows, { classId: null, code: UNCLASSIFIED_CODE, name: 'Unclassified', colour: '#808080' }] : rows;
 }
 
-function toUnits(points: readonly AnsweredPoint[], rows: Rows): ReferenceUnit[] {
+export function toUnits(points: readonly AnsweredPoint[], rows: Rows): ReferenceUnit[] {
   const ofClass = new Map(rows.map(({ classId }, i) => [classId, i]));
   const ofCode = new Map(rows.map(({ code }, i) => [code, i]));
   return points.flatMap(({ point, settled }) => {
@@ -89,7 +90,9 @@ export async function estimateDesign(app: App, design: ReferenceDesign): Promise
   const rows = listRows(design);
   const sizes = strata.map(({ pixels, areaHa }) => ({ size: pixels, areaHa }));
   const totalAreaHa = strata.reduce((sum, { areaHa }) => sum + areaHa, 0);
-  const mappedAreaHa = rows.map(({ code }) => strata.find((stratum) => stratum.code === code)?.areaHa ?? 0);
+  // Of the map itself: strata need not be its classes.
+  const { areaHaByCode } = requireResult(design.run);
+  const mappedAreaHa = rows.map(({ code }) => areaHaByCode[code] ?? 0);
   const units = toUnits(points, rows);
   const primary = estimate(units, sizes, rows, mappedAreaHa, 'primary');
   const either = estimate(units, sizes, rows, mappedAreaHa, 'either');

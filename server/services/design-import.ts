@@ -7,7 +7,7 @@ import { ReferencePoint } from '../entities/reference-point.ts';
 import { InvalidInput, NotFound } from '../errors.ts';
 import { requireOpen, writeAnswer, type GivenDetail } from './design-answers.ts';
 import { pixelAt } from './design-places.ts';
-import { findPlannedRun } from './designs.ts';
+import { findPlannedRun } from './planned-run.ts';
 import { readCsv, type CsvRecord } from './read-csv.ts';
 import { placeScene, type PlacedScene } from './run-scene.ts';
 

@@ -1,54 +1,23 @@
-import { NODATA_CODE, UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
 import type { Allocation, DesignPlan, PlanDesign, PlanTarget } from '../../shared/contracts/reference.ts';
 import { allocateSample, expectPrecision } from '../analysis/accuracy/allocate-sample.ts';
 import { planSampleSize, type PlannedStratum } from '../analysis/accuracy/plan-sample-size.ts';
 import { normalQuantile } from '../analysis/accuracy/quantiles.ts';
 import type { DesignStratum } from '../entities/reference-design.ts';
-import type { Run } from '../entities/run.ts';
 import { InvalidInput } from '../errors.ts';
-import { requireResult } from './accuracy.ts';
+import type { PlainStratum } from './design-strata.ts';
 
 /** A variance within a stratum takes two units. */
 const LEAST_PER_STRATUM = 2;
 const MAX_POINTS = 20_000;
 const CURVE_POINTS = 24;
-const UNCLASSIFIED = { name: 'Unclassified', colour: '#808080' };
 
 interface Population {
-  strata: Omit<DesignStratum, 'points' | 'expectedLow' | 'expectedHigh'>[];
+  strata: PlainStratum[];
   planned: PlannedStratum[];
   pixels: number[];
 }
 
-/**
- * The strata of a run: one for each class that is on the map, and one for what the map leaves unclassified. Pixels without
- * data or outside the study area are no part of the population.
- */
-function describePopulation(run: Run, input: Pick<PlanDesign, 'expected' | 'expectedOtherwise'>): Population {
-  const { pixelsByCode, areaHaByCode } = requireResult(run);
-  const unknown = input.expected.findIndex(({ classId }) => !run.classes.some(({ id }) => id === classId));
-  if (unknown >= 0) {
-    throw new InvalidInput('The plan names a class that is not on the map.', {
-      errors: [{ path: `expected.${unknown}.classId`, message: 'This class is not one of the run’s.' }],
-    });
-  }
-  const described = [
-    ...run.classes.map(({ id, code, name, colour }) => ({
-      ...{ classId: id, code, name, colour },
-      expectedUsers: input.expected.find(({ classId }) => classId === id)?.users ?? input.expectedOtherwise,
-    })),
-    { classId: null, code: UNCLASSIFIED_CODE, ...UNCLASSIFIED, expectedUsers: null },
-  ];
-  const present = described
-    .filter(({ code }) => code !== NODATA_CODE && (pixelsByCode[code] ?? 0) > 0)
-    .map((stratum) => ({
-      ...stratum,
-      pixels: pixelsByCode[stratum.code] ?? 0,
-      areaHa: areaHaByCode[stratum.code] ?? 0,
-    }));
-  const totalHa = present.reduce((sum, { areaHa }) => sum + areaHa, 0);
-  if (present.length === 0) throw new InvalidInput('The class map holds no pixel that a point could be drawn from.');
-  const strata = present.map((stratum) => ({ ...stratum, share: stratum.areaHa / totalHa }));
+function describePopulation(strata: PlainStratum[]): Population {
   return {
     strata,
     planned: strata.map(({ share, expectedUsers }) => ({ areaShare: share, expectedUsers: expectedUsers ?? 0 })),
@@ -93,6 +62,13 @@ function findSize(population: Population, target: PlanTarget, rule: Allocation):
   return high;
 }
 
+const STRATA_TEXT = {
+  'map-classes': 'Strata are the classes of the map inside the study area',
+  'from-to':
+    'Strata are what stays and what changes between the two maps; changes of less than 0.5 % of the map are gathered',
+  zones: 'Strata are the zones, and what of the map lies outside them',
+};
+
 const RULE_TEXT: Record<Allocation['kind'], string> = {
   equal: 'the same number to each stratum',
   proportional: 'in proportion to area',
@@ -101,17 +77,17 @@ const RULE_TEXT: Record<Allocation['kind'], string> = {
 };
 
 /**
- * Plans a stratified random sample of a run's class map: n for the target, its allocation, and what to expect of it.
+ * Plans a stratified random sample of the strata: n for the target, its allocation, and what to expect of it.
  *
  * With `atLeast`, points by stratum of an earlier state of the design, no stratum gets fewer than it has.
- * @throws InvalidInput for a class that is not on the map, or more points than may be drawn
+ * @throws InvalidInput for more points than may be drawn
  */
 export function planDesign(
-  run: Run,
+  of: PlainStratum[],
   input: PlanDesign,
   atLeast: readonly number[] | null = null,
 ): { plan: DesignPlan; strata: DesignStratum[] } {
-  const population = describePopulation(run, input);
+  const population = describePopulation(of);
   const { planned, pixels } = population;
   const asked = findSize(population, input.target, input.allocation);
   const points = allocate(population, asked, input.allocation).map((count, h) => Math.max(count, atLeast?.[h] ?? 0));
@@ -141,7 +117,7 @@ export function planDesign(
       ...{ n, nOfTarget, standardError: precision.standardError, halfWidth: precision.halfWidth },
       curve: drawCurve(population, n, input.allocation),
       how: [
-        'Strata are the classes of the map inside the study area; shares are of true area.',
+        `${STRATA_TEXT[typeof input.strata === 'string' ? input.strata : input.strata.kind]}; shares are of true area.`,
         wanted === null
           ? `So many points as were asked for, ${RULE_TEXT[input.allocation.kind]}.`
           : `The least n for which S(O) = √(Σ W² U (1 − U) / (n − 1)) over the strata reaches ${wanted.toPrecision(3)}, shared out ${RULE_TEXT[input.allocation.kind]} (Olofsson et al. 2014, eq. 5 and 13; Cochran 1977).`,

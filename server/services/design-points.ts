@@ -27,7 +27,7 @@ export async function insertPoints(
   manager: EntityManager,
   design: ReferenceDesign,
   run: Run,
-  drawn: readonly DrawnPoint[],
+  { drawn, mapped }: { drawn: readonly DrawnPoint[]; /** What the map shows at each. */ mapped: readonly number[] },
   before: readonly AnsweredPoint[] = [],
   lastNumber = before.length,
 ): Promise<void> {
@@ -38,14 +38,14 @@ export async function insertPoints(
   const order = fresh.map((_, i) => i);
   createRng(design.seed, hashText(`numbers after ${lastNumber}`)).shuffle(order);
   const numberOf = new Map(order.map((place, i) => [fresh[place], lastNumber + i + 1]));
-  const rows = drawn.map((point) => {
+  const rows = drawn.map((point, i) => {
     const pixel = { pixelRow: point.row, pixelColumn: point.column };
     const [lon, lat] = centreOf(placed, pixel);
     const old = known.get(keyOf(point.stratum, point.order));
     return {
       ...{ id: randomUUID(), designId: design.id, number: old?.point.number ?? numberOf.get(point) ?? 0 },
       ...{ stratum: point.stratum, drawOrder: point.order, ...pixel, lon, lat },
-      mappedCode: design.strata[point.stratum]?.code ?? 0,
+      mappedCode: mapped[i] ?? 0,
       ...carryDecision(old),
     };
   });

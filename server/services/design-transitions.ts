@@ -6,7 +6,8 @@ import { Conflict } from '../errors.ts';
 import { requireResult } from './accuracy.ts';
 import { recordActivity } from './activities.ts';
 import { loadAnsweredPoints } from './design-settle.ts';
-import { announceDesign, findPlannedRun, lockDesign } from './designs.ts';
+import { announceDesign, lockDesign } from './designs.ts';
+import { findPlannedRun } from './planned-run.ts';
 
 /** Freezes a draft and opens it to interpretation. @throws Conflict "design-frozen" when it is no draft */
 export async function openDesign(app: App, design: ReferenceDesign, byId: string): Promise<ReferenceDesign> {

@@ -8,13 +8,14 @@ import { ReferenceDesign } from '../entities/reference-design.ts';
 import { ReferencePoint } from '../entities/reference-point.ts';
 import type { Run, RunClass } from '../entities/run.ts';
 import { Conflict, InvalidInput, NotFound } from '../errors.ts';
-import { requireResult } from './accuracy.ts';
 import { recordActivity } from './activities.ts';
 import { drawDesign } from './design-draw.ts';
 import { planDesign } from './design-plan.ts';
+import { openStrata } from './design-strata.ts';
 import { copySettledAnswers, insertPoints, toDrawnPoint } from './design-points.ts';
 import { loadAnsweredPoints } from './design-settle.ts';
-import { findRun } from './runs.ts';
+import { readCodesAt } from './map-pixels.ts';
+import { findPlannedRun } from './planned-run.ts';
 
 const SHOWN = { createdBy: true, run: true } as const;
 const SEEDS = 2 ** 32;
@@ -36,18 +37,6 @@ async function requireDesign(app: App, id: string): Promise<ReferenceDesign> {
   return design;
 }
 
-/** The finished run a plan is for. @throws InvalidInput when it is not of the project, NotFound without a class map */
-export async function findPlannedRun(app: App, projectId: string, runId: string): Promise<Run> {
-  const run = await findRun(app, runId);
-  if (run?.projectId !== projectId) {
-    throw new InvalidInput('There is no such run in this project.', {
-      errors: [{ path: 'runId', message: 'There is no such run in this project.' }],
-    });
-  }
-  requireResult(run);
-  return run;
-}
-
 /** Classes an answer may name: what is there on the ground need not be on the map. */
 async function listAnswerClasses(app: App, run: Run): Promise<RunClass[]> {
   const scheme = await app.db
@@ -67,15 +56,17 @@ export async function createDesign(
   { name, seed = randomInt(SEEDS), minSpacingMeters, answersPerPoint, ...input }: CreateDesign,
 ): Promise<ReferenceDesign> {
   const run = await findPlannedRun(app, projectId, input.runId);
-  const { strata } = planDesign(run, input);
-  const { points, leftOut } = await drawDesign(app, run, strata, { seed, minSpacingMeters });
+  const open = await openStrata(app, run, input);
+  const { strata } = planDesign(open.strata, input);
+  const { points, leftOut } = await drawDesign(run, { strata, read: open.read }, { seed, minSpacingMeters });
+  const mapped = await readCodesAt(app, run, points);
   const classes = await listAnswerClasses(app, run);
   const id = await app.db.transaction(async (manager) => {
     const design = await insertDesign(manager, {
       ...{ projectId, runId: run.id, name, plan: input, strata, classes, seed, minSpacingMeters, answersPerPoint },
       ...{ leftOutBySpacing: leftOut, augmentsId: null, createdById: byId },
     });
-    await insertPoints(manager, design, run, points);
+    await insertPoints(manager, design, run, { drawn: points, mapped });
     await recordActivity(manager, projectId, byId, `drew reference design ${design.number}`, 'accuracy');
     return design.id;
   });
@@ -152,8 +143,9 @@ export async function augmentDesign(
   const { projectId, seed, minSpacingMeters } = design;
   const run = await findPlannedRun(app, projectId, design.runId);
   const plan: PlanDesign = { ...design.plan, target, allocation };
+  const open = await openStrata(app, run, plan);
   const { strata } = planDesign(
-    run,
+    open.strata,
     plan,
     design.strata.map(({ points }) => points),
   );
@@ -165,7 +157,8 @@ export async function augmentDesign(
     });
   }
   const existing = before.map(({ point }) => toDrawnPoint(point));
-  const draw = await drawDesign(app, run, strata, { seed, minSpacingMeters, existing });
+  const draw = await drawDesign(run, { strata, read: open.read }, { seed, minSpacingMeters, existing });
+  const mapped = await readCodesAt(app, run, draw.points);
   const id = await app.db.transaction(async (manager) => {
     const current = await lockDesign(manager, design.id, ['draft', 'closed'], 'design-frozen', FROZEN);
     const changes = { plan, strata, leftOutBySpacing: draw.leftOut, ...(name === undefined ? {} : { name }) };
@@ -176,7 +169,7 @@ export async function augmentDesign(
         ...{ projectId, runId, classes, seed, minSpacingMeters, answersPerPoint, name: current.name },
         ...{ ...changes, augmentsId: current.id, createdById: byId },
       });
-      await insertPoints(manager, grown, run, draw.points, before);
+      await insertPoints(manager, grown, run, { drawn: draw.points, mapped }, before);
       await copySettledAnswers(manager, grown.id, before);
       return grown.id;
     }
@@ -186,10 +179,14 @@ export async function augmentDesign(
     await manager.update(ReferenceDesign, { id: current.id }, changes as never);
     if (current.augmentsId === null) {
       await manager.delete(ReferencePoint, { designId: current.id });
-      await insertPoints(manager, current, run, draw.points);
+      await insertPoints(manager, current, run, { drawn: draw.points, mapped });
     } else {
       const known = new Set(existing.map(({ stratum, order }) => `${stratum}/${order}`));
-      const added = draw.points.filter(({ stratum, order }) => !known.has(`${stratum}/${order}`));
+      const isAdded = draw.points.map(({ stratum, order }) => !known.has(`${stratum}/${order}`));
+      const added = {
+        drawn: draw.points.filter((_, i) => isAdded[i]),
+        mapped: mapped.filter((_, i) => isAdded[i]),
+      };
       await insertPoints(manager, current, run, added, [], before.length);
     }
     return current.id;

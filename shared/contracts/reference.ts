@@ -30,9 +30,17 @@ export const planTargetSchema = z.discriminatedUnion('kind', [
 ]);
 export type PlanTarget = z.infer<typeof planTargetSchema>;
 
+/** What points are drawn from: the map's classes, how the map differs from another one, or zones. */
+export const strataKindSchema = z.union([
+  z.literal('map-classes'),
+  z.object({ kind: z.literal('from-to'), runId: idSchema }).strict(),
+  z.object({ kind: z.literal('zones'), layerId: idSchema }).strict(),
+]);
+export type StrataKind = z.infer<typeof strataKindSchema>;
+
 const planFields = {
   runId: idSchema,
-  strata: z.literal('map-classes').default('map-classes'),
+  strata: strataKindSchema.default('map-classes'),
   /** Expected user's accuracy by class; a class left out is taken to have `expectedOtherwise`. */
   expected: z
     .array(z.object({ classId: idSchema, users: shareSchema }).strict())
@@ -46,7 +54,7 @@ export const planDesignSchema = z.object(planFields).strict();
 export type PlanDesign = z.infer<typeof planDesignSchema>;
 
 export const plannedStratumSchema = z.object({
-  /** Null for what the map leaves unclassified. */
+  /** Null for what the map leaves unclassified, and where strata are no map classes. */
   classId: idSchema.nullable(),
   code: z.number().int(),
   name: z.string(),
@@ -121,6 +129,7 @@ export const designSchema = z.object({
   n: z.number().int(),
   answersPerPoint: z.number().int(),
   minSpacingMeters: z.number(),
+  strataKind: strataKindSchema,
   /** Said where there is a least distance. */
   spacingEffect: z.string().nullable(),
   /** Classes a point may be given: those of the run, then others of the scheme. */

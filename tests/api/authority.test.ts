@@ -7,6 +7,7 @@ import { ReferencePoint } from '../../server/entities/reference-point.ts';
 import { Run } from '../../server/entities/run.ts';
 import { Sample } from '../../server/entities/sample.ts';
 import type { User } from '../../server/entities/user.ts';
+import { ZoneLayer } from '../../server/entities/zone-layer.ts';
 import { routes } from '../../server/routes/index.ts';
 import type { Route } from '../../server/routes/route.ts';
 import { createDesign } from '../../server/services/designs.ts';
@@ -151,6 +152,10 @@ const TABLE: Record<string, Row> = {
   'designs.estimates-csv': ACCURACY,
   'designs.agreement': ACCURACY,
   'designs.cell': ACCURACY,
+  'designs.zones': ACCURACY,
+  'zone-layers.list': ACCURACY,
+  'zone-layers.add': LEAD_REVIEWER,
+  'zone-layers.delete': LEAD_REVIEWER,
   'designs.compare': ACCURACY,
   'designs.points-csv': ACCURACY,
   'events.stream': TEAM,
@@ -227,15 +232,24 @@ async function makeSpareMember(): Promise<string> {
   return (await test.app.db.getRepository(Membership).findOneByOrFail({ userId: user.id })).id;
 }
 
+async function makeSpareLayer(): Promise<string> {
+  const layers = test.app.db.getRepository(ZoneLayer);
+  const made = layers.create({ projectId: team.project.id, name: 'Parishes', zones: [], createdById: null });
+  return (await layers.save(made)).id;
+}
+
 /** What a route acts on where an allowed request would use it up. */
 const SPARE: Record<string, () => Promise<Record<string, string>>> = {
   'runs.delete': async () => ({ runId: await makeSpareRun() }),
   'members.remove': async () => ({ memberId: await makeSpareMember() }),
+  'zone-layers.delete': async () => ({ layerId: await makeSpareLayer() }),
 };
 /** Queries that make a read complete; bodies stay empty, so that writes end at validation, after authority was decided. */
 const QUERY: Record<string, () => string> = {
   'scenes.probe': () => '?lon=-15&lat=60',
   'designs.compare': () => `?runId=${runId}`,
+  'designs.zones': () => `?layerId=${runId}`,
+  'designs.cell': () => `?mapped=1&reference=${params['classId']}`,
   'runs.probe': () => '?lon=-15&lat=60',
   'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
 };

@@ -7,6 +7,8 @@ import {
   mapComparisonSchema,
 } from '../../../shared/contracts/reference.ts';
 import { presentCellPoint } from '../../presenters/present-design.ts';
+import { zoneEstimatesQuerySchema, zoneEstimatesSchema } from '../../../shared/contracts/zone.ts';
+import { estimateZones } from '../../services/design-zone-estimates.ts';
 import { measureAgreement } from '../../services/design-agreement.ts';
 import { compareRuns } from '../../services/design-comparison.ts';
 import { requireMapsShown } from '../../services/design-blindness.ts';
@@ -66,6 +68,17 @@ const estimateRoutes = [
     query: compareMapsQuerySchema,
     answer: mapComparisonSchema,
     handle: ({ app, target, query }) => compareRuns(app, target.design, query.runId),
+  }),
+  route({
+    id: 'designs.zones',
+    method: 'get',
+    path: '/designs/:designId/zones',
+    summary: 'Accuracy and class shares of each zone of a layer, from the points in it',
+    access: estimates,
+    params: designParams,
+    query: zoneEstimatesQuerySchema,
+    answer: zoneEstimatesSchema,
+    handle: ({ app, target, query }) => estimateZones(app, target.design, query.layerId),
   }),
   route({
     id: 'designs.cell',

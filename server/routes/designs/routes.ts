@@ -12,7 +12,9 @@ import { can } from '../../policies/policy-table.ts';
 import { areMapsWithheld } from '../../services/design-blindness.ts';
 import { planDesign } from '../../services/design-plan.ts';
 import { closeDesign, endInterpretation, openDesign } from '../../services/design-transitions.ts';
-import { augmentDesign, createDesign, deleteDesign, findPlannedRun, listDesigns } from '../../services/designs.ts';
+import { openStrata } from '../../services/design-strata.ts';
+import { augmentDesign, createDesign, deleteDesign, listDesigns } from '../../services/designs.ts';
+import { findPlannedRun } from '../../services/planned-run.ts';
 import { findProjectTarget, projectParams } from '../find-project.ts';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
@@ -34,7 +36,8 @@ const planRoutes = [
     body: planDesignSchema,
     answer: designPlanSchema,
     async handle({ app, target, body }) {
-      return planDesign(await findPlannedRun(app, target.projectId, body.runId), body).plan;
+      const run = await findPlannedRun(app, target.projectId, body.runId);
+      return planDesign((await openStrata(app, run, body)).strata, body).plan;
     },
   }),
   route({
