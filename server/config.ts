@@ -22,6 +22,8 @@ export interface Config {
   maxScenePixels: number;
   ingest: { timeoutSeconds: number; memoryMb: number };
   workerThreads: number;
+  /** Jobs at the same time in one server process, by lane, and long ones of one project over all processes. */
+  jobs: { long: number; short: number; perProject: number };
   tileCacheMb: number;
   /** Whom an empty server without a demo makes site administrator. */
   adminEmail: string | null;
@@ -106,6 +108,9 @@ const schema = z.object({
   GROUNDSEL_INGEST_TIMEOUT_SECONDS: wholeNumber(10, 86_400, 'seconds').prefault('1800'),
   GROUNDSEL_INGEST_MEMORY_MB: wholeNumber(256, 1_048_576, 'MB').prefault('3072'),
   GROUNDSEL_WORKER_THREADS: wholeNumber(1, 256, 'threads').prefault(String(availableParallelism())),
+  GROUNDSEL_LONG_JOBS: wholeNumber(1, 64, 'long jobs at a time').prefault('1'),
+  GROUNDSEL_SHORT_JOBS: wholeNumber(1, 64, 'short jobs at a time').prefault('1'),
+  GROUNDSEL_PROJECT_JOBS: wholeNumber(1, 64, 'long jobs of one project at a time').prefault('1'),
   GROUNDSEL_TILE_CACHE_MB: wholeNumber(0, 1_048_576, 'MB').prefault('256'),
   GROUNDSEL_ADMIN_EMAIL: text('the e-mail of the first site administrator', /^[^\s@]+@[^\s@]+$/).optional(),
   GROUNDSEL_DEMO: oneOf(['on', 'off']).default('on'),
@@ -154,6 +159,11 @@ export function readConfig(env: NodeJS.ProcessEnv): Config {
     maxScenePixels: value.GROUNDSEL_MAX_SCENE_PIXELS,
     ingest: { timeoutSeconds: value.GROUNDSEL_INGEST_TIMEOUT_SECONDS, memoryMb: value.GROUNDSEL_INGEST_MEMORY_MB },
     workerThreads: value.GROUNDSEL_WORKER_THREADS,
+    jobs: {
+      long: value.GROUNDSEL_LONG_JOBS,
+      short: value.GROUNDSEL_SHORT_JOBS,
+      perProject: value.GROUNDSEL_PROJECT_JOBS,
+    },
     tileCacheMb: value.GROUNDSEL_TILE_CACHE_MB,
     adminEmail: value.GROUNDSEL_ADMIN_EMAIL?.toLowerCase() ?? null,
     demo: value.GROUNDSEL_DEMO === 'on',

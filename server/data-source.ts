@@ -5,14 +5,17 @@ import { AccountToken } from './entities/account-token.ts';
 import { Activity } from './entities/activity.ts';
 import { Band } from './entities/band.ts';
 import { EventEntry } from './entities/event-entry.ts';
+import { JobLogEntry } from './entities/job-log-entry.ts';
 import { Job } from './entities/job.ts';
 import { LandClass } from './entities/land-class.ts';
 import { Membership } from './entities/membership.ts';
+import { NamedRecipe } from './entities/named-recipe.ts';
 import { Project } from './entities/project.ts';
 import { RateCounter } from './entities/rate-counter.ts';
 import { ReferenceAnswer } from './entities/reference-answer.ts';
 import { ReferenceDesign } from './entities/reference-design.ts';
 import { ReferencePoint } from './entities/reference-point.ts';
+import { Reproduction } from './entities/reproduction.ts';
 import { RunSample } from './entities/run-sample.ts';
 import { Run } from './entities/run.ts';
 import { SampleVersion } from './entities/sample-version.ts';
@@ -20,6 +23,7 @@ import { Sample } from './entities/sample.ts';
 import { Scene } from './entities/scene.ts';
 import { Session } from './entities/session.ts';
 import { SiteSetting } from './entities/site-setting.ts';
+import { Tuning } from './entities/tuning.ts';
 import { User } from './entities/user.ts';
 import { ZoneLayer } from './entities/zone-layer.ts';
 import { migrations } from './migrations/index.ts';
@@ -31,13 +35,16 @@ export const entities = [
   Band,
   EventEntry,
   Job,
+  JobLogEntry,
   LandClass,
   Membership,
+  NamedRecipe,
   Project,
   RateCounter,
   ReferenceAnswer,
   ReferenceDesign,
   ReferencePoint,
+  Reproduction,
   Run,
   RunSample,
   Sample,
@@ -45,6 +52,7 @@ export const entities = [
   Scene,
   Session,
   SiteSetting,
+  Tuning,
   User,
   ZoneLayer,
 ];

@@ -7,7 +7,7 @@ import type { Config } from './config.ts';
 import { createDataSource } from './data-source.ts';
 import { DatabaseJobQueue } from './jobs/database-job-queue.ts';
 import { EventLog } from './jobs/event-log.ts';
-import type { JobHandler } from './jobs/job-queue.ts';
+import { readLaneLimits } from './jobs/job-lanes.ts';
 import { JobRunner } from './jobs/job-runner.ts';
 import { openWorkerPools } from './jobs/open-worker-pools.ts';
 import { createMailer } from './mail/mailer.ts';
@@ -87,8 +87,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
     workers,
     bands,
   };
-  const handlers: Record<'ingest' | 'run', JobHandler> = createJobHandlers(app);
-  const runner = new JobRunner(db, events, log, handlers);
+  const runner = new JobRunner(db, events, log, createJobHandlers(app), readLaneLimits(config.jobs));
   wake.now = runner.wake;
   wake.cancelled = runner.stopCancelled;
   await events.start();

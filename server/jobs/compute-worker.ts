@@ -10,6 +10,7 @@ import { prepareClassifier } from './compute/classifier-of-recipe.ts';
 import { finishMap } from './compute/finish-map.ts';
 import { readTraining } from './compute/read-training.ts';
 import { summariseSamples } from './compute/summarise-samples.ts';
+import { judgeFold } from './compute/judge-fold.ts';
 import { maskStrip } from './compute/study-area-mask.ts';
 import type { ComputeResult, ComputeTask, ComputeTasks } from './compute/tasks.ts';
 
@@ -73,6 +74,8 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
       return readTraining(task, await openBands(task.scene.bandPaths));
     case 'train-parts':
       return trainParts(task);
+    case 'judge-fold':
+      return judgeFold(task);
     case 'assemble-model':
       return assembleModel(task);
     case 'map-strip':

@@ -15,10 +15,29 @@ export class DatabaseJobQueue implements JobQueue {
   async enqueue(manager: EntityManager, request: JobRequest): Promise<Job> {
     const { id } = await manager.save(
       Job,
-      manager.create(Job, { sceneId: null, runId: null, ...request, state: 'queued', step: 'Waiting' }),
+      manager.create(Job, {
+        sceneId: null,
+        runId: null,
+        subjectId: null,
+        ...request,
+        state: 'queued',
+        step: 'Waiting',
+      }),
     );
     setImmediate(this.wake.now);
     return manager.findOneByOrFail(Job, { id });
+  }
+
+  async enqueueAgain(manager: EntityManager, jobId: string): Promise<void> {
+    await manager.update(
+      Job,
+      { id: jobId, state: In(['failed', 'cancelled']) },
+      {
+        ...{ state: 'queued', step: 'Waiting', done: 0, total: 0, share: 0, secondsLeft: null, error: null },
+        ...{ cancelAsked: false, attempts: 0, owner: null, startedAt: null, endedAt: null, place: null },
+      },
+    );
+    setImmediate(this.wake.now);
   }
 
   async cancel(jobId: string): Promise<void> {

@@ -6,6 +6,7 @@ export function presentJob(job: Job): JobContract {
     id: job.id,
     kind: job.kind,
     state: job.state,
+    priority: job.priority,
     step: job.step,
     done: job.done,
     total: job.total,
@@ -20,5 +21,7 @@ export function presentJob(job: Job): JobContract {
 
 /** A job as the event stream carries it. */
 export function presentJobEvent(job: Job): ProjectEvent {
-  return { type: 'job', sceneId: job.sceneId, runId: job.runId, job: presentJob(job) };
+  // Only the job that makes a scene or run is shown as its own; other work on it would push that aside.
+  const sceneId = job.kind === 'ingest' || job.kind === 'run' ? job.sceneId : null;
+  return { type: 'job', sceneId, runId: job.kind === 'run' ? job.runId : null, job: presentJob(job) };
 }

@@ -1,4 +1,5 @@
 import type { EntityManager } from 'typeorm';
+import type { JobLogLevel } from '../../shared/contracts/queue.ts';
 import type { Job } from '../entities/job.ts';
 
 export interface JobRequest {
@@ -6,6 +7,8 @@ export interface JobRequest {
   projectId: string;
   sceneId?: string;
   runId?: string;
+  /** The reproduction or tuning it works for. */
+  subjectId?: string;
 }
 
 /** Where background work is asked for. Whoever takes it up may be another process. */
@@ -14,6 +17,8 @@ export interface JobQueue {
   enqueue(manager: EntityManager, request: JobRequest): Promise<Job>;
   /** Ends a queued job at once and asks a running one to stop; nothing happens to an ended one. */
   cancel(jobId: string): Promise<void>;
+  /** Puts an ended job back into the queue, within the caller's transaction. */
+  enqueueAgain(manager: EntityManager, jobId: string): Promise<void>;
 }
 
 /** What a job's work is given. */
@@ -23,6 +28,8 @@ export interface JobContext {
   signal: AbortSignal;
   /** Says how far the work is: step in plain words, counts of that step, and the share 0..1 of the whole job. */
   report(step: string, done: number, total: number, share: number): void;
+  /** Adds a line to the job's log, in words for whoever asked for the work. */
+  note(text: string, level?: JobLogLevel): void;
 }
 
 /** Does a job's work; rejects to fail it. An error with `permanent` says that trying again cannot help. */

@@ -1,20 +1,24 @@
 import { hostname } from 'node:os';
 import type { Logger } from 'pino';
 import { In, LessThan, Like, type DataSource } from 'typeorm';
+import type { JobLogLevel } from '../../shared/contracts/queue.ts';
 import { Job } from '../entities/job.ts';
 import { isProcessAlive } from '../is-process-alive.ts';
 import type { EventLog } from './event-log.ts';
+import { claimJob } from './claim-job.ts';
 import { presentJobEvent } from './job-event.ts';
+import { JOB_LANES, jobLanes, listKinds, type JobLane, type LaneLimits } from './job-lanes.ts';
+import { describeSeconds, JobLog } from './job-log.ts';
 import type { JobHandler } from './job-queue.ts';
 import { ProgressMeter } from './progress-meter.ts';
 
 const TICK_MS = 1_000;
 const HEARTBEAT_MS = 3_000;
+/** How soon work of this process stops that another process was asked to cancel. */
+const CANCEL_LOOK_MS = 400;
 /** A running job without a heartbeat for this long has lost its server. */
 const STALE_MS = 30_000;
 const MAX_ATTEMPTS = 5;
-/** Jobs of a kind at the same time in one process; each already uses all cores through the worker pool. */
-const SLOTS: Record<Job['kind'], number> = { ingest: 1, run: 1 };
 
 /** Why a job's work was told to stop. */
 type StopReason = 'cancelled' | 'shutdown';
@@ -25,7 +29,7 @@ interface Running {
   settled: Promise<void>;
 }
 
-/** Takes jobs up, one of each kind at a time, keeps their heartbeat, and brings back those whose server died. */
+/** Takes jobs up as their turn comes in each lane, keeps their heartbeat, and brings back those whose server died. */
 export class JobRunner {
   private readonly owner = `${hostname()}:${process.pid}:${Date.now()}`;
   private readonly running = new Map<string, Running>();
@@ -38,6 +42,7 @@ export class JobRunner {
     private readonly events: EventLog,
     private readonly log: Logger,
     private readonly handlers: Record<Job['kind'], JobHandler>,
+    private readonly limits: LaneLimits,
   ) {}
 
   private get jobs() {
@@ -46,7 +51,11 @@ export class JobRunner {
 
   async start(): Promise<void> {
     await this.bringBackOrphans();
-    this.timers = [setInterval(() => this.wake(), TICK_MS), setInterval(() => void this.beat(), HEARTBEAT_MS)];
+    this.timers = [
+      setInterval(() => this.wake(), TICK_MS),
+      setInterval(() => void this.beat(), HEARTBEAT_MS),
+      setInterval(() => void this.stopAsked(), CANCEL_LOOK_MS),
+    ];
     this.wake();
   }
 
@@ -66,7 +75,7 @@ export class JobRunner {
       .finally(() => (this.ticking = null));
   };
 
-  /** Stops a job of this process that was cancelled; those of other processes see it at their heartbeat. */
+  /** Stops a job of this process that was cancelled; those of other processes see it at their next look. */
   readonly stopCancelled = (jobId: string): void => {
     this.running.get(jobId)?.abort.abort('cancelled' satisfies StopReason);
   };
@@ -98,37 +107,24 @@ export class JobRunner {
       where: { state: 'running', heartbeatAt: LessThan(new Date(Date.now() - STALE_MS)) },
     });
     for (const job of stale) if (!this.running.has(job.id)) await this.bringBack(job);
-    for (const kind of Object.keys(SLOTS) as Job['kind'][]) {
-      while (!this.stopping && this.countRunning(kind) < SLOTS[kind]) {
-        const job = await this.claim(kind);
+    for (const lane of jobLanes) {
+      while (!this.stopping && this.countRunning(lane) < this.limits[lane].slots) {
+        if (!(await this.hasWaiting(lane))) break;
+        const job = await claimJob(this.db, lane, this.limits, this.owner);
         if (!job) break;
         this.execute(job);
       }
     }
   }
 
-  private countRunning(kind: Job['kind']): number {
-    return [...this.running.values()].filter(({ job }) => job.kind === kind).length;
+  private countRunning(lane: JobLane): number {
+    return [...this.running.values()].filter(({ job }) => JOB_LANES[job.kind] === lane).length;
   }
 
-  private claim(kind: Job['kind']): Promise<Job | null> {
-    return this.db.transaction(async (manager) => {
-      const [row] = await manager.query<{ id: string }[]>(
-        "SELECT id FROM jobs WHERE state = 'queued' AND kind = ? ORDER BY createdAt, id LIMIT 1 FOR UPDATE SKIP LOCKED",
-        [kind],
-      );
-      if (!row) return null;
-      const job = await manager.findOneByOrFail(Job, { id: row.id });
-      const now = new Date();
-      return manager.save(Job, {
-        ...job,
-        state: 'running' as const,
-        owner: this.owner,
-        heartbeatAt: now,
-        startedAt: job.startedAt ?? now,
-        attempts: job.attempts + 1,
-      });
-    });
+  /** Asked before the lock is taken, so that idle processes do not queue for it every second. */
+  private hasWaiting(lane: JobLane): Promise<boolean> {
+    const kinds = listKinds(lane);
+    return kinds.length > 0 ? this.jobs.existsBy({ state: 'queued', kind: In(kinds) }) : Promise.resolve(false);
   }
 
   private execute(job: Job): void {
@@ -141,20 +137,30 @@ export class JobRunner {
   }
 
   private async work(job: Job, signal: AbortSignal): Promise<void> {
-    const meter = new ProgressMeter(job.share, async (progress) => {
+    const meter = new ProgressMeter(async (progress) => {
       await this.jobs.update({ id: job.id, owner: this.owner }, progress);
       await this.announce(job.id);
     });
+    const log = new JobLog(this.db, job.id);
+    const began = Date.now();
+    const report = (step: string, done: number, total: number, share: number): void => {
+      log.follow(step, done, total);
+      meter.report(step, done, total, share);
+    };
     let ending: Partial<Job>;
     try {
+      log.add(job.attempts > 1 ? `Taken up again, attempt ${job.attempts}.` : 'Taken up.');
       this.log.info({ job: job.id, kind: job.kind, attempt: job.attempts }, 'job started');
-      await this.handlers[job.kind]({ job, signal, report: meter.report });
+      await this.handlers[job.kind]({ job, signal, report, note: log.add });
       ending = { state: 'finished', share: 1, secondsLeft: 0, step: 'Finished', error: null };
     } catch (error) {
       ending = this.endingOf(job, signal, error);
     }
     try {
+      log.endStep();
+      log.add(...describeEnding(ending, (Date.now() - began) / 1000));
       await meter.close();
+      await log.close();
       const ended = ending.state === 'queued' ? {} : { endedAt: new Date() };
       await this.jobs.update({ id: job.id, owner: this.owner }, { ...ending, ...ended });
       await this.announce(job.id);
@@ -186,15 +192,39 @@ export class JobRunner {
     if (ids.length === 0) return;
     try {
       await this.jobs.update({ id: In(ids), owner: this.owner }, { heartbeatAt: new Date() });
+    } catch (error) {
+      this.log.error({ err: error }, 'heartbeat failed');
+    }
+  }
+
+  private async stopAsked(): Promise<void> {
+    const ids = [...this.running.keys()];
+    if (ids.length === 0) return;
+    try {
       const asked = await this.jobs.find({ where: { id: In(ids), cancelAsked: true }, select: { id: true } });
       for (const { id } of asked) this.stopCancelled(id);
     } catch (error) {
-      this.log.error({ err: error }, 'heartbeat failed');
+      this.log.error({ err: error }, 'looking for cancelled jobs failed');
     }
   }
 
   private async announce(jobId: string): Promise<void> {
     const job = await this.jobs.findOneBy({ id: jobId });
     if (job) await this.events.publish(job.projectId, presentJobEvent(job));
+  }
+}
+
+/** The last line of an attempt in a job's log. */
+function describeEnding({ state, error }: Partial<Job>, seconds: number): [string, JobLogLevel] {
+  const after = `after ${describeSeconds(seconds)}`;
+  switch (state) {
+    case 'finished':
+      return [`Finished ${after}.`, 'info'];
+    case 'cancelled':
+      return [`Cancelled ${after}.`, 'warning'];
+    case 'failed':
+      return [`Failed ${after}: ${error ?? 'no reason was given'}`, 'error'];
+    default:
+      return [`Stopped ${after}, because the server closed; it goes on from here at the next start.`, 'warning'];
   }
 }

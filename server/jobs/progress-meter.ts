@@ -1,3 +1,5 @@
+import { TimeLeft } from './time-left.ts';
+
 const WRITE_EVERY_MS = 500;
 
 export interface Progress {
@@ -8,21 +10,24 @@ export interface Progress {
   secondsLeft: number | null;
 }
 
-/** Thins a stream of progress to a write every half second and works out the time left from the pace of this attempt. */
+/** Thins a stream of progress to a write every half second and works out the time left. */
 export class ProgressMeter {
-  private readonly startedAt = Date.now();
+  private readonly timeLeft = new TimeLeft();
   private latest: Progress | null = null;
   private writing: Promise<void> = Promise.resolve();
   private timer: NodeJS.Timeout | null = null;
 
-  constructor(
-    private readonly startShare: number,
-    private readonly write: (progress: Progress) => Promise<void>,
-  ) {}
+  constructor(private readonly write: (progress: Progress) => Promise<void>) {}
 
   readonly report = (step: string, done: number, total: number, share: number): void => {
     const bounded = Math.min(1, Math.max(0, share));
-    this.latest = { step, done, total, share: bounded, secondsLeft: this.secondsLeft(bounded) };
+    this.latest = {
+      step,
+      done,
+      total,
+      share: bounded,
+      secondsLeft: this.timeLeft.note(step, done, total, bounded, Date.now()),
+    };
     this.timer ??= setTimeout(() => {
       this.timer = null;
       this.flush();
@@ -44,12 +49,5 @@ export class ProgressMeter {
     this.writing = this.writing.then(() => this.write(progress));
     // Rejections are kept for close(); this only says that they are seen.
     this.writing.catch(() => undefined);
-  }
-
-  private secondsLeft(share: number): number | null {
-    const gained = share - this.startShare;
-    if (gained <= 0.01) return null;
-    const seconds = (Date.now() - this.startedAt) / 1000;
-    return Math.round((seconds * (1 - share)) / gained);
   }
 }

@@ -9,6 +9,7 @@ export function presentAccount(user: User): Account {
     email: user.email,
     name: user.name,
     siteAdmin: user.siteAdmin,
+    mailsRunEnd: user.mailsRunEnd,
     createdAt: user.createdAt.toISOString(),
   };
 }

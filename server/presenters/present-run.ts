@@ -3,7 +3,7 @@ import type { Run as RunContract } from '../../shared/contracts/run.ts';
 import type { z } from 'zod';
 import type { classAreaSchema } from '../../shared/contracts/run.ts';
 import type { Run } from '../entities/run.ts';
-import { presentJob } from '../jobs/job-event.ts';
+import { presentJob } from './present-job.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import { isUnderWay } from '../services/runs.ts';
@@ -64,6 +64,11 @@ export function presentRun(run: Run, viewer: Viewer, isMapWithheld = false): Run
     overallHigh: shown?.overallHigh ?? null,
     bounds: run.scene.bounds,
     notes: [...run.warnings, ...(isMapWithheld ? [] : (result?.notes ?? []))],
-    abilities: { cancel: mayStop && isUnderWay(run), delete: mayStop && !isUnderWay(run) },
+    abilities: {
+      cancel: mayStop && isUnderWay(run),
+      delete: mayStop && !isUnderWay(run),
+      retry: can('run.start', viewer.roles) && (job.state === 'failed' || job.state === 'cancelled'),
+      prioritise: can('run.start', viewer.roles) && job.state === 'queued',
+    },
   };
 }

@@ -1,6 +1,6 @@
 import type { Band as BandContract, Probe, Scene as SceneContract } from '../../shared/contracts/scene.ts';
 import type { Band } from '../entities/band.ts';
-import { presentJob } from '../jobs/job-event.ts';
+import { presentJob } from './present-job.ts';
 import type { SceneProbe } from '../services/scene-probe.ts';
 import { computeContentKey, type SceneRow } from '../services/scenes.ts';
 import { presentPerson } from './present-account.ts';

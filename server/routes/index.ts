@@ -3,9 +3,11 @@ import { accuracyRoutes } from './accuracy/routes.ts';
 import { classRoutes } from './classes/routes.ts';
 import { designRoutes } from './designs/routes.ts';
 import { eventRoutes } from './events/routes.ts';
+import { jobRoutes } from './jobs/routes.ts';
 import { memberRoutes } from './members/routes.ts';
 import { createOpenApiRoutes } from './openapi/routes.ts';
 import { projectRoutes } from './projects/routes.ts';
+import { recipeRoutes } from './recipes/routes.ts';
 import type { Route } from './route.ts';
 import { runRoutes } from './runs/routes.ts';
 import { sampleRoutes } from './samples/routes.ts';
@@ -13,6 +15,7 @@ import { signatureRoutes } from './samples/signature-routes.ts';
 import { sceneRoutes } from './scenes/routes.ts';
 import { sessionRoutes } from './session/routes.ts';
 import { zoneRoutes } from './zones/routes.ts';
+import { tuningRoutes } from './tunings/routes.ts';
 
 /** Every route of the product, in the order the API document lists them. */
 export const routes: readonly Route[] = [
@@ -25,6 +28,9 @@ export const routes: readonly Route[] = [
   ...sampleRoutes,
   ...signatureRoutes,
   ...runRoutes,
+  ...jobRoutes,
+  ...recipeRoutes,
+  ...tuningRoutes,
   ...accuracyRoutes,
   ...designRoutes,
   ...zoneRoutes,

@@ -56,8 +56,17 @@ export async function changePassword(
   });
 }
 
-export async function renameAccount(app: App, userId: string, name: string): Promise<User> {
-  await app.db.getRepository(User).update({ id: userId }, { name });
+export async function changeAccount(
+  app: App,
+  userId: string,
+  { name, mailsRunEnd }: { name?: string; mailsRunEnd?: boolean },
+): Promise<User> {
+  await app.db
+    .getRepository(User)
+    .update(
+      { id: userId },
+      { ...(name === undefined ? {} : { name }), ...(mailsRunEnd === undefined ? {} : { mailsRunEnd }) },
+    );
   return app.db.getRepository(User).findOneByOrFail({ id: userId });
 }
 

@@ -14,7 +14,8 @@ const M2_PER_HECTARE = 10_000;
 
 /**
  * Does a run: trains, maps, counts, and writes down the result at once or not at all. A run interrupted by the end of its server
- * goes on from the parts and strips it has; a cancelled or failed one leaves no file behind.
+ * goes on from the parts and strips it has; a cancelled one leaves no file behind, a failed one keeps them
+ * for another try.
  */
 export async function executeRun(app: App, context: JobContext): Promise<void> {
   const run = await app.db
@@ -28,12 +29,15 @@ export async function executeRun(app: App, context: JobContext): Promise<void> {
     if (!run.result) {
       const work = await openRunWork(app, run, context);
       const training = await trainRun(work);
+      context.note(`${count(training.trainingPixels, 'training pixel')} of ${count(work.training.length, 'polygon')}.`);
+      for (const text of run.warnings) context.note(text, 'warning');
+      for (const text of training.notes) context.note(text);
       await storeResult(work, training);
     }
   } catch (error) {
     if (signal.aborted && signal.reason === 'shutdown') throw error;
-    await app.files.remove(runFiles(run.id).root);
-    if (!signal.aborted) {
+    if (signal.aborted) await app.files.remove(runFiles(run.id).root);
+    else {
       app.log.warn({ err: error, run: run.id }, 'run failed');
       await sendRunLetter(app, run, { failure: error instanceof Error ? error.message : String(error) });
     }
@@ -97,4 +101,8 @@ async function removeWorkFiles(app: App, runId: string): Promise<void> {
   } catch (error) {
     app.log.error({ err: error, run: runId }, 'work files of a run could not be removed');
   }
+}
+
+function count(n: number, one: string): string {
+  return `${n} ${n === 1 ? one : `${one}s`}`;
 }

@@ -3,10 +3,10 @@ import type { Run } from '../entities/run.ts';
 import { can } from '../policies/policy-table.ts';
 import { findRoles } from './memberships.ts';
 
-/** Tells whoever started a run that it ended, if they still work in the project and mail is set up. */
+/** Tells whoever started a run that it ended, if they still work in the project, want such letters, and mail is set up. */
 export async function sendRunLetter(app: App, run: Run, ending: { failure: string | null }): Promise<void> {
   const { startedBy, project, result } = run;
-  if (!app.mail.sends || !startedBy || startedBy.closedAt) return;
+  if (!app.mail.sends || !startedBy || startedBy.closedAt || !startedBy.mailsRunEnd) return;
   const roles = await findRoles(app, run.projectId, startedBy.id);
   if (!can('run.read', roles)) return;
   const title = run.name ? `Run ${run.number} (${run.name})` : `Run ${run.number}`;

@@ -22,7 +22,11 @@ export interface RunWork {
 }
 
 /** Loads a run and brings its files here. @throws Error when what it was started with no longer stands */
-export async function openRunWork(app: App, run: Run, { signal, report }: JobContext): Promise<RunWork> {
+export async function openRunWork(
+  app: App,
+  run: Run,
+  { signal, report }: Pick<JobContext, 'signal' | 'report'>,
+): Promise<RunWork> {
   const { recipe } = run;
   const placed = placeScene(run.scene);
   if (!placed) throw new Error(`The scene “${run.scene.name}” is no longer ready.`);

@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { In } from 'typeorm';
 import type { Recipe } from '../../shared/contracts/run.ts';
 import type { App } from '../app-context.ts';
 import { Job } from '../entities/job.ts';
@@ -128,10 +129,14 @@ export async function deleteRun(app: App, run: Run, byId: string): Promise<void>
   await app.db.transaction(async (manager) => {
     const job = await manager.findOne(Job, { where: { id: run.jobId }, lock: { mode: 'pessimistic_write' } });
     if (!job) throw new NotFound();
-    if (isUnderWay({ job })) {
+    const other = await manager.findOneBy(Job, { runId: run.id, state: In(['queued', 'running']) });
+    if (isUnderWay({ job }) || other) {
       throw new Conflict(
         'The run is still under way.',
-        { found: `it is ${job.state}`, advice: 'Cancel it first.' },
+        {
+          found: other && !isUnderWay({ job }) ? 'it is being reproduced' : `it is ${job.state}`,
+          advice: 'Cancel it first.',
+        },
         'run-under-way',
       );
     }
@@ -143,7 +148,7 @@ export async function deleteRun(app: App, run: Run, byId: string): Promise<void>
       );
     }
     await manager.delete(Run, { id: run.id });
-    await manager.delete(Job, { id: run.jobId });
+    await manager.delete(Job, [{ id: run.jobId }, { runId: run.id }]);
     await recordActivity(manager, run.projectId, byId, `deleted run ${run.number}`, 'runs');
   });
   // A probe may still hold the class map open.

@@ -12,6 +12,8 @@ export const accountSchema = z.object({
   email: z.string(),
   name: z.string(),
   siteAdmin: z.boolean(),
+  /** Whether a letter tells when a run they started ends. */
+  mailsRunEnd: z.boolean(),
   createdAt: instantSchema,
 });
 export type Account = z.infer<typeof accountSchema>;
@@ -28,6 +30,10 @@ export const changePasswordSchema = z
   .object({ current: z.string().min(1, 'Type your present password.').max(200), next: passwordSchema })
   .strict();
 export const renameAccountSchema = z.object({ name: lineSchema(120).min(1, 'Type your name.') }).strict();
+export const changeAccountSchema = z
+  .object({ name: renameAccountSchema.shape.name.optional(), mailsRunEnd: z.boolean().optional() })
+  .strict()
+  .refine((change) => Object.keys(change).length > 0, 'Say what to change.');
 
 /** A browser signed in to the account; `current` is the one asking. */
 export const deviceSchema = z.object({

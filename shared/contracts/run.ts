@@ -76,6 +76,13 @@ export const startRunSchema = z
   .strict();
 export type StartRun = z.input<typeof startRunSchema>;
 
+export const retryRunSchema = z
+  .object({
+    /** Without what an earlier attempt has left, for when that is what makes it fail. */
+    anew: z.boolean().default(false),
+  })
+  .strict();
+
 /** Checks of a recipe before it starts. */
 export const recipeCheckSchema = z.object({
   problems: z.array(z.object({ severity: z.enum(['stops', 'warns']), text: z.string() })),
@@ -126,7 +133,7 @@ export const runSchema = z.object({
   overallHigh: z.number().nullable(),
   bounds: boundsSchema.nullable(),
   notes: z.array(z.string()),
-  abilities: z.object({ cancel: z.boolean(), delete: z.boolean() }),
+  abilities: z.object({ cancel: z.boolean(), delete: z.boolean(), retry: z.boolean(), prioritise: z.boolean() }),
 });
 export type Run = z.infer<typeof runSchema>;
 export const runListSchema = z.object({ runs: z.array(runSchema) });

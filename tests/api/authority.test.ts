@@ -6,11 +6,13 @@ import { ReferenceDesign } from '../../server/entities/reference-design.ts';
 import { ReferencePoint } from '../../server/entities/reference-point.ts';
 import { Run } from '../../server/entities/run.ts';
 import { Sample } from '../../server/entities/sample.ts';
+import { Tuning } from '../../server/entities/tuning.ts';
 import type { User } from '../../server/entities/user.ts';
 import { ZoneLayer } from '../../server/entities/zone-layer.ts';
 import { routes } from '../../server/routes/index.ts';
 import type { Route } from '../../server/routes/route.ts';
 import { createDesign } from '../../server/services/designs.ts';
+import { createNamedRecipe } from '../../server/services/named-recipes.ts';
 import { findProject } from '../../server/services/projects.ts';
 import { startRun } from '../../server/services/runs.ts';
 import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
@@ -75,7 +77,7 @@ const TABLE: Record<string, Row> = {
   'session.delete': ACCOUNT,
   'session.devices': ACCOUNT,
   'session.delete-all': ACCOUNT,
-  'account.rename': ACCOUNT,
+  'account.change': ACCOUNT,
   'account.change-password': ACCOUNT,
   'account.forgot-password': PUBLIC,
   'welcome.read': PUBLIC_LINK,
@@ -125,6 +127,25 @@ const TABLE: Record<string, Row> = {
   'runs.read': TEAM,
   'runs.delete': LEAD_MODELLER,
   'runs.cancel': LEAD_MODELLER,
+  'runs.retry': LEAD_MODELLER,
+  'runs.reproduce': LEAD_MODELLER,
+  'runs.reproductions': TEAM,
+  'jobs.queue': TEAM,
+  'jobs.prioritise': LEAD_MODELLER,
+  'jobs.log': TEAM,
+  'jobs.log-text': TEAM,
+  'jobs.cancel': LEAD_MODELLER,
+  'jobs.site-queue': SITE_ADMIN,
+  'jobs.order-site-queue': SITE_ADMIN,
+  'recipes.list': TEAM,
+  'recipes.create': LEAD_MODELLER,
+  'recipes.update': LEAD_MODELLER,
+  'recipes.delete': LEAD_MODELLER,
+  'recipes.diff': TEAM,
+  'tunings.list': LEAD_MODELLER,
+  'tunings.start': LEAD_MODELLER,
+  'tunings.read': LEAD_MODELLER,
+  'tunings.delete': LEAD_MODELLER,
   'runs.tile': TEAM,
   'runs.probe': TEAM,
   'runs.class-map': TEAM,
@@ -208,11 +229,38 @@ beforeAll(async () => {
   params = {
     ...{ projectId: project.id, sceneId: ground.scene.id, classId: ground.classes[0]!.id, sampleId: sample.id, runId },
     ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
+    ...{ jobId: run.jobId, recipeId: await makeSpareRecipe(), tuningId: await makeSpareTuning() },
     ...{ z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
   };
   for (const actor of ACTORS) cookies.set(actor, await signIn(actor));
 }, 120_000);
 afterAll(() => test.close());
+
+async function makeSpareRecipe(): Promise<string> {
+  const { recipe } = await test.app.db.getRepository(Run).findOneByOrFail({ id: runId });
+  const input = { name: randomUUID(), note: '', recipe };
+  return (await createNamedRecipe(test.app, team.project.id, team.lead.id, input)).id;
+}
+
+/** A search that ended before it found anything. */
+async function makeSpareTuning(): Promise<string> {
+  const { recipe, classes } = await test.app.db.getRepository(Run).findOneByOrFail({ id: runId });
+  const id = randomUUID();
+  const plan = { method: 'grid', nTrials: 2, folds: 2, blockMeters: 100, seed: 1 } as const;
+  await test.app.db.getRepository(Tuning).insert({
+    ...{
+      id,
+      projectId: team.project.id,
+      name: '',
+      recipe,
+      plan: { ...plan, ranges: [{ parameter: 'trees', values: [10] }] },
+      classes,
+      studyArea: null,
+    },
+    ...{ samples: [], notes: [], trials: [], jobId: null, startedById: null },
+  });
+  return id;
+}
 
 /** A finished run that may be deleted. */
 async function makeSpareRun(): Promise<string> {
@@ -241,6 +289,8 @@ async function makeSpareLayer(): Promise<string> {
 /** What a route acts on where an allowed request would use it up. */
 const SPARE: Record<string, () => Promise<Record<string, string>>> = {
   'runs.delete': async () => ({ runId: await makeSpareRun() }),
+  'recipes.delete': async () => ({ recipeId: await makeSpareRecipe() }),
+  'tunings.delete': async () => ({ tuningId: await makeSpareTuning() }),
   'members.remove': async () => ({ memberId: await makeSpareMember() }),
   'zone-layers.delete': async () => ({ layerId: await makeSpareLayer() }),
 };
@@ -250,6 +300,7 @@ const QUERY: Record<string, () => string> = {
   'designs.compare': () => `?runId=${runId}`,
   'designs.zones': () => `?layerId=${runId}`,
   'designs.cell': () => `?mapped=1&reference=${params['classId']}`,
+  'recipes.diff': () => `?left=run:${runId}&right=run:${runId}`,
   'runs.probe': () => '?lon=-15&lat=60',
   'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
 };

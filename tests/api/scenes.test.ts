@@ -362,13 +362,14 @@ describe('an ingest that is stopped', () => {
       job,
       signal: down.signal,
       report: (_step, done) => done > 1 && down.abort('shutdown'),
+      note: () => undefined,
     });
     await expect(stopped).rejects.toThrow();
     const scenes = test.app.db.getRepository(Scene);
     expect(await scenes.findOneByOrFail({ id })).toMatchObject({ state: 'ingesting', failure: null });
     expect(await test.app.files.list(`scenes/${id}/`)).toEqual([]);
 
-    const again = { job, signal: new AbortController().signal, report: () => undefined };
+    const again = { job, signal: new AbortController().signal, report: () => undefined, note: () => undefined };
     await ingestScene(test.app, again);
     const scene = await waitForScene(test.app, id);
     expect([scene.state, scene.bands.length]).toEqual(['ready', 6]);

@@ -68,6 +68,7 @@ export async function makeTestConfig(
     maxScenePixels: 10_000_000,
     ingest: { timeoutSeconds: 120, memoryMb: 2048 },
     workerThreads: 2,
+    jobs: { long: 1, short: 1, perProject: 1 },
     tileCacheMb: 32,
     demo: false,
     adminEmail: null,

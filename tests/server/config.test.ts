@@ -39,6 +39,7 @@ describe('readConfig', () => {
       maxScenePixels: 500_000_000,
       ingest: { timeoutSeconds: 1800, memoryMb: 3072 },
       workerThreads: availableParallelism(),
+      jobs: { long: 1, short: 1, perProject: 1 },
       tileCacheMb: 256,
       adminEmail: null,
       demo: true,

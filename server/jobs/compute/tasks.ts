@@ -83,6 +83,19 @@ export interface ComputeTasks {
     };
     result: Uint8Array[];
   };
+  /** Learns from all folds but one and maps that one; an error of the classifier is a result, since other settings may work. */
+  'judge-fold': {
+    input: {
+      sets: readonly TrainingSet[];
+      /** The same for all trials of one tuning, so that a thread joins the folds once. */
+      setsId: string;
+      testFold: number;
+      classifier: ClassifierRecipe;
+      seed: number;
+    };
+    /** Rows by true class and predicted class, row-major. */
+    result: { confusion: Uint32Array; error: string | null };
+  };
   'assemble-model': {
     input: {
       shape: { nFeatures: number; nClasses: number };

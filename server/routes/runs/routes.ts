@@ -13,6 +13,7 @@ import { findProjectTarget, projectParams } from '../find-project.ts';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
 import { classMapRoutes } from './class-map-routes.ts';
+import { reproductionRoutes } from './reproduction-routes.ts';
 import { findRunTarget, runParams } from './find-run.ts';
 
 export const runRoutes = [
@@ -95,5 +96,6 @@ export const runRoutes = [
       return presentRun(await cancelRun(app, target.run, viewer.userId), viewer, isWithheld);
     },
   }),
+  ...reproductionRoutes,
   ...classMapRoutes.map(hideWhileInterpreting),
 ];

@@ -2,10 +2,10 @@ import { z } from 'zod';
 import {
   acceptWelcomeSchema,
   accountSchema,
+  changeAccountSchema,
   changePasswordSchema,
   deviceListSchema,
   forgotPasswordSchema,
-  renameAccountSchema,
   sessionSchema,
   signInSchema,
   welcomeSchema,
@@ -15,11 +15,11 @@ import { NotFound, NotSignedIn } from '../../errors.ts';
 import { presentAccount } from '../../presenters/present-account.ts';
 import { acceptAccountLink, findAccountToken, requestPasswordReset } from '../../services/account-tokens.ts';
 import {
+  changeAccount,
   changePassword,
   endAllSessions,
   findOpenUser,
   listDevices,
-  renameAccount,
   verifyPassword,
 } from '../../services/accounts.ts';
 import { route } from '../route.ts';
@@ -104,15 +104,15 @@ export const sessionRoutes = [
     },
   }),
   route({
-    id: 'account.rename',
+    id: 'account.change',
     method: 'patch',
     path: '/account',
-    summary: 'Change my name',
+    summary: 'Change my name, or whether I am mailed when my runs end',
     access: { kind: 'account' },
-    body: renameAccountSchema,
+    body: changeAccountSchema,
     answer: accountSchema,
     async handle({ app, viewer, body }) {
-      return presentAccount(await renameAccount(app, viewer.userId, body.name));
+      return presentAccount(await changeAccount(app, viewer.userId, body));
     },
   }),
   route({

@@ -7,6 +7,7 @@ const job: Job = {
   id: 'a3f0a3a4-6f5c-4f10-9d3b-7f2a4c1f9a01',
   kind: 'run',
   state: 'running',
+  priority: 'normal',
   step: 'Training trees',
   done: 40,
   total: 100,
