@@ -42,14 +42,11 @@ export interface GdalRunOptions {
   config?: Record<string, string>;
 }
 
-/** The only drivers that may open an upload, by tool; GTiff also reads COG. */
+/** The only drivers that may open an upload, by tool; GTiff also reads COG. The vector tools have no such option: see read-vector.ts. */
 const rasterDrivers = ['GTiff', 'JP2OpenJPEG'];
-const vectorDrivers = ['GeoJSON', 'GPKG', 'ESRI Shapefile', 'LIBKML', 'KML'];
 const uploadDrivers: Partial<Record<GdalTool, readonly string[]>> = {
   gdalinfo: rasterDrivers,
   gdal_translate: rasterDrivers,
-  ogr2ogr: vectorDrivers,
-  ogrinfo: vectorDrivers,
 };
 const stderrTailBytes = 4000;
 
@@ -64,8 +61,13 @@ const sharedConfig: Record<string, string> = {
   GDAL_HTTP_TIMEOUT: '1',
   GDAL_HTTP_MAX_RETRY: '0',
 };
-// An upload's georeference must stand inside the file, so that a neighbouring file can't change what it means.
-const uploadConfig: Record<string, string> = { GDAL_GEOREF_SOURCES: 'INTERNAL' };
+const uploadConfig: Record<string, string> = {
+  // An upload's georeference must stand inside the file, so that a neighbouring file can't change what it means.
+  GDAL_GEOREF_SOURCES: 'INTERNAL',
+  // Formats that name other files or servers to read from.
+  GDAL_SKIP: 'VRT DERIVED WMS WCS WMTS',
+  OGR_SKIP: 'OGR_VRT,WFS,OAPIF,CSW,CARTO,AmigoCloud,PLSCENES,NGW,ODBC,PGeo,MSSQLSpatial,PostgreSQL,MySQL,HTTP',
+};
 
 /**
  * Runs a GDAL tool as a child process, without a shell, with time, memory and output limits.

@@ -1,4 +1,4 @@
-import { readFile } from 'node:fs/promises';
+import { link, open, readFile } from 'node:fs/promises';
 import { join } from 'node:path';
 import { z } from 'zod';
 import { extractShapefile } from './extract-shapefile.ts';
@@ -25,6 +25,7 @@ export interface ReadVectorOptions {
 }
 
 const TIMEOUT_MS = 60_000;
+const UNREADABLE = 'GDAL cannot read it as GeoJSON, GeoPackage, KML or zipped Shapefile';
 const MAX_FEATURES = 100_000;
 
 const collectionSchema = z.object({
@@ -44,7 +45,7 @@ const collectionSchema = z.object({
  */
 export async function readVectorFile(path: string, options: ReadVectorOptions): Promise<VectorFile> {
   const { scratchDir, maxFeatures = MAX_FEATURES, signal } = options;
-  const source = (await isZip(path)) ? await extractShapefile(path, scratchDir) : path;
+  const source = await placeByContent(path, scratchDir);
   const converted = join(scratchDir, 'converted.geojson');
   const args = [
     ...['-f', 'GeoJSON', '-t_srs', 'EPSG:4326', '-lco', 'RFC7946=NO', '-lco', 'COORDINATE_PRECISION=9'],
@@ -70,9 +71,37 @@ export async function readVectorFile(path: string, options: ReadVectorOptions): 
   return { features: read, fields: [...fields] };
 }
 
-async function isZip(path: string): Promise<boolean> {
-  const bytes = await readFile(path).then((file) => file.subarray(0, 4));
-  return bytes.toString('latin1') === 'PK\u0003\u0004';
+/**
+ * The file under a name with the extension of what its first bytes say it is: GDAL goes by both, and opens nothing that
+ * is none of these.
+ */
+async function placeByContent(path: string, dir: string): Promise<string> {
+  const head = await readHead(path);
+  if (head.startsWith('PK\u0003\u0004')) return extractShapefile(path, dir);
+  const extension = recognise(head);
+  if (extension === null) throw new VectorRefusal(UNREADABLE);
+  const placed = join(dir, `upload.${extension}`);
+  await link(path, placed);
+  return placed;
+}
+
+const HEAD_BYTES = 4096;
+
+async function readHead(path: string): Promise<string> {
+  const file = await open(path);
+  try {
+    const { buffer, bytesRead } = await file.read(Buffer.alloc(HEAD_BYTES), 0, HEAD_BYTES, 0);
+    return buffer.toString('latin1', 0, bytesRead);
+  } finally {
+    await file.close();
+  }
+}
+
+function recognise(head: string): 'gpkg' | 'geojson' | 'kml' | null {
+  if (head.startsWith('SQLite format 3\u0000')) return 'gpkg';
+  const text = head.replace(/^(\u00ef\u00bb\u00bf)?\s*/, '');
+  if (text.startsWith('{')) return 'geojson';
+  return text.startsWith('<') && /<kml[\s>]/.test(text) && !/<OGRVRT/i.test(text) ? 'kml' : null;
 }
 
 /** The first layer's name; a GeoPackage or KML may hold several. */
@@ -103,5 +132,5 @@ function describeFault(stderr: string): string {
   if (/source layer has no coordinate system|Can't transform coordinates/i.test(stderr)) {
     return 'it does not say which reference system its coordinates are in';
   }
-  return 'GDAL cannot read it as GeoJSON, GeoPackage, KML or zipped Shapefile';
+  return UNREADABLE;
 }
