@@ -8,7 +8,9 @@ import { InvalidInput, NotFound } from '../errors.ts';
 import { requireOpen, writeAnswer, type GivenDetail } from './design-answers.ts';
 import { pixelAt } from './design-places.ts';
 import { findPlannedRun } from './planned-run.ts';
-import { readCsv, type CsvRecord } from './read-csv.ts';
+import { readVectorFile } from '../raster/read-vector.ts';
+import { VectorRefusal } from '../raster/vector-refusal.ts';
+import { readCsv, type TableRecord } from './read-csv.ts';
 import { placeScene, type PlacedScene } from './run-scene.ts';
 
 const MAX_ROWS = 20_000;
@@ -28,7 +30,7 @@ interface Columns {
 class Rehearsed extends Error {}
 
 /**
- * Takes answers from a CSV file, as those of the person who brings it, and reports on every row. Rows name their point by
+ * Takes answers from a table, as those of the person who brings it, and reports on every row. Rows name their point by
  * number, or by a position within its pixel. A rehearsal changes nothing.
  * @throws InvalidInput for a file that cannot be read or lacks its columns, Conflict "not-open"
  */
@@ -36,10 +38,10 @@ export async function importAnswers(
   app: App,
   design: ReferenceDesign,
   userId: string,
-  { csv, dryRun }: { csv: string; dryRun: boolean },
+  { table, dryRun }: { table: readonly TableRecord[]; dryRun: boolean },
 ): Promise<ImportReport> {
   requireOpen(design);
-  const [heading, ...records] = parse(csv);
+  const [heading, ...records] = table;
   if (!heading) throw refuseFile('it has no heading');
   if (records.length > MAX_ROWS)
     throw refuseFile(`it has ${records.length} rows; at most ${MAX_ROWS} are taken at once`);
@@ -89,19 +91,43 @@ function refuseFile(found: string): InvalidInput {
     'The file cannot be used.',
     {
       found,
-      wanted: 'a CSV file with the columns number (or lon and lat) and class_code (or class)',
+      wanted:
+        'a CSV with the columns number (or lon and lat) and class_code (or class), or points in a GeoPackage, GeoJSON, KML or zipped Shapefile with these fields',
       errors: [{ path: 'csv', message: `The file cannot be used: ${found}.` }],
     },
     'file-refused',
   );
 }
 
-function parse(csv: string): CsvRecord[] {
+/** @throws InvalidInput when it is no CSV */
+export function readAnswerCsv(csv: string): TableRecord[] {
   try {
     return readCsv(csv);
   } catch (error) {
     if (error instanceof RangeError) throw refuseFile(error.message.replace(/\.$/, ''));
     throw error;
+  }
+}
+
+/** Points of a vector file as a table with lon and lat before its own fields. @throws InvalidInput when it cannot be read */
+export async function readAnswerFile(app: App, path: string): Promise<TableRecord[]> {
+  const scratch = await app.files.scratch('answers');
+  try {
+    const { features, fields } = await readVectorFile(path, { scratchDir: scratch.path, maxFeatures: MAX_ROWS });
+    const heading = { line: 0, fields: ['lon', 'lat', ...fields] };
+    return [
+      heading,
+      ...features.map(({ geometry, properties }, place) => {
+        const at = geometry?.type === 'Point' ? (geometry.coordinates as readonly [number, number]) : null;
+        const position = at ? [String(at[0]), String(at[1])] : ['', ''];
+        return { line: place + 1, fields: [...position, ...fields.map((field) => String(properties[field] ?? ''))] };
+      }),
+    ];
+  } catch (error) {
+    if (error instanceof VectorRefusal) throw refuseFile(error.message);
+    throw error;
+  } finally {
+    await scratch.dispose();
   }
 }
 

@@ -165,6 +165,7 @@ const TABLE: Record<string, Row> = {
   'designs.next': REVIEWER,
   'designs.point': REVIEWER,
   'designs.import': REVIEWER,
+  'designs.import-file': REVIEWER,
   'designs.disagreements': REVIEWER,
   'reference-points.answer': REVIEWER,
   'reference-points.skip': REVIEWER,

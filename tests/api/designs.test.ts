@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import { execFile } from 'node:child_process';
+import { execFile, execFileSync } from 'node:child_process';
 import { mkdtemp, readFile, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
@@ -643,6 +643,48 @@ describe('import of answers', () => {
       expect((await send({ csv: bad }).expect(400)).body).toMatchObject({ code: 'file-refused' });
     }
     await lead.post(`${path}/import`).send({ csv }).expect(403);
+    await lead.post(`${path}/adjudicate`).send({}).expect(200);
+    await lead.post(`${path}/close`).send({ leaveUnsettled: true }).expect(200);
+  });
+});
+
+describe('answers from a file of points', () => {
+  it('takes each point into the pixel it falls in, whatever the reference system, and reports on the others', async () => {
+    const design = await draw({ ...askFor(20), answersPerPoint: 1 });
+    const path = `${API}/designs/${design.id}`;
+    await lead.post(`${path}/open`).send({}).expect(200);
+    const [first, second] = await pointsOf(design.id);
+    const dir = await mkdtemp(join(tmpdir(), 'groundsel-answers-'));
+    try {
+      const feature = (lon: number, lat: number, properties: object) => ({
+        ...{ type: 'Feature', properties, geometry: { type: 'Point', coordinates: [lon, lat] } },
+      });
+      const features = [
+        feature(first!.lon, first!.lat, { class: 'Heath & moor', note: 'on foot' }),
+        feature(second!.lon, second!.lat, { class: 'Lava', note: '' }),
+        feature(10, 10, { class: 'Heath & moor', note: '' }),
+      ];
+      await writeFile(join(dir, 'field.geojson'), JSON.stringify({ type: 'FeatureCollection', features }));
+      const [from, to] = [join(dir, 'field.geojson'), join(dir, 'field.gpkg')];
+      execFileSync('ogr2ogr', ['-t_srs', 'EPSG:3857', '-f', 'GPKG', to, from]);
+      const send = (dryRun: boolean) =>
+        reviewer.post(`${path}/import-file`).field('dryRun', String(dryRun)).attach('files', to);
+      const rehearsal = (await send(true).expect(200)).body as ImportReport;
+      expect(rehearsal).toMatchObject({ dryRun: true, taken: 1, refused: 2 });
+      const report = (await send(false).expect(200)).body as ImportReport;
+      expect(report.rows.map(({ line, outcome, reason }) => [line, outcome, reason])).toEqual([
+        [1, 'taken', null],
+        [2, 'refused', 'There is no class Lava.'],
+        [3, 'refused', 'No point of the design lies there.'],
+      ]);
+      const stored = await test.app.db.getRepository(ReferenceAnswer).findBy({ pointId: first!.id });
+      expect(stored).toMatchObject([{ classId: ground.classes[1]!.id, note: 'on foot', source: 'import' }]);
+      await writeFile(join(dir, 'noise.gpkg'), 'no GeoPackage');
+      const noise = reviewer.post(`${path}/import-file`).attach('files', join(dir, 'noise.gpkg'));
+      expect((await noise.expect(400)).body).toMatchObject({ code: 'file-refused' });
+    } finally {
+      await rm(dir, { recursive: true, force: true });
+    }
     await lead.post(`${path}/adjudicate`).send({}).expect(200);
     await lead.post(`${path}/close`).send({ leaveUnsettled: true }).expect(200);
   });

@@ -21,8 +21,12 @@ describe('readCsv', () => {
     ]);
   });
 
-  it('refuses a quote that is never closed, with its line', () => {
-    expect(() => readCsv('a,b\n1,"x\n2,y\n')).toThrow('line 2');
+  it('refuses a quote that is never closed', () => {
+    expect(() => readCsv('a,b\n1,"x\n2,y\n')).toThrow('never closed');
+  });
+
+  it('keeps a note that has a line beginning with #', () => {
+    expect(readCsv('number,note\n1,"two\n# lines"\n')[1]?.fields).toEqual(['1', 'two\n# lines']);
   });
 
   it('gives nothing for an empty file', () => {

@@ -14,12 +14,20 @@ import { presentBlindPoint, presentDisagreement, presentNextPoint } from '../../
 import { decidePoint, listDisagreements } from '../../services/design-adjudication.ts';
 import { putAnswer, readNextPoint, readOwnPoint, skipPoint } from '../../services/design-answers.ts';
 import { requireMapsShown } from '../../services/design-blindness.ts';
-import { importAnswers } from '../../services/design-import.ts';
+import { importAnswers, readAnswerCsv, readAnswerFile } from '../../services/design-import.ts';
+import { receiveFiles } from '../receive-files.ts';
 import { route } from '../route.ts';
 import { designParams, findDesignTarget, findPlace, findPointTarget, pointParams } from './find-design.ts';
 
 const ofDesign = { kind: 'project', action: 'design.interpret', find: findDesignTarget } as const;
 const ofPoint = { kind: 'project', action: 'design.interpret', find: findPointTarget } as const;
+
+const importFields = z.object({
+  dryRun: z
+    .enum(['true', 'false'])
+    .default('false')
+    .transform((said) => said === 'true'),
+});
 
 /** The blind check. Nothing here reads what the map shows. */
 export const interpretRoutes = [
@@ -86,7 +94,26 @@ export const interpretRoutes = [
     params: designParams,
     body: importAnswersSchema,
     answer: importReportSchema,
-    handle: ({ app, viewer, target, body }) => importAnswers(app, target.design, viewer.userId, body),
+    handle: ({ app, viewer, target, body: { csv, dryRun } }) =>
+      importAnswers(app, target.design, viewer.userId, { table: readAnswerCsv(csv), dryRun }),
+  }),
+  route({
+    id: 'designs.import-file',
+    method: 'post',
+    path: '/designs/:designId/import-file',
+    summary: 'Take your answers from a file with points, with a report on every feature',
+    access: ofDesign,
+    params: designParams,
+    answer: importReportSchema,
+    multipart: {
+      dryRun: 'true only reports what would become of each feature. Before the file.',
+      files: 'One GeoPackage, GeoJSON, KML or zipped Shapefile of points with class_code or class',
+    },
+    handle: ({ app, viewer, target, req, res }) =>
+      receiveFiles(app, req, res, { fields: importFields, maxFiles: 1 }, async ({ fields, files: [file] }) => {
+        const table = await readAnswerFile(app, file?.path ?? '');
+        return importAnswers(app, target.design, viewer.userId, { table, dryRun: fields.dryRun });
+      }),
   }),
   route({
     id: 'designs.disagreements',

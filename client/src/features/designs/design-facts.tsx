@@ -1,11 +1,14 @@
 import type { Design } from '../../../../shared/contracts/reference.ts';
 import { formatCount, formatMeters } from '../../lib/format.ts';
 
+const STRATA_NAMES = { 'map-classes': 'classes of the map', 'from-to': 'change between two maps', zones: 'zones' };
+
 /** How a design was drawn, for whoever has to check it. */
 export function DesignFacts({ design }: { design: Design }) {
   const facts = [
     ['Points', formatCount(design.n, 'point')],
     ['Map', `run ${design.runNumber}`],
+    ['Strata', STRATA_NAMES[typeof design.strataKind === 'string' ? design.strataKind : design.strataKind.kind]],
     ['People a point', String(design.answersPerPoint)],
     ['Least distance', design.minSpacingMeters > 0 ? formatMeters(design.minSpacingMeters) : 'none'],
     ['Seed', design.seed === null ? 'withheld while open' : String(design.seed)],

@@ -16,19 +16,18 @@ export interface ImportDialogProps {
 /** Answers from the field: a CSV is read, what would become of each row is shown, then it is taken. */
 export function ImportDialog({ design, isOpen, onOpenChange }: ImportDialogProps) {
   const take = useImportAnswers(design.projectId, design.id);
-  const [csv, setCsv] = useState<string | null>(null);
+  const [file, setFile] = useState<File | null>(null);
   const report = take.data?.dryRun ? take.data : null;
   const nUsable = report ? report.taken + report.replaced : 0;
-  const choose = async (file: File | undefined) => {
-    if (!file) return;
-    const text = await file.text();
-    setCsv(text);
-    take.mutate({ csv: text, dryRun: true });
+  const choose = (chosen: File | undefined) => {
+    if (!chosen) return;
+    setFile(chosen);
+    take.mutate({ file: chosen, dryRun: true });
   };
   const finish = () => {
-    if (csv === null) return;
+    if (file === null) return;
     take.mutate(
-      { csv, dryRun: false },
+      { file, dryRun: false },
       {
         onSuccess: ({ taken, replaced }) => {
           sayDone(`${formatCount(taken + replaced, 'answer')} taken`);
@@ -42,7 +41,7 @@ export function ImportDialog({ design, isOpen, onOpenChange }: ImportDialogProps
       isOpen={isOpen}
       onOpenChange={onOpenChange}
       title="Answers from the field"
-      description="A CSV with a heading: number (or lon and lat), class_code or class; if you like alternate, confidence and note. The answer sheet has the right columns. They count as your own answers."
+      description="A CSV with a heading: number (or lon and lat), class_code or class; if you like alternate, confidence and note. Or points with these fields in a GeoPackage, GeoJSON, KML or zipped Shapefile. They count as your own answers."
       footer={
         <>
           <Button onClick={() => onOpenChange(false)}>Take nothing</Button>
@@ -50,7 +49,7 @@ export function ImportDialog({ design, isOpen, onOpenChange }: ImportDialogProps
             kind="primary"
             onClick={finish}
             disabled={nUsable === 0}
-            isPending={take.isPending && report === null && csv !== null}
+            isPending={take.isPending && report === null && file !== null}
           >
             {nUsable > 0 ? `Take ${formatCount(nUsable, 'answer')}` : 'Take answers'}
           </Button>
@@ -59,10 +58,10 @@ export function ImportDialog({ design, isOpen, onOpenChange }: ImportDialogProps
     >
       <input
         type="file"
-        accept=".csv,text/csv"
-        aria-label="CSV file with answers"
+        accept=".csv,.txt,.tsv,.gpkg,.geojson,.json,.kml,.zip"
+        aria-label="File with answers"
         className="block w-full text-sm"
-        onChange={(event) => void choose(event.target.files?.[0])}
+        onChange={(event) => choose(event.target.files?.[0])}
       />
       {take.error && <ErrorState error={take.error} isInline className="mt-4" />}
       {report && <Report report={report} />}
@@ -82,7 +81,7 @@ function Report({ report }: { report: ImportReport }) {
         <ul className="mt-2 max-h-48 list-disc overflow-y-auto pl-5 text-ink-soft">
           {refused.map(({ line, reason }) => (
             <li key={line}>
-              Line {line}: {reason}
+              Row {line}: {reason}
             </li>
           ))}
         </ul>

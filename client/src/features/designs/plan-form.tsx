@@ -8,6 +8,7 @@ import { Select } from '../../components/ui/select.tsx';
 import { TextInput } from '../../components/ui/text-input.tsx';
 import { ExpectedFields } from './expected-fields.tsx';
 import type { PlanValues } from './plan-values.ts';
+import { StrataFields } from './strata-fields.tsx';
 
 export interface PlanFormProps {
   values: PlanValues;
@@ -23,12 +24,12 @@ export function PlanForm({ values, onChange, runs, positions }: PlanFormProps) {
   const run = runs.find(({ id }) => id === values.runId);
   return (
     <div className="space-y-7">
-      <Part title="Map" note="The classes of this run’s map are the strata.">
+      <Part title="Map">
         <div className="grid gap-4 sm:grid-cols-2">
           <Field label="Run">
             <Select
               value={values.runId}
-              onChange={(runId) => set({ runId, expectedPercent: {} })}
+              onChange={(runId) => set({ runId, expectedPercent: {}, fromRunId: null })}
               options={runs.map((one) => ({
                 value: one.id,
                 label: `Run ${one.number}${one.name ? `, ${one.name}` : ''}`,
@@ -39,6 +40,9 @@ export function PlanForm({ values, onChange, runs, positions }: PlanFormProps) {
             <TextInput value={values.name} maxLength={120} onChange={(event) => set({ name: event.target.value })} />
           </Field>
         </div>
+      </Part>
+      <Part title="Strata" note="What the points are drawn from, each at random.">
+        <StrataFields values={values} onChange={set} runs={runs} />
       </Part>
       <Part title="Precision" note="Of overall accuracy. The curve at the side shows what more points would bring.">
         <Segmented<PlanValues['target']>
@@ -78,11 +82,11 @@ export function PlanForm({ values, onChange, runs, positions }: PlanFormProps) {
         </div>
       </Part>
       <Part
-        title="Expected user’s accuracy"
+        title={values.strata === 'map-classes' ? 'Expected user’s accuracy' : 'Expected accuracy'}
         note="A guess from held-out samples will do: it decides how many points are drawn, not what they find."
       >
         <ExpectedFields
-          classes={run?.classes ?? []}
+          classes={values.strata === 'map-classes' ? (run?.classes ?? []) : []}
           positions={positions}
           expectedPercent={values.expectedPercent}
           otherwisePercent={values.otherwisePercent}

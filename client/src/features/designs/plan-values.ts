@@ -5,6 +5,10 @@ import type { CreateDesignInput } from './create-design.ts';
 export interface PlanValues {
   runId: string;
   name: string;
+  strata: 'map-classes' | 'from-to' | 'zones';
+  /** The earlier map, and the layer, where strata come from them. */
+  fromRunId: string | null;
+  layerId: string | null;
   target: 'half-width' | 'standard-error' | 'total';
   halfWidthPercent: number | null;
   standardErrorPercent: number | null;
@@ -23,7 +27,8 @@ export interface PlanValues {
 /** A plan that most commissions can live with: ± 3 % overall, at least 50 points a class, two people a point. */
 export function defaultPlan(runId: string): PlanValues {
   return {
-    ...{ runId, name: '', target: 'half-width', halfWidthPercent: 3, standardErrorPercent: 1.5, total: 500 },
+    ...{ runId, name: '', strata: 'map-classes', fromRunId: null, layerId: null },
+    ...{ target: 'half-width', halfWidthPercent: 3, standardErrorPercent: 1.5, total: 500 },
     ...{ allocation: 'minimum', atLeast: 50, expectedPercent: {}, otherwisePercent: 80 },
     ...{ minSpacingMeters: 0, answersPerPoint: 2, seed: null },
   };
@@ -43,12 +48,19 @@ function planTarget(values: PlanValues): PlanDesign['target'] {
   }
 }
 
+function planStrata({ strata, fromRunId, layerId }: PlanValues) {
+  if (strata === 'from-to') return { kind: 'from-to', runId: fromRunId };
+  return strata === 'zones' ? { kind: 'zones', layerId } : 'map-classes';
+}
+
 /** The plan as it is sent, or what is wrong with a field of it. */
 export function readPlan(values: PlanValues): { plan: PlanDesign; problem: null } | { plan: null; problem: string } {
   const parsed = planDesignSchema.safeParse({
     runId: values.runId,
-    expected: Object.entries(values.expectedPercent).flatMap(([classId, percent]) =>
-      percent === null ? [] : [{ classId, users: percent / 100 }],
+    strata: planStrata(values),
+    // Only strata that are classes have an accuracy of their own to expect.
+    expected: Object.entries(values.strata === 'map-classes' ? values.expectedPercent : {}).flatMap(
+      ([classId, percent]) => (percent === null ? [] : [{ classId, users: percent / 100 }]),
     ),
     expectedOtherwise: ofPercent(values.otherwisePercent),
     target: planTarget(values),
@@ -64,6 +76,7 @@ export function readPlan(values: PlanValues): { plan: PlanDesign; problem: null 
 
 const OTHERWISE = 'A figure of the plan is missing or out of range.';
 const PROBLEMS: readonly (readonly [string, string])[] = [
+  ['strata', 'Choose what the points are drawn from.'],
   ['target.halfWidth', 'The half-width wanted is 0.2 to 50 %.'],
   ['target.standardError', 'The standard error wanted is 0.1 to 25 %.'],
   ['target.total', 'The number of points is a whole number from 2 to 20 000.'],

@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import type { CellPoint, Design } from '../../../../shared/contracts/reference.ts';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import { ContextViews } from '../../components/place/context-views.tsx';
@@ -6,10 +7,13 @@ import { useContextViews } from '../../components/place/use-context-views.ts';
 import { Section } from '../../components/layout/reading-page.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
+import { Select } from '../../components/ui/select.tsx';
+import { useZoneLayers } from '../../features/designs/zone-layers.ts';
 import { designTitle } from '../../features/designs/design-state.tsx';
 import { EstimateReport } from '../../features/estimates/estimate-report.tsx';
 import { useEstimates } from '../../features/estimates/get-estimates.ts';
 import { MapComparisonPart } from '../../features/estimates/map-comparison-part.tsx';
+import { ZonePart } from '../../features/estimates/zone-part.tsx';
 import { formatDateTime } from '../../lib/format-date.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useScenes } from '../../lib/project/scenes-query.ts';
@@ -38,12 +42,42 @@ export function DesignEstimates({ design, positions, others }: DesignEstimatesPr
         positions={positions}
         renderPlace={(point) => <PlaceOfPoint key={point.id} point={point} />}
       />
+      <ByZone design={design} />
       {others.length > 0 && (
         <Section title="Another map on the same points" className="mt-9">
           <MapComparisonPart projectId={id} designId={design.id} runs={others} />
         </Section>
       )}
     </>
+  );
+}
+
+function ByZone({ design }: { design: Design }) {
+  const { id } = useProject();
+  const layers = useZoneLayers(id);
+  const [chosenId, setChosenId] = useState<string | null>(null);
+  const known = layers.data?.layers ?? [];
+  const layer = known.find((one) => one.id === chosenId) ?? known[0];
+  if (!layer) return null;
+  return (
+    <Section
+      title="Zone by zone"
+      className="mt-9"
+      action={
+        known.length > 1 && (
+          <Select
+            aria-label="Zone layer"
+            size="sm"
+            className="w-auto! max-w-64"
+            value={layer.id}
+            onChange={setChosenId}
+            options={known.map((one) => ({ value: one.id, label: one.name }))}
+          />
+        )
+      }
+    >
+      <ZonePart projectId={id} designId={design.id} layerId={layer.id} />
+    </Section>
   );
 }
 
