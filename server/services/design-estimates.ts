@@ -124,7 +124,7 @@ export async function estimateDesign(app: App, design: ReferenceDesign): Promise
     counts: primary.counts.map((row) => row.slice(0, design.classes.length)),
     proportions: primary.estimate && toProportions(primary.estimate, design.classes.length),
     overall,
-    kappa: { ...presentFigure(primary.report?.kappa ?? null, 'kappa', shared), caution: KAPPA_CAUTION },
+    kappa: presentKappa(primary.report?.kappa ?? null, shared),
     quantityDisagreement: presentPlain(
       ...([primary.report?.quantityDisagreement ?? null, units.length, 'quantity', shared] as const),
     ),
@@ -165,6 +165,13 @@ export async function estimateDesign(app: App, design: ReferenceDesign): Promise
         : `No estimate can be made: no point with a settled class lies in ${empty.join(', ')}.`,
     cautions: listCautions(design, points, unsettled),
   };
+}
+
+/** Kappa with its Z test against no agreement beyond chance. */
+function presentKappa(kappa: DesignReport['kappa'] | null, shared: How['inputs']): Estimates['kappa'] {
+  const z = kappa?.value != null && kappa.standardError ? kappa.value / kappa.standardError : null;
+  const inputs = [{ name: 'Z = K / S, against K = 0', value: z }, ...shared];
+  return { ...presentFigure(kappa, 'kappa', inputs), caution: KAPPA_CAUTION };
 }
 
 const MAX_STRATA_SPELT_OUT = 30;

@@ -163,3 +163,28 @@ export const mapComparisonSchema = z.object({
   cautions: z.array(z.string()),
 });
 export type MapComparison = z.infer<typeof mapComparisonSchema>;
+
+export const compareKappasQuerySchema = z.object({
+  /** The other design, drawn independently of the first. */
+  designId: idSchema,
+});
+/** Kappas of two maps judged by independent designs. */
+export const kappaComparisonSchema = z.object({
+  first: z.object({
+    designNumber: z.number().int(),
+    runNumber: z.number().int(),
+    kappa: z.number(),
+    standardError: z.number(),
+  }),
+  second: z.object({
+    designNumber: z.number().int(),
+    runNumber: z.number().int(),
+    kappa: z.number(),
+    standardError: z.number(),
+  }),
+  z: z.number(),
+  pValue: z.number(),
+  how: howSchema,
+  caution: z.string(),
+});
+export type KappaComparison = z.infer<typeof kappaComparisonSchema>;

@@ -174,6 +174,7 @@ const TABLE: Record<string, Row> = {
   'designs.estimates-csv': ACCURACY,
   'designs.agreement': ACCURACY,
   'designs.cell': ACCURACY,
+  'designs.compare-kappas': ACCURACY,
   'designs.zones': ACCURACY,
   'zone-layers.list': ACCURACY,
   'zone-layers.add': LEAD_REVIEWER,
@@ -299,6 +300,7 @@ const SPARE: Record<string, () => Promise<Record<string, string>>> = {
 const QUERY: Record<string, () => string> = {
   'scenes.probe': () => '?lon=-15&lat=60',
   'designs.compare': () => `?runId=${runId}`,
+  'designs.compare-kappas': () => `?designId=${runId}`,
   'designs.zones': () => `?layerId=${runId}`,
   'designs.cell': () => `?mapped=1&reference=${params['classId']}`,
   'recipes.diff': () => `?left=run:${runId}&right=run:${runId}`,

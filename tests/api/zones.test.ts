@@ -9,7 +9,12 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import yazl from 'yazl';
 import { ReferenceDesign } from '../../server/entities/reference-design.ts';
 import { ReferencePoint } from '../../server/entities/reference-point.ts';
-import type { Design, DesignPlan, Estimates } from '../../shared/contracts/reference.ts';
+import {
+  kappaComparisonSchema,
+  type Design,
+  type DesignPlan,
+  type Estimates,
+} from '../../shared/contracts/reference.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { zoneEstimatesSchema, zoneLayerSchema, type ZoneLayer } from '../../shared/contracts/zone.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
@@ -258,5 +263,33 @@ describe('a design drawn from the change between two maps', () => {
       ...{ target: { kind: 'total', total: 60 }, allocation: { kind: 'equal' } },
     };
     await lead.post(`${projectPath}/designs/plan`).send(asked).expect(400);
+  });
+});
+
+describe('kappas of two maps judged by independent designs', () => {
+  async function judge(runId: string, seed: number): Promise<string> {
+    const asked = {
+      ...{ runId, target: { kind: 'total', total: 30 }, allocation: { kind: 'equal' }, seed, answersPerPoint: 1 },
+    };
+    const { id } = (await lead.post(`${projectPath}/designs`).send(asked).expect(201)).body as Design;
+    await lead.post(`${API}/designs/${id}/open`).expect(200);
+    for (const point of await test.app.db.getRepository(ReferencePoint).findBy({ designId: id })) {
+      const truth = ground.classes[Math.min(2, Math.floor((point.pixelColumn * 3) / SIDE))]!;
+      await reviewer.put(`${API}/points/${point.id}/answer`).send({ classId: truth.id }).expect(200);
+    }
+    await lead.post(`${API}/designs/${id}/adjudicate`).send({}).expect(200);
+    await lead.post(`${API}/designs/${id}/close`).send({}).expect(200);
+    return id;
+  }
+
+  it('differ by z = (K₁ − K₂) / √(S₁² + S₂²), and only where the designs share no points', async () => {
+    const [one, two] = [await judge(runIds[0]!, 21), await judge(runIds[1]!, 22)];
+    const { body } = await lead.get(`${API}/designs/${one}/kappas?designId=${two}`).expect(200);
+    const { first, second, z } = kappaComparisonSchema.parse(body);
+    const spread = Math.hypot(first.standardError, second.standardError);
+    expect(z).toBeCloseTo((first.kappa - second.kappa) / spread, 12);
+    await lead.get(`${API}/designs/${one}/kappas?designId=${one}`).expect(400);
+    const same = await judge(runIds[0]!, 22);
+    await lead.get(`${API}/designs/${two}/kappas?designId=${same}`).expect(400);
   });
 });

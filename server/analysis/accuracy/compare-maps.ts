@@ -102,8 +102,8 @@ export function compareMaps(
  * 70:627–633.
  */
 export function compareIndependentKappas(
-  first: KappaResult,
-  second: KappaResult,
+  first: Pick<KappaResult, 'kappa' | 'variance'>,
+  second: Pick<KappaResult, 'kappa' | 'variance'>,
 ): { z: number; pValue: number } | null {
   const variance = first.variance + second.variance;
   if (variance === 0) return null;

@@ -2,8 +2,10 @@ import {
   agreementSchema,
   cellPointsQuerySchema,
   cellPointsSchema,
+  compareKappasQuerySchema,
   compareMapsQuerySchema,
   estimatesSchema,
+  kappaComparisonSchema,
   mapComparisonSchema,
 } from '../../../shared/contracts/reference.ts';
 import { presentCellPoint } from '../../presenters/present-design.ts';
@@ -11,6 +13,7 @@ import { zoneEstimatesQuerySchema, zoneEstimatesSchema } from '../../../shared/c
 import { estimateZones } from '../../services/design-zone-estimates.ts';
 import { measureAgreement } from '../../services/design-agreement.ts';
 import { compareRuns } from '../../services/design-comparison.ts';
+import { compareKappas } from '../../services/design-kappas.ts';
 import { requireMapsShown } from '../../services/design-blindness.ts';
 import { writeEstimatesCsv, writePointsCsv } from '../../services/design-csv.ts';
 import { estimateDesign } from '../../services/design-estimates.ts';
@@ -68,6 +71,17 @@ const estimateRoutes = [
     query: compareMapsQuerySchema,
     answer: mapComparisonSchema,
     handle: ({ app, target, query }) => compareRuns(app, target.design, query.runId),
+  }),
+  route({
+    id: 'designs.compare-kappas',
+    method: 'get',
+    path: '/designs/:designId/kappas',
+    summary: 'Kappas of two maps judged by independent designs, and whether they differ',
+    access: estimates,
+    params: designParams,
+    query: compareKappasQuerySchema,
+    answer: kappaComparisonSchema,
+    handle: ({ app, target, query }) => compareKappas(app, target.design, query.designId),
   }),
   route({
     id: 'designs.zones',

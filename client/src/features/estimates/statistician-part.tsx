@@ -60,7 +60,7 @@ function Figures({ estimates }: { estimates: Estimates }) {
                   <HowComputed name={name} how={one.how} trigger={name} />
                 </th>
                 <td className="whitespace-nowrap">{figurePhrase(one)}</td>
-                <td>{one.standardError === null ? 'undefined' : formatNumber(one.standardError, 4)}</td>
+                <td>{standardErrorText(one)}</td>
                 <td>{formatNumber(one.n)}</td>
               </tr>
             ))}
@@ -70,6 +70,12 @@ function Figures({ estimates }: { estimates: Estimates }) {
       <p className="mt-2 max-w-[62rem] text-sm text-ink-soft">{kappa.caution}</p>
     </ChartFrame>
   );
+}
+
+/** Some figures have no published standard error: that is not the same as one that cannot be computed. */
+function standardErrorText({ value, standardError }: DesignFigure): string {
+  if (standardError !== null) return formatNumber(standardError, 4);
+  return value === null ? 'undefined' : 'none published';
 }
 
 function Strata({ estimates: { design } }: { estimates: Estimates }) {

@@ -163,6 +163,7 @@ function RunAccuracy({ run, finished, list }: RunAccuracyProps) {
               design={design}
               positions={positions}
               others={finished.filter(({ id }) => id !== run.id)}
+              otherDesigns={list.designs.filter(({ id, state }) => state === 'closed' && id !== design.id)}
             />
           ) : (
             <NoEstimates run={run} designs={ofRun} mayPlan={list.abilities.plan} />

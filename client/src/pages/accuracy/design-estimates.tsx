@@ -12,6 +12,7 @@ import { useZoneLayers } from '../../features/designs/zone-layers.ts';
 import { designTitle } from '../../features/designs/design-state.tsx';
 import { EstimateReport } from '../../features/estimates/estimate-report.tsx';
 import { useEstimates } from '../../features/estimates/get-estimates.ts';
+import { KappaComparisonPart } from '../../features/estimates/kappa-comparison-part.tsx';
 import { MapComparisonPart } from '../../features/estimates/map-comparison-part.tsx';
 import { ZonePart } from '../../features/estimates/zone-part.tsx';
 import { formatDateTime } from '../../lib/format-date.ts';
@@ -23,10 +24,12 @@ export interface DesignEstimatesProps {
   positions: ReadonlyMap<string, number>;
   /** Other finished runs, for a comparison on the same points. */
   others: readonly Run[];
+  /** Other closed designs, for kappas of independent points. */
+  otherDesigns: readonly Design[];
 }
 
 /** The estimates of a closed design, and other maps on the same points. */
-export function DesignEstimates({ design, positions, others }: DesignEstimatesProps) {
+export function DesignEstimates({ design, positions, others, otherDesigns }: DesignEstimatesProps) {
   const { id } = useProject();
   const estimates = useEstimates(id, design.id);
   if (estimates.isPending) return <PendingState label="Computing the estimates" rows={6} />;
@@ -46,6 +49,11 @@ export function DesignEstimates({ design, positions, others }: DesignEstimatesPr
       {others.length > 0 && (
         <Section title="Another map on the same points" className="mt-9">
           <MapComparisonPart projectId={id} designId={design.id} runs={others} />
+        </Section>
+      )}
+      {otherDesigns.length > 0 && (
+        <Section title="Kappas of independent designs" className="mt-9">
+          <KappaComparisonPart design={design} others={otherDesigns} />
         </Section>
       )}
     </>
