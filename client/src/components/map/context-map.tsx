@@ -4,7 +4,7 @@ import { MapContainer, useMap } from 'react-leaflet';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import type { Place } from '../../lib/project/probe-query.ts';
-import type { SceneView } from '../../lib/scene-view.ts';
+import type { BandLimits, SceneView } from '../../lib/scene-view.ts';
 import { SceneLayer } from './scene-layer.tsx';
 
 export interface ContextMapProps {
@@ -12,6 +12,8 @@ export interface ContextMapProps {
   label: string;
   scene: Scene;
   view: SceneView;
+  /** Stretch limits that stand above those of the view. */
+  limits?: BandLimits | undefined;
   centre: Place;
   zoom: number;
   /** The innermost first, drawn strongest. */
@@ -19,7 +21,7 @@ export interface ContextMapProps {
 }
 
 /** A still view of a place: one scene in one composite, with outlines of the pixel and what is around it. */
-export function ContextMap({ label, scene, view, centre, zoom, outlines }: ContextMapProps) {
+export function ContextMap({ label, scene, view, limits, centre, zoom, outlines }: ContextMapProps) {
   return (
     <div role="img" aria-label={label} className="size-full">
       <MapContainer
@@ -39,7 +41,7 @@ export function ContextMap({ label, scene, view, centre, zoom, outlines }: Conte
         fadeAnimation={false}
         className="size-full"
       >
-        <SceneLayer scene={scene} view={view} />
+        <SceneLayer scene={scene} view={view} limits={limits} />
         <Outlines outlines={outlines} />
         <FollowView centre={centre} zoom={zoom} />
       </MapContainer>

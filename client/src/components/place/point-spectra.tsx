@@ -1,14 +1,12 @@
 import { useQueries } from '@tanstack/react-query';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import { BAND_QUANTITIES } from '../../../../shared/constants/bands.ts';
-import { drawingMeasureSchema } from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { SpectralProfile } from '../charts/spectral-profile.tsx';
 import type { SpectralSeries } from '../charts/spectral-series.ts';
 import { ErrorState } from '../ui/error-state.tsx';
 import { PendingState } from '../ui/pending-state.tsx';
-import { fetchJson } from '../../lib/fetch-json.ts';
-import { projectKey } from '../../lib/project/project-query.ts';
+import { placeMeasureQuery } from './place-measure.ts';
 
 export interface PointSpectraProps {
   projectId: string;
@@ -22,19 +20,12 @@ const LINES = ['solid', 'dashed', 'dotted'] as const;
 const COLOURS = ['var(--ink)', 'var(--spruce)', 'var(--rust)'] as const;
 
 /** The pixel's spectrum in each scene, and the mean of the nine pixels about it with its spread. */
-export function PointSpectra({ projectId, scenes, outline, outline3 }: PointSpectraProps) {
+export function PointSpectra({ projectId, outline, outline3, ...props }: PointSpectraProps) {
+  // In the order of the pictures.
+  const scenes = props.scenes.toSorted((a, b) => (a.acquiredOn ?? '').localeCompare(b.acquiredOn ?? ''));
   const measured = useQueries({
     queries: scenes.flatMap((scene) =>
-      [outline, outline3].map((geometry) => ({
-        queryKey: projectKey(projectId, 'scenes', scene.id, 'measure', scene.contentKey, geometry.coordinates),
-        queryFn: ({ signal }: { signal: AbortSignal }) =>
-          fetchJson(`/projects/${projectId}/samples/measure`, drawingMeasureSchema, {
-            method: 'POST',
-            body: { sceneId: scene.id, geometry },
-            signal,
-          }),
-        staleTime: Infinity,
-      })),
+      [outline, outline3].map((geometry) => placeMeasureQuery(projectId, scene, geometry)),
     ),
   });
   if (measured.some(({ isPending }) => isPending)) return <PendingState label="Reading the pixel" shape="block" />;

@@ -18,35 +18,46 @@ const draftSchema = z.object({
 });
 
 const EMPTY: AnswerDraft = { classId: null, alternateClassId: null, confidence: 'medium', note: '' };
-const keyOf = (pointId: string) => `groundsel.answer.${pointId}`;
+/** Somebody else at the same browser must not be shown what was begun here. */
+const keyOf = (pointId: string, personId: string) => `groundsel.answer.${personId}.${pointId}`;
+
+/** What this person began for a point before; null without it. */
+export function readDraft(pointId: string, personId: string): AnswerDraft | null {
+  const text = localStorage.getItem(keyOf(pointId, personId));
+  if (!text) return null;
+  try {
+    const parsed = draftSchema.safeParse(JSON.parse(text));
+    return parsed.success ? parsed.data : null;
+  } catch {
+    // Text of an older version or another hand: the answer as it stands loses nothing.
+    return null;
+  }
+}
 
 /** What was begun for a point before, else the answer given, else nothing. */
-export function openDraft(point: BlindPoint): AnswerDraft {
-  const text = localStorage.getItem(keyOf(point.id));
-  if (text) {
-    try {
-      const parsed = draftSchema.safeParse(JSON.parse(text));
-      if (parsed.success) return parsed.data;
-    } catch {
-      // Text of an older version or another hand: the answer as it stands loses nothing.
-    }
-  }
+export function openDraft(point: Pick<BlindPoint, 'id' | 'answer'>, personId: string): AnswerDraft {
+  const begun = readDraft(point.id, personId);
+  if (begun) return begun;
   if (!point.answer) return EMPTY;
   const { classId, alternateClassId, confidence, note } = point.answer;
   return { classId, alternateClassId, confidence, note };
 }
 
 /** Kept in the browser until it is saved, through a reload or a lost line. */
-export function keepDraft(pointId: string, draft: AnswerDraft): void {
-  localStorage.setItem(keyOf(pointId), JSON.stringify(draft));
+export function keepDraft(pointId: string, personId: string, draft: AnswerDraft): void {
+  localStorage.setItem(keyOf(pointId, personId), JSON.stringify(draft));
 }
 
-export function forgetDraft(pointId: string): void {
-  localStorage.removeItem(keyOf(pointId));
+export function forgetDraft(pointId: string, personId: string): void {
+  localStorage.removeItem(keyOf(pointId, personId));
 }
 
-/** The draft with a class chosen; the first choice and the alternate are never the same. */
-export function chooseClass(draft: AnswerDraft, classId: string, isAlternate: boolean): AnswerDraft {
+/** The draft with a class chosen; the first choice and the second are never the same. */
+export function chooseClass<T extends Pick<AnswerDraft, 'classId' | 'alternateClassId'>>(
+  draft: T,
+  classId: string,
+  isAlternate: boolean,
+): T {
   if (isAlternate) {
     if (classId === draft.classId) return draft;
     return { ...draft, alternateClassId: draft.alternateClassId === classId ? null : classId };

@@ -6,6 +6,7 @@ import {
   type PutAnswer,
 } from '../../../../shared/contracts/reference.ts';
 import { fetchJson } from '../../lib/fetch-json.ts';
+import { ProblemError } from '../../lib/problem-error.ts';
 import { projectKey } from '../../lib/project/project-query.ts';
 
 /** Outside the project's topics: what others do must not change the point under somebody's eyes. */
@@ -22,19 +23,36 @@ const pointQuery = (designId: string, number: number | null) =>
     },
     // What waits next is decided by the server when it is asked, not remembered.
     gcTime: 0,
+    staleTime: Infinity,
+    refetchOnMount: 'always',
     refetchOnWindowFocus: false,
+    refetchOnReconnect: false,
   });
 
 export function useBlindPoint(designId: string, number: number | null) {
-  return useQuery(pointQuery(designId, number));
+  return useQuery({ ...pointQuery(designId, number), placeholderData: (before) => before });
 }
 
-/** Stores an answer, and forgets what was asked before so that the next point is the server's choice. */
+/** The point after, read ahead so that its pictures are there when it is gone to; null reads nothing. */
+export function useFollowingPoint(designId: string, number: number | null): BlindPoint | null {
+  const query = useQuery({ ...pointQuery(designId, number ?? 0), enabled: number !== null });
+  return number === null ? null : (query.data?.point ?? null);
+}
+
+const LONGEST_WAIT_MS = 15_000;
+const MOST_TRIES = 12;
+
+/** No answer and the server's own faults pass; a refusal does not. */
+const mayPass = (error: Error) => error instanceof ProblemError && (error.status === 0 || error.status >= 500);
+
+/** Stores an answer, trying again by itself while the server does not answer. */
 export function usePutAnswer(projectId: string, designId: string) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: ({ point, answer }: { point: BlindPoint; answer: PutAnswer }) =>
       fetchJson(`/points/${point.id}/answer`, blindPointSchema, { method: 'PUT', body: answer }),
+    retry: (failures, error) => failures < MOST_TRIES && mayPass(error),
+    retryDelay: (failures) => Math.min(LONGEST_WAIT_MS, 1000 * 2 ** failures),
     onSuccess: () => {
       queryClient.removeQueries({ queryKey: checkKey(designId), type: 'inactive' });
       void queryClient.invalidateQueries({ queryKey: projectKey(projectId, 'designs') });

@@ -98,7 +98,7 @@ function PlaceOfPoint({ point }: { point: CellPoint }) {
   return (
     <div className="space-y-3">
       <div className="h-52">
-        <ContextViews place={point} views={shown.slice(0, 2)} zoomSteps={-1} />
+        <ContextViews projectId={id} place={point} views={shown.slice(0, 2)} zoomSteps={-1} />
       </div>
       <PointSpectra projectId={id} scenes={ready} outline={point.outline} outline3={point.outline3} />
     </div>

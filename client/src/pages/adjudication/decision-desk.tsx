@@ -4,10 +4,12 @@ import type { z } from 'zod';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Design, disagreementListSchema } from '../../../../shared/contracts/reference.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
-import { buttonClass } from '../../components/ui/button.tsx';
+import { PlaceTools } from '../../components/place/place-tools.tsx';
+import { contextKeys, useContextViews } from '../../components/place/use-context-views.ts';
+import { Button, buttonClass } from '../../components/ui/button.tsx';
+import { Kbd } from '../../components/ui/kbd.tsx';
 import { designTitle } from '../../features/designs/design-state.tsx';
-import { useContextViews } from '../../components/place/use-context-views.ts';
-import { ViewPicker } from '../../components/place/view-picker.tsx';
+import { InterpretationKeys } from '../../features/interpretation/interpretation-keys.tsx';
 import { classNames } from '../../lib/class-names.ts';
 import { formatCount } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';
@@ -28,6 +30,7 @@ export function DecisionDesk({ design, list, scenes, scheme }: DecisionDeskProps
   const [pointId, setPointId] = useState(
     () => (disagreements.find(({ decision }) => !decision) ?? disagreements[0])?.point.id ?? null,
   );
+  const [areKeysOpen, setAreKeysOpen] = useState(false);
   const context = useContextViews(design.projectId, scenes);
   const place = Math.max(
     0,
@@ -45,9 +48,8 @@ export function DecisionDesk({ design, list, scenes, scheme }: DecisionDeskProps
   };
   useTitle(['Decisions', designTitle(design)]);
   useKeys({
-    '+': context.closer,
-    '=': context.closer,
-    '-': context.farther,
+    ...contextKeys(context),
+    '?': () => setAreKeysOpen(true),
     ArrowUp: () => go(-1),
     ArrowDown: () => go(1),
     ArrowLeft: () => go(-1),
@@ -60,12 +62,17 @@ export function DecisionDesk({ design, list, scenes, scheme }: DecisionDeskProps
   return (
     <div className="flex h-dvh flex-col">
       <header className="flex min-h-[52px] shrink-0 flex-wrap items-center gap-x-4 gap-y-2 border-b border-line bg-paper px-[18px] py-2">
-        <h1 className="text-xl font-semibold tracking-tight whitespace-nowrap">Decisions</h1>
-        <span className="text-sm whitespace-nowrap text-ink-soft">{designTitle(design)}</span>
+        <div className="min-w-0">
+          <h1 className="text-lg leading-tight font-semibold tracking-tight whitespace-nowrap">Decisions</h1>
+          <p className="max-w-48 truncate text-xs text-ink-soft">{designTitle(design)}</p>
+        </div>
         <p role="status" className="grow text-sm">
           {undecided === 0 ? 'All decided' : `${formatCount(undecided, 'point')} to decide`} of {disagreements.length}
         </p>
-        <ViewPicker views={context.views} hidden={context.hidden} onChange={context.hide} />
+        <PlaceTools context={context} />
+        <Button size="sm" onClick={() => setAreKeysOpen(true)}>
+          Keys <Kbd>?</Kbd>
+        </Button>
         <Link
           to={paths.design(design.projectId, design.id)}
           className={buttonClass(undecided === 0 ? 'primary' : 'secondary', 'sm')}
@@ -111,6 +118,7 @@ export function DecisionDesk({ design, list, scenes, scheme }: DecisionDeskProps
           />
         )}
       </div>
+      {areKeysOpen && <InterpretationKeys of="decisions" onClose={() => setAreKeysOpen(false)} />}
     </div>
   );
 }

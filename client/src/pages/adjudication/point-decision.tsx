@@ -1,139 +1,153 @@
-import { useRef, useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import type { Design, Disagreement } from '../../../../shared/contracts/reference.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
-import { Button } from '../../components/ui/button.tsx';
-import { ClassSwatch } from '../../components/ui/class-swatch.tsx';
-import { ErrorState } from '../../components/ui/error-state.tsx';
-import { Field } from '../../components/ui/field.tsx';
-import { Kbd } from '../../components/ui/kbd.tsx';
-import { TextArea } from '../../components/ui/text-input.tsx';
-import { AnswersBeside } from '../../features/interpretation/answers-beside.tsx';
 import { ContextViews } from '../../components/place/context-views.tsx';
-import { useDecide } from '../../features/interpretation/disagreement-queries.ts';
 import { PointSpectra } from '../../components/place/point-spectra.tsx';
-import type { useContextViews } from '../../components/place/use-context-views.ts';
-import { classNames } from '../../lib/class-names.ts';
+import type { ContextState } from '../../components/place/use-context-views.ts';
+import { Button } from '../../components/ui/button.tsx';
+import { ErrorState } from '../../components/ui/error-state.tsx';
+import { chooseClass } from '../../features/interpretation/answer-draft.ts';
+import { AlternateSwitch } from '../../features/interpretation/answer-form.tsx';
+import { AnswersBeside } from '../../features/interpretation/answers-beside.tsx';
+import { classKeys, type NameableClass, takesEnter } from '../../features/interpretation/class-keys.ts';
+import { ClassList } from '../../features/interpretation/class-list.tsx';
+import {
+  type DecisionDraft,
+  forgetDecision,
+  keepDecision,
+  openDecision,
+} from '../../features/interpretation/decision-draft.ts';
+import { useDecide } from '../../features/interpretation/disagreement-queries.ts';
+import { NoteField } from '../../features/interpretation/note-field.tsx';
 import { formatCoordinates } from '../../lib/format-coordinates.ts';
 import { formatSince } from '../../lib/format-date.ts';
-import { type KeyMap, useKeys } from '../../lib/keys.ts';
+import { useKeys } from '../../lib/keys.ts';
+import { useAccount } from '../../lib/use-account.ts';
 
 export interface PointDecisionProps {
   design: Design;
   disagreement: Disagreement;
-  classes: readonly { id: string; name: string; colour: string; position: number }[];
+  classes: readonly NameableClass[];
   scenes: readonly Scene[];
-  context: ReturnType<typeof useContextViews>;
+  context: ContextState;
   onDecided: () => void;
 }
 
 /** A point at issue: its pictures, what was said of it, and the decision. */
 export function PointDecision({ design, disagreement, classes, scenes, context, onDecided }: PointDecisionProps) {
   const { point, answers, decision } = disagreement;
-  const [classId, setClassId] = useState(decision?.classId ?? null);
-  const [noteText, setNoteText] = useState(decision?.note ?? '');
+  const { id: personId } = useAccount();
+  const [draft, setDraft] = useState(() => openDecision(disagreement, personId));
+  const [isAlternate, setIsAlternate] = useState(false);
+  const [firstDigit, setFirstDigit] = useState(0);
+  const heading = useRef<HTMLHeadingElement>(null);
   const note = useRef<HTMLTextAreaElement>(null);
   const decide = useDecide(design.projectId);
   const canDecide = design.state === 'adjudicating' && design.abilities.adjudicate;
-  // Those that somebody said come first; any other class may be right as well.
-  const said = new Set(answers.flatMap((one) => [one.classId, one.alternateClassId]));
-  const ordered = [...classes.filter(({ id }) => said.has(id)), ...classes.filter(({ id }) => !said.has(id))];
-  const save = () => {
-    if (!canDecide || classId === null || decide.isPending) return;
-    decide.mutate({ pointId: point.id, decision: { classId, note: noteText } }, { onSuccess: onDecided });
+  useEffect(() => {
+    // The button pressed last went with its point; the keyboard goes on from the new one.
+    if (document.activeElement === document.body) heading.current?.focus({ preventScroll: true });
+  }, []);
+  const change = (next: DecisionDraft) => {
+    if (!canDecide || decide.isPending) return;
+    setDraft(next);
+    keepDecision(point.id, personId, next);
   };
-  const keys: KeyMap = {};
-  ordered.slice(0, 10).forEach(({ id }, place) => {
-    keys[String((place + 1) % 10)] = () => canDecide && setClassId(id);
-  });
+  const choose = (classId: string) => {
+    change(chooseClass(draft, classId, isAlternate));
+    setIsAlternate(false);
+  };
+  const save = () => {
+    const { classId, ...rest } = draft;
+    if (!canDecide || classId === null || decide.isPending) return;
+    const settle = () => {
+      forgetDecision(point.id, personId);
+      onDecided();
+    };
+    decide.mutate({ pointId: point.id, decision: { classId, ...rest } }, { onSuccess: settle });
+  };
   useKeys({
-    ...keys,
+    ...classKeys(classes, firstDigit, choose, setFirstDigit),
+    a: () => setIsAlternate(!isAlternate),
     n: () => note.current?.focus(),
-    Enter: ({ target }) =>
-      target instanceof HTMLElement && target.closest('button:not([aria-pressed=true]), a') ? false : save(),
+    Enter: (event) => (takesEnter(event) ? false : save()),
   });
+  const timesSaid = (classId: string) => {
+    const n = answers.filter((one) => one.classId === classId).length;
+    if (n > 0) return n === 1 ? 'said by one' : `said by ${n}`;
+    return answers.some((one) => one.alternateClassId === classId) ? 'a second choice' : null;
+  };
   const [lon, lat] = point.position;
   return (
     <div className="grid min-h-0 grid-cols-[minmax(0,1fr)_22rem] max-md:grid-cols-1 max-md:overflow-y-auto">
       <section aria-label="The place in pictures" className="min-h-0 overflow-y-auto p-3">
-        <ContextViews place={point} views={context.shown} zoomSteps={context.zoomSteps} />
+        <ContextViews
+          projectId={design.projectId}
+          place={point}
+          views={context.shown}
+          zoomSteps={context.zoomSteps}
+          hasOutlines={context.hasOutlines}
+          isLocal={context.isLocal}
+          onEnlarge={context.enlarge}
+          isLarge={context.largeId !== null}
+        />
       </section>
       <aside
         aria-label={`Point ${point.number}`}
         className="flex min-h-0 flex-col border-l border-line bg-card text-sm max-md:border-t max-md:border-l-0"
       >
-        <header className="px-[18px] pt-3">
-          <h2 className="text-lg font-semibold">Point {point.number}</h2>
+        <header className="flex items-baseline gap-2 px-[18px] pt-2.5">
+          <h2 ref={heading} tabIndex={-1} className="text-lg font-semibold whitespace-nowrap outline-none">
+            Point {point.number}
+          </h2>
           <p className="text-xs text-ink-soft">{formatCoordinates(lat, lon)}</p>
         </header>
-        <div className="min-h-0 grow space-y-4 overflow-y-auto px-[18px] py-3">
+        <div className="min-h-0 grow space-y-3 overflow-y-auto px-[18px] py-2.5">
           <AnswersBeside answers={answers} classes={classes} />
-          <PointSpectra
-            projectId={design.projectId}
-            scenes={scenes.filter(({ state }) => state === 'ready')}
-            outline={point.outline}
-            outline3={point.outline3}
-          />
-          <div role="group" aria-label="Decision" className="grid gap-1">
-            {ordered.map((one, place) => (
-              <button
-                key={one.id}
-                type="button"
-                disabled={!canDecide}
-                aria-pressed={classId === one.id}
-                onClick={() => setClassId(one.id)}
-                className={classNames(
-                  'focus-inset flex min-h-8 items-center gap-2.5 rounded-md border px-2 text-left disabled:cursor-not-allowed',
-                  classId === one.id
-                    ? 'border-ink bg-groundsel-wash font-medium'
-                    : 'border-line bg-card hover:bg-sunken',
-                )}
-              >
-                <span className="w-4 text-center text-xs text-ink-soft">
-                  {place < 10 ? String((place + 1) % 10) : ''}
-                </span>
-                <ClassSwatch size="sm" colour={one.colour} position={one.position} />
-                <span className="grow">{one.name}</span>
-                {said.has(one.id) && <span className="text-xs text-ink-soft">said</span>}
-              </button>
-            ))}
-          </div>
-          <Field
-            label={
-              <span className="inline-flex items-center gap-1.5">
-                Why <Kbd>N</Kbd>
-              </span>
-            }
-            isOptional
-          >
-            <TextArea
-              ref={note}
-              rows={2}
-              maxLength={2_000}
-              value={noteText}
-              disabled={!canDecide}
-              onChange={(event) => setNoteText(event.target.value)}
-              onKeyDown={(event) => {
-                if (event.key === 'Escape' || (event.key === 'Enter' && (event.ctrlKey || event.metaKey))) {
-                  event.preventDefault();
-                  event.currentTarget.blur();
-                }
-              }}
+          <div>
+            <div className="mb-1.5 flex items-center justify-between gap-2">
+              <p className="font-medium">{isAlternate ? 'What else could it be?' : 'What it is'}</p>
+              {canDecide && <AlternateSwitch isAlternate={isAlternate} onAlternate={setIsAlternate} />}
+            </div>
+            <ClassList
+              classes={classes}
+              firstDigit={firstDigit}
+              classId={draft.classId}
+              alternateClassId={draft.alternateClassId}
+              isAlternate={isAlternate}
+              isDisabled={!canDecide}
+              noteOf={timesSaid}
+              onChoose={choose}
             />
-          </Field>
+          </div>
+          <NoteField
+            ref={note}
+            label="Why"
+            value={draft.note}
+            isDisabled={!canDecide}
+            placeholder="What settled it"
+            onChange={(text) => change({ ...draft, note: text })}
+          />
           {decision && (
             <p className="text-xs text-ink-soft">
               Decided by {decision.decidedBy?.name ?? 'someone no longer here'}, {formatSince(decision.decidedAt)}.
             </p>
           )}
           {decide.error && <ErrorState error={decide.error} isInline onRetry={save} />}
+          <PointSpectra
+            projectId={design.projectId}
+            scenes={scenes.filter(({ state }) => state === 'ready')}
+            outline={point.outline}
+            outline3={point.outline3}
+          />
         </div>
         {canDecide && (
-          <footer className="flex border-t border-line px-[18px] py-3 *:grow">
+          <footer className="flex border-t border-line px-[18px] py-2.5 *:grow">
             <Button
               kind="primary"
               onClick={save}
               isPending={decide.isPending}
-              disabled={classId === null}
+              disabled={draft.classId === null}
               aria-keyshortcuts="Enter"
             >
               {decision ? 'Change the decision' : 'Decide and go on'} ↵

@@ -3,6 +3,8 @@ import { Link } from 'react-router-dom';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Design } from '../../../../shared/contracts/reference.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
+import { PlaceTools } from '../../components/place/place-tools.tsx';
+import { contextKeys, useContextViews } from '../../components/place/use-context-views.ts';
 import { Button, buttonClass } from '../../components/ui/button.tsx';
 import { EmptyState } from '../../components/ui/empty-state.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
@@ -10,10 +12,8 @@ import { Kbd } from '../../components/ui/kbd.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
 import { designTitle } from '../../features/designs/design-state.tsx';
 import { useBlindPoint } from '../../features/interpretation/blind-point-queries.ts';
-import { CheckKeys } from '../../features/interpretation/check-keys.tsx';
 import { CheckProgress } from '../../features/interpretation/check-progress.tsx';
-import { useContextViews } from '../../components/place/use-context-views.ts';
-import { ViewPicker } from '../../components/place/view-picker.tsx';
+import { InterpretationKeys } from '../../features/interpretation/interpretation-keys.tsx';
 import { formatCount } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';
 import { paths } from '../../lib/paths.ts';
@@ -33,25 +33,26 @@ export function CheckDesk({ design, scenes, scheme }: CheckDeskProps) {
   const [areKeysOpen, setAreKeysOpen] = useState(false);
   const context = useContextViews(projectId, scenes);
   const current = useBlindPoint(id, number);
-  const progress = current.data?.progress;
+  const { point, progress } = current.data ?? { point: null, progress: undefined };
   useTitle(['Blind check', designTitle(design)], progress ? progress.answered / Math.max(1, progress.total) : null);
-  useKeys({
-    '+': context.closer,
-    '=': context.closer,
-    '-': context.farther,
-    '?': () => setAreKeysOpen(true),
-  });
+  useKeys({ ...contextKeys(context), '?': () => setAreKeysOpen(true) });
   const classes = design.classes.map((one) => ({
     ...one,
     position: scheme.find(({ id: classId }) => classId === one.id)?.position ?? 0,
   }));
+  const goOn = () => {
+    setNumber(null);
+    if (number === null) void current.refetch();
+  };
   return (
     <div className="flex h-dvh flex-col">
       <header className="flex min-h-[52px] shrink-0 flex-wrap items-center gap-x-4 gap-y-2 border-b border-line bg-paper px-[18px] py-2">
-        <h1 className="text-xl font-semibold tracking-tight whitespace-nowrap">Blind check</h1>
-        <span className="text-sm whitespace-nowrap text-ink-soft">{designTitle(design)}</span>
+        <div className="min-w-0">
+          <h1 className="text-lg leading-tight font-semibold tracking-tight whitespace-nowrap">Blind check</h1>
+          <p className="max-w-48 truncate text-xs text-ink-soft">{designTitle(design)}</p>
+        </div>
         {progress ? <CheckProgress progress={progress} /> : <span className="grow" />}
-        <ViewPicker views={context.views} hidden={context.hidden} onChange={context.hide} />
+        <PlaceTools context={context} />
         <Button size="sm" onClick={() => setAreKeysOpen(true)}>
           Keys <Kbd>?</Kbd>
         </Button>
@@ -59,28 +60,29 @@ export function CheckDesk({ design, scenes, scheme }: CheckDeskProps) {
           Leave
         </Link>
       </header>
+      <p role="status" className="sr-only">
+        {point && progress && `Point ${point.number}. ${progress.answered} of ${progress.total} answered.`}
+      </p>
       {current.isPending && <PendingState label="Fetching the point" className="p-10" rows={4} />}
       {current.isError && (
         <div className="p-10">
           <ErrorState error={current.error} onRetry={() => void current.refetch()} />
         </div>
       )}
-      {current.data?.point && (
+      {!current.isError && point && (
         <PointCheck
-          key={current.data.point.id}
+          key={point.id}
           design={design}
-          point={current.data.point}
+          point={point}
           classes={classes}
           scenes={scenes}
           context={context}
+          isLeaving={current.isFetching}
           onGo={setNumber}
-          onNext={() => {
-            setNumber(null);
-            if (number === null) void current.refetch();
-          }}
+          onNext={goOn}
         />
       )}
-      {current.data && !current.data.point && (
+      {!current.isError && current.data && !point && (
         <div className="p-10">
           <EmptyState
             title="All your points are answered"
@@ -100,7 +102,7 @@ export function CheckDesk({ design, scenes, scheme }: CheckDeskProps) {
           </EmptyState>
         </div>
       )}
-      {areKeysOpen && <CheckKeys onClose={() => setAreKeysOpen(false)} />}
+      {areKeysOpen && <InterpretationKeys of="check" onClose={() => setAreKeysOpen(false)} />}
     </div>
   );
 }
