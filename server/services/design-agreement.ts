@@ -1,10 +1,12 @@
 import type { Agreement, How } from '../../shared/contracts/reference.ts';
 import { bootstrapPoints } from '../analysis/accuracy/agreement-bootstrap.ts';
 import {
+  computeClassAgreement,
   computeFleissKappa,
   computeKrippendorffAlpha,
   computePairKappa,
   computeRawAgreement,
+  countClassPairs,
   type PointAnswers,
 } from '../analysis/accuracy/interpreter-agreement.ts';
 import { createRng } from '../analysis/sampling/rng.ts';
@@ -38,6 +40,10 @@ const FORMULAS = {
     formula: `α = 1 − D_o / D_e for nominal data, missing answers allowed; ${BOOTSTRAP}`,
     source: 'Krippendorff 2011, Computing Krippendorff’s Alpha-Reliability',
   },
+  class: {
+    formula: `share of the other answers of a point that name the class, over all answers that name it; ${BOOTSTRAP}`,
+    source: 'Fleiss 1971, Psychological Bulletin 76:378–382 (agreement by category), weighted for missing answers',
+  },
 } as const;
 
 /** How far the interpreters agree, before anything was decided. @throws Conflict "still-interpreting" */
@@ -57,10 +63,10 @@ export async function measureAgreement(app: App, design: ReferenceDesign): Promi
   const nClasses = design.classes.length;
   const compared = points.filter((answers) => answers.filter((answer) => answer !== null).length >= 2);
 
-  const figure = (
+  const figure = <T>(
     kind: keyof typeof FORMULAS,
-    used: readonly PointAnswers[],
-    measure: (points: readonly PointAnswers[]) => number | null,
+    used: readonly T[],
+    measure: (points: readonly T[]) => number | null,
   ): Agreement['raw'] => {
     const nReplicates = Math.max(50, Math.min(REPLICATES, Math.floor(BUDGET / Math.max(1, used.length))));
     const { value, standardError, low, high } = bootstrapPoints(used, measure, createRng(SEED), { nReplicates });
@@ -98,6 +104,14 @@ export async function measureAgreement(app: App, design: ReferenceDesign): Promi
     })),
     fleiss: figure('fleiss', full, (used) => computeFleissKappa(used, nClasses, design.answersPerPoint)?.kappa ?? null),
     krippendorff: figure('krippendorff', compared, (used) => computeKrippendorffAlpha(used, nClasses)),
+    perClass: design.classes.map((one, classIndex) => {
+      const pairs = countClassPairs(compared, classIndex);
+      return {
+        class: one,
+        answers: pairs.reduce((sum, { answers }) => sum + answers, 0),
+        figure: figure('class', pairs, computeClassAgreement),
+      };
+    }),
     matrix: most ? crossTabulate(most.shared, most.first, most.second, nClasses) : null,
     cautions: [
       'Agreement is that of the first choices, before anything was decided.',

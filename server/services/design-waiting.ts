@@ -18,9 +18,10 @@ export async function listWaitingDesigns(app: App, projectId: string, viewer: Vi
   for (const design of designs) {
     const { points, settled, mine } = await measureDesignProgress(app, design, viewer.userId);
     const name = `reference design ${design.number}`;
-    if (mine.left > 0) waiting.push({ text: `Interpret ${countPoints(mine.left)} of ${name}`, path: 'accuracy' });
+    const page = `accuracy/designs/${design.id}`;
+    if (mine.left > 0) waiting.push({ text: `Interpret ${countPoints(mine.left)} of ${name}`, path: `${page}/check` });
     const undecided = design.state === 'adjudicating' ? points - settled : 0;
-    if (undecided > 0) waiting.push({ text: `Decide ${countPoints(undecided)} of ${name}`, path: 'accuracy' });
+    if (undecided > 0) waiting.push({ text: `Decide ${countPoints(undecided)} of ${name}`, path: `${page}/decide` });
   }
   return waiting;
 }

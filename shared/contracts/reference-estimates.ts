@@ -123,6 +123,10 @@ export const agreementSchema = z.object({
   cohen: z.array(z.object({ first: z.number().int(), second: z.number().int(), figure: agreementFigureSchema })),
   fleiss: agreementFigureSchema,
   krippendorff: agreementFigureSchema,
+  /** By class in the design's order: `answers` name it, and another answer of the same point agrees so often. */
+  perClass: z.array(
+    z.object({ class: referenceClassSchema, answers: z.number().int(), figure: agreementFigureSchema }),
+  ),
   /** answers[first][second] of the two interpreters with most points in common, by class in the design's order. */
   matrix: z.array(z.array(z.number().int())).nullable(),
   cautions: z.array(z.string()),

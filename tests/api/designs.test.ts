@@ -409,6 +409,13 @@ describe('the blind check', () => {
     const fleiss = (observed - chance) / (1 - chance);
     expect(agreement.fleiss.value).toBeCloseTo(fleiss, 12);
     expect(agreement.krippendorff.value).toBeCloseTo(1 - ((1 - fleiss) * (2 * n - 1)) / (2 * n), 12);
+    // Of two answers each, a class is agreed on by twice its diagonal over both its margins.
+    agreement.perClass.forEach(({ class: { id }, answers, figure }, k) => {
+      expect(id).toBe(ground.classes[k]!.id);
+      expect(answers).toBe(rows[k]! + columns[k]!);
+      expect(figure.value).toBeCloseTo((2 * table[k]![k]!) / answers, 12);
+      expect(figure.low!).toBeLessThanOrEqual(figure.value!);
+    });
   });
 
   it('lists disagreements with both answers and no mapped class, and takes decisions on them only', async () => {
@@ -580,12 +587,16 @@ describe('two people at once', () => {
       expect(await test.app.db.getRepository(ReferenceAnswer).countBy({ pointId: id })).toBe(1);
     }
     const overview = (await reviewer.get(`${projectPath}/overview`).expect(200)).body as Overview;
-    expect(overview.waiting.map(({ text }) => text)).toContain(
-      `Interpret 12 points of reference design ${design.number}`,
-    );
+    expect(overview.waiting).toContainEqual({
+      text: `Interpret 12 points of reference design ${design.number}`,
+      path: `accuracy/designs/${design.id}/check`,
+    });
     await lead.post(`${API}/designs/${design.id}/adjudicate`).send({}).expect(200);
     const after = (await reviewer.get(`${projectPath}/overview`).expect(200)).body as Overview;
-    expect(after.waiting.map(({ text }) => text)).toContain(`Decide 12 points of reference design ${design.number}`);
+    expect(after.waiting).toContainEqual({
+      text: `Decide 12 points of reference design ${design.number}`,
+      path: `accuracy/designs/${design.id}/decide`,
+    });
     const ofLead = (await lead.get(`${projectPath}/overview`).expect(200)).body as Overview;
     expect(ofLead.waiting.some(({ text }) => text.includes('reference design'))).toBe(false);
     await lead.post(`${API}/designs/${design.id}/close`).send({ leaveUnsettled: true }).expect(200);

@@ -2,7 +2,7 @@ import AxeBuilder from '@axe-core/playwright';
 import type { Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { generateIsland } from '../../server/demo/island/generate-island.ts';
-import type { Design, Estimates } from '../../shared/contracts/reference.ts';
+import type { BlindPoint, Design, Estimates } from '../../shared/contracts/reference.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { openProduct, type Product } from './open-product.ts';
 
@@ -111,10 +111,16 @@ describe('a map judged by reference points', () => {
   it('is interpreted by two people by keyboard, who are sent nothing of the map', async () => {
     const bodies: string[] = [];
     const refused: string[] = [];
-    reviewer.on('response', (response) => {
-      if (response.headers()['content-type']?.includes('json')) void response.text().then((text) => bodies.push(text));
-      if (response.url().includes('/runs/') && response.ok()) refused.push(response.url());
-    });
+    // Every answer of the server passes through here, so that none is missed because the page moved on.
+    await reviewer.route(
+      (url) => url.pathname.startsWith('/api/v1/') && !/events|tiles/.test(url.pathname),
+      async (at) => {
+        const response = await at.fetch();
+        bodies.push(await response.text());
+        if (at.request().url().includes('/runs/') && response.ok()) refused.push(at.request().url());
+        await at.fulfill({ response });
+      },
+    );
     await reviewer.goto(designUrl('/check'));
     await reviewer.locator('img.leaflet-tile-loaded').first().waitFor();
     await expectAccessible(reviewer);
@@ -128,6 +134,7 @@ describe('a map judged by reference points', () => {
     await reviewer.getByRole('button', { name: /Saltmarsh/, pressed: true }).waitFor();
     expect(await reviewer.getByLabel(/Note/).inputValue()).toBe('wet ground');
     await answerAll(reviewer, '3');
+    await reviewer.unrouteAll({ behavior: 'wait' });
     await answerAll(second, '2');
     expect(bodies.length).toBeGreaterThan(20);
     expect(bodies.filter((text) => /mapped|"strata":\[/i.test(text.replaceAll(/"mapsWithheld":\w+/g, '')))).toEqual([]);
@@ -139,6 +146,26 @@ describe('a map judged by reference points', () => {
     ]) {
       expect((await reviewer.request.get(`${product.url}/api/v1${path}`)).ok(), path).toBe(false);
     }
+  });
+
+  it('keeps an answer while the line is down, and saves it once it is back', async () => {
+    await second.goto(designUrl('/check'));
+    await second.getByRole('button', { name: 'Look at them again' }).click();
+    const heading = second.getByRole('heading', { level: 2 });
+    await heading.waitFor();
+    const before = await heading.textContent();
+    await second.keyboard.press('n');
+    await second.keyboard.type('seen from the road');
+    await second.keyboard.press('Escape');
+    await second.context().setOffline(true);
+    await second.keyboard.press('Enter');
+    await second.getByText('No network.').waitFor();
+    expect(await heading.textContent()).toBe(before);
+    await second.context().setOffline(false);
+    await second.getByText('All your points are answered').waitFor();
+    const number = Number(/\d+/.exec(before ?? '')?.[0]);
+    const { answer } = await getJson<BlindPoint>(second, `/designs/${design.id}/points/${number}`);
+    expect(answer?.note).toBe('seen from the road');
   });
 
   it('has its disagreements decided, and is closed', async () => {
@@ -170,11 +197,10 @@ describe('a map judged by reference points', () => {
     await lead.getByText('of the mapped area is mapped rightly').waitFor();
     await lead.getByRole('table', { name: 'Areas of the classes' }).waitFor();
     await lead.getByRole('button', { name: 'Overall accuracy, how was this computed?' }).first().click();
-    await lead
-      .getByText(/Olofsson/)
-      .first()
-      .waitFor();
+    const how = lead.getByRole('dialog', { name: 'How Overall accuracy was computed' });
+    await how.getByText(/Olofsson/).waitFor();
     await lead.keyboard.press('Escape');
+    await how.waitFor({ state: 'hidden' });
     await expectAccessible(lead);
     const [download] = await Promise.all([
       lead.waitForEvent('download'),

@@ -1,10 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { bootstrapPoints } from '../../server/analysis/accuracy/agreement-bootstrap.ts';
 import {
+  computeClassAgreement,
   computeFleissKappa,
   computeKrippendorffAlpha,
   computePairKappa,
   computeRawAgreement,
+  countClassPairs,
   type PointAnswers,
 } from '../../server/analysis/accuracy/interpreter-agreement.ts';
 import { createRng } from '../../server/analysis/sampling/rng.ts';
@@ -104,6 +106,42 @@ it('has the share of agreeing pairs, worked by hand', () => {
   // 1, one pair of three, undefined (one answer): mean of 1 and 1/3.
   expect(computeRawAgreement([[0, 0, null], [0, 1, 1], [1, null, null]], 2)).toBeCloseTo(2 / 3, 12); // prettier-ignore
   expect(computeRawAgreement([[0, null]], 2)).toBeNull();
+});
+
+describe('agreement about one class', () => {
+  const agreementOf = (points: readonly PointAnswers[], k: number) => computeClassAgreement(countClassPairs(points, k));
+
+  it('gives the kappas by category of Fleiss 1971, Psychological Bulletin 76:378–382 (printed values from memory)', () => {
+    const { counts } = checkValues.fleiss1971;
+    const points = answersOf(counts);
+    const total = 30 * 6;
+    const kappas = [0, 1, 2, 3, 4].map((k) => {
+      const share = counts.reduce((sum, row) => sum + row[k], 0) / total;
+      return (agreementOf(points, k)! - share) / (1 - share);
+    });
+    expect(kappas.map((kappa) => kappa.toFixed(3))).toEqual(['0.245', '0.245', '0.520', '0.471', '0.566']);
+  });
+
+  it('averages, over the answers, to raw agreement where every point has as many answers', () => {
+    const points = answersOf(checkValues.fleiss1971.counts);
+    const byAnswers = [0, 1, 2, 3, 4].reduce((sum, k) => {
+      const answers = points.flat().filter((answer) => answer === k).length;
+      return sum + (answers / 180) * agreementOf(points, k)!;
+    }, 0);
+    expect(byAnswers).toBeCloseTo(computeRawAgreement(points, 5)!, 12);
+  });
+
+  it('leaves out points with one answer, takes missing ones, and is undefined for a class nobody named', () => {
+    const points: PointAnswers[] = [
+      [0, 0, null],
+      [0, 1, 1],
+      [0, null, null],
+    ];
+    // Three answers name class 0 at points that can agree; the two of the first point agree with each other.
+    expect(agreementOf(points, 0)).toBeCloseTo(2 / 3, 12);
+    expect(agreementOf(points, 1)).toBeCloseTo(1 / 2, 12);
+    expect(agreementOf(points, 2)).toBeNull();
+  });
 });
 
 describe('interval of agreement by drawing points again', () => {

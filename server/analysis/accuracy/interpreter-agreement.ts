@@ -118,6 +118,41 @@ export function computeKrippendorffAlpha(points: readonly PointAnswers[], nClass
   return 1 - (nPaired - agreeing) / (nPaired - byChance);
 }
 
+/** What one point says of the agreement about a class. */
+export interface ClassPairs {
+  /** Answers that name the class, at a point with at least two answers. */
+  answers: number;
+  /** The same, each times the share of the other answers of the point that name the class as well. */
+  agreeing: number;
+}
+
+/** What each point with at least two answers says of a class, for `computeClassAgreement`. */
+export function countClassPairs(points: readonly PointAnswers[], classIndex: number): ClassPairs[] {
+  return points.flatMap((given) => {
+    const m = given.reduce<number>((n, answer) => n + (answer === null ? 0 : 1), 0);
+    if (m < 2) return [];
+    const answers = given.reduce<number>((n, answer) => n + (answer === classIndex ? 1 : 0), 0);
+    return [{ answers, agreeing: (answers * (answers - 1)) / (m - 1) }];
+  });
+}
+
+/**
+ * Agreement about one class: the chance that another answer of a point names the class, given that one does; `null` where
+ * no answer names it. Missing answers are allowed, as in the coincidence matrix of Krippendorff 2011.
+ *
+ * Source: Fleiss 1971, Psychological Bulletin 76:378–382, the conditional probability for a category (the same number of
+ * answers at each point), of which this is the weighted form.
+ */
+export function computeClassAgreement(pairs: readonly ClassPairs[]): number | null {
+  let answers = 0;
+  let agreeing = 0;
+  for (const pair of pairs) {
+    answers += pair.answers;
+    agreeing += pair.agreeing;
+  }
+  return answers > 0 ? agreeing / answers : null;
+}
+
 /** Answers of each point by class. @throws RangeError for a class index out of range. */
 function countAnswers(points: readonly PointAnswers[], nClasses: number): number[][] {
   return points.map((answers, i) => {

@@ -1,97 +1,74 @@
 import type { Agreement, Design } from '../../../../shared/contracts/reference.ts';
-import { ChartFrame } from '../../components/charts/chart-frame.tsx';
-import { HowComputed } from '../../components/figures/how-computed.tsx';
 import { Callout } from '../../components/ui/callout.tsx';
+import { ClassSwatch } from '../../components/ui/class-swatch.tsx';
 import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
-import { formatCount, formatNumber } from '../../lib/format.ts';
+import { formatCount } from '../../lib/format.ts';
+import { type AgreementRow, AgreementTable } from './agreement-table.tsx';
+import { ConfusedPairs } from './confused-pairs.tsx';
 import { useAgreement } from './get-agreement.ts';
 
-type Figure = Agreement['raw'];
+export interface AgreementPanelProps {
+  design: Design;
+  /** Place of a class in the scheme, for its pattern. */
+  positionOf: (classId: string) => number;
+}
 
-/** How far the people who interpreted a design agree. */
-export function AgreementPanel({ design }: { design: Design }) {
+/** How far the people who interpreted a design agree: in all, by class, and which classes they do not tell apart. */
+export function AgreementPanel({ design, positionOf }: AgreementPanelProps) {
   const agreement = useAgreement(design.projectId, design.id, true);
   if (agreement.isPending) return <PendingState label="Comparing the answers" rows={4} />;
   if (agreement.isError)
     return <ErrorState error={agreement.error} onRetry={() => void agreement.refetch()} isInline />;
-  const rows = listRows(agreement.data);
-  if (agreement.data.nPoints === 0) {
+  const { nPoints, interpreters, perClass, matrix, cautions } = agreement.data;
+  if (nPoints === 0) {
     return <Callout>No point has two answers, so nothing can be said about agreement.</Callout>;
   }
   return (
-    <>
-      <ChartFrame
-        title="Agreement"
-        isTitleHidden
-        isTable
-        note={`${formatCount(agreement.data.nPoints, 'point')} with two answers or more; whiskers are 95 % intervals over points.`}
-        data={{
-          columns: [
-            { name: 'Figure' },
-            { name: 'Value', isNumber: true, decimals: 4 },
-            { name: 'Standard error', isNumber: true, decimals: 4 },
-            { name: 'Low', isNumber: true, decimals: 4 },
-            { name: 'High', isNumber: true, decimals: 4 },
-            { name: 'Points', isNumber: true },
-          ],
-          rows: rows.map(({ name, figure }) => [
-            name,
-            figure.value,
-            figure.standardError,
-            figure.low,
-            figure.high,
-            figure.n,
-          ]),
-        }}
-      >
-        <table className="w-full border-separate border-spacing-0 text-sm" aria-label="Agreement">
-          <thead>
-            <tr className="text-ink-soft *:pb-1 *:pl-3 *:text-right *:font-medium">
-              <th scope="col" className="pl-0! text-left!">
-                Figure
-              </th>
-              <th scope="col">Value</th>
-              <th scope="col">95 % interval</th>
-              <th scope="col">Points</th>
-            </tr>
-          </thead>
-          <tbody>
-            {rows.map(({ name, figure }) => (
-              <tr key={name} className="*:border-t *:border-line *:py-1.5 *:pl-3 *:text-right">
-                <th scope="row" className="pl-0! text-left! font-normal">
-                  <HowComputed name={name} how={figure.how} trigger={name} />
-                </th>
-                <td className="font-medium">{figure.value === null ? 'undefined' : formatNumber(figure.value, 3)}</td>
-                <td>
-                  {figure.low === null || figure.high === null
-                    ? 'undefined'
-                    : `${formatNumber(figure.low, 3)} to ${formatNumber(figure.high, 3)}`}
-                </td>
-                <td>{formatNumber(figure.n)}</td>
-              </tr>
-            ))}
-          </tbody>
-        </table>
-      </ChartFrame>
-      {agreement.data.cautions.map((caution) => (
-        <p key={caution} className="mt-2 text-sm text-ink-soft">
-          {caution}
-        </p>
-      ))}
-    </>
+    <div className="space-y-7">
+      <div>
+        <AgreementTable
+          title="Agreement"
+          isTitleHidden
+          of="Figure"
+          unit="Points"
+          note={`${formatCount(nPoints, 'point')} with two answers or more, by ${interpreters
+            .map(({ person, answered }) => `${person?.name ?? 'someone no longer here'} (${answered})`)
+            .join(', ')}; whiskers are 95 % intervals over points.`}
+          rows={listRows(agreement.data)}
+        />
+        {cautions.map((caution) => (
+          <p key={caution} className="mt-2 text-sm text-ink-soft">
+            {caution}
+          </p>
+        ))}
+      </div>
+      <div className="grid gap-7 xl:grid-cols-[minmax(0,3fr)_minmax(0,2fr)]">
+        <AgreementTable
+          title="By class"
+          of="Class"
+          unit="Answers"
+          note="Where one answer names the class, how often another answer of the same point does."
+          rows={perClass.map(({ class: one, answers, figure }) => ({
+            ...{ name: one.name, colour: one.colour, figure, n: answers },
+            swatch: <ClassSwatch size="sm" colour={one.colour} position={positionOf(one.id)} />,
+          }))}
+        />
+        {matrix && <ConfusedPairs matrix={matrix} design={design} />}
+      </div>
+    </div>
   );
 }
 
-function listRows({ raw, cohen, fleiss, krippendorff, interpreters }: Agreement): { name: string; figure: Figure }[] {
+function listRows({ raw, cohen, fleiss, krippendorff, interpreters }: Agreement): AgreementRow[] {
   const nameOf = (place: number) => interpreters[place]?.person?.name ?? 'someone no longer here';
   return [
-    { name: 'Same class (raw agreement)', figure: raw },
+    { name: 'Same class (raw agreement)', figure: raw, n: raw.n },
     ...cohen.map(({ first, second, figure }) => ({
       name: `Cohen’s kappa, ${nameOf(first)} and ${nameOf(second)}`,
-      figure,
+      ...{ figure, n: figure.n },
     })),
-    { name: 'Fleiss’ kappa', figure: fleiss },
-    { name: 'Krippendorff’s alpha', figure: krippendorff },
+    { name: 'Fleiss’ kappa', figure: fleiss, n: fleiss.n },
+    { name: 'Krippendorff’s alpha', figure: krippendorff, n: krippendorff.n },
   ];
 }

@@ -108,7 +108,7 @@ function LoadedDesign({ design }: { design: Design }) {
         </div>
         {(design.state === 'adjudicating' || design.state === 'closed') && (
           <Section title="Do the interpreters agree?">
-            <AgreementPanel design={design} />
+            <AgreementPanel design={design} positionOf={(classId) => positions.get(classId) ?? 0} />
           </Section>
         )}
         <div className="grid gap-9 xl:grid-cols-[22rem_minmax(0,1fr)]">
