@@ -298,6 +298,20 @@ export const cellPointsSchema = z.object({
 });
 export type CellPoint = z.infer<typeof cellPointsSchema>['points'][number];
 
+/** Where the points are, to be found on the ground: nothing of map or answers. */
+export const answerSheetSchema = z.object({
+  /** Name of the scene's reference system, which easting and northing are in. */
+  crsName: z.string(),
+  points: z.array(
+    z.object({
+      number: z.number().int(),
+      position: positionSchema,
+      /** In the scene's reference system: x and y of the pixel's centre. */
+      projected: z.tuple([z.number(), z.number()]),
+    }),
+  ),
+});
+
 /** CSV with a heading: number or lon,lat; class_code or class; optional alternate_code or alternate, confidence, note. */
 export const importAnswersSchema = z
   .object({ csv: z.string().min(1, 'The file is empty.').max(6_000_000), dryRun: z.boolean().default(false) })

@@ -175,6 +175,7 @@ const TABLE: Record<string, Row> = {
   'designs.agreement': ACCURACY,
   'designs.cell': ACCURACY,
   'designs.compare-kappas': ACCURACY,
+  'designs.sheet': ACCURACY,
   'designs.zones': ACCURACY,
   'zone-layers.list': ACCURACY,
   'zone-layers.add': LEAD_REVIEWER,

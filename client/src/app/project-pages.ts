@@ -57,6 +57,10 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/design/design-page.tsx'), 'DesignPage'),
   },
   {
+    path: 'accuracy/designs/:designId/sheet',
+    lazy: lazyPage(() => import('../pages/answer-sheet/answer-sheet-page.tsx'), 'AnswerSheetPage'),
+  },
+  {
     path: 'accuracy/designs/:designId/check',
     handle: FULL_SCREEN,
     lazy: lazyPage(() => import('../pages/blind-check/blind-check-page.tsx'), 'BlindCheckPage'),

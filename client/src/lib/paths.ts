@@ -27,6 +27,7 @@ export const paths = {
   newDesign: (projectId: string, runId?: string) =>
     `/projects/${projectId}/accuracy/designs/new${runId ? `?run=${runId}` : ''}`,
   design: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}`,
+  answerSheet: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}/sheet`,
   blindCheck: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}/check`,
   adjudication: (projectId: string, designId: string) => `/projects/${projectId}/accuracy/designs/${designId}/decide`,
   handover: (projectId: string) => `/projects/${projectId}/handover`,

@@ -1,5 +1,6 @@
 import {
   agreementSchema,
+  answerSheetSchema,
   cellPointsQuerySchema,
   cellPointsSchema,
   compareKappasQuerySchema,
@@ -18,6 +19,7 @@ import { requireMapsShown } from '../../services/design-blindness.ts';
 import { writeEstimatesCsv, writePointsCsv } from '../../services/design-csv.ts';
 import { estimateDesign } from '../../services/design-estimates.ts';
 import { listCellPoints } from '../../services/design-cell.ts';
+import { listSheetPoints } from '../../services/design-sheet.ts';
 import { loadAnsweredPoints } from '../../services/design-settle.ts';
 import type { Response } from 'express';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
@@ -113,6 +115,16 @@ const estimateRoutes = [
 
 export const resultRoutes = [
   ...estimateRoutes,
+  route({
+    id: 'designs.sheet',
+    method: 'get',
+    path: '/designs/:designId/sheet',
+    summary: 'Where the points are, for an answer sheet on paper; nothing of map or answers',
+    access: read,
+    params: designParams,
+    answer: answerSheetSchema,
+    handle: ({ app, target }) => listSheetPoints(app, target.design),
+  }),
   route({
     id: 'designs.agreement',
     method: 'get',

@@ -65,7 +65,7 @@ export function AreaPart({ estimates, positions }: AreaPartProps) {
                       trigger={
                         row.areaHa.value === null
                           ? 'undefined'
-                          : `${formatNumber(row.areaHa.value)}${half === null ? '' : ` ± ${formatNumber(half)}`}`
+                          : `${formatNumber(row.areaHa.value)}${half === null || row.areaHa.isFragile ? '' : ` ± ${formatNumber(half)}`}`
                       }
                     />
                   </td>
@@ -86,8 +86,9 @@ export function AreaPart({ estimates, positions }: AreaPartProps) {
         </table>
       </div>
       <p className="text-sm text-ink-soft">
-        Areas are true ones on the ellipsoid, each row of pixels by its own pixel area. Counting pixels takes every
-        mistake of the map as right; the estimate corrects for it (Olofsson et al. 2014).
+        A pixel counts with the grid’s own area where its projection keeps areas to within 1 %, and otherwise with its
+        true area on the ellipsoid, row by row; the run’s notes say which. Counting pixels takes every mistake of the
+        map as right; the estimate corrects for it (Olofsson et al. 2014).
       </p>
     </div>
   );

@@ -16,7 +16,7 @@ export function ClassEstimates({ estimates, positions }: ClassEstimatesProps) {
   return (
     <ChartFrame
       title="How far each class can be trusted"
-      note="User’s: of what is mapped as the class, the share that is. Producer’s: of what is the class, the share mapped so. In brackets the 95 % interval; where points are few, the cautious one."
+      note="User’s: of what is mapped as the class, the share that is. Producer’s: of what is the class, the share mapped so. In small print the 95 % interval; where points are few, the cautious one."
       isTable
       data={{
         columns: [

@@ -1,4 +1,4 @@
-import { Crosshair, Download, MoreHorizontal, Plus, Trash2, Upload } from 'lucide-react';
+import { Crosshair, Download, MoreHorizontal, Plus, Printer, Trash2, Upload } from 'lucide-react';
 import { type ReactNode, useState } from 'react';
 import { Link, useNavigate, useParams } from 'react-router-dom';
 import type { Design } from '../../../../shared/contracts/reference.ts';
@@ -222,6 +222,11 @@ function DesignMenu({ design, onDialog }: ActProps) {
       {abilities.exportPoints && (
         <MenuItem icon={<Download />} href={apiUrl(`/designs/${design.id}/points.csv`)}>
           {design.state === 'closed' ? 'Points and answers as CSV' : 'Answer sheet as CSV'}
+        </MenuItem>
+      )}
+      {design.state !== 'closed' && (
+        <MenuItem icon={<Printer />} to={paths.answerSheet(design.projectId, design.id)}>
+          Answer sheet to print
         </MenuItem>
       )}
       {abilities.interpret && (
