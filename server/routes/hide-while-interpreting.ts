@@ -5,6 +5,7 @@ import type { Route } from './route.ts';
 export function hideWhileInterpreting(route: Route): Route {
   return {
     ...route,
+    isHiddenWhileInterpreting: true,
     async handle(context) {
       await requireMapsShown(context.app, context.target.projectId, context.viewer);
       return route.handle(context);

@@ -50,6 +50,8 @@ export interface RouteDefinition<
   answer: S | { mediaType: string } | 'none';
   /** 200 unless said. */
   status?: number;
+  /** Refused to interpreters while reference points are open; set by `hideWhileInterpreting` alone. */
+  isHiddenWhileInterpreting?: true;
   /** Extra middleware after authority is decided (uploads). */
   before?: (app: App) => RequestHandler[];
   /** How a multipart body is described in the API document. */

@@ -79,7 +79,9 @@ export function AgreementTable({ title, isTitleHidden = false, note, of, unit, r
               </td>
               <td className="whitespace-nowrap">
                 {figure.low === null || figure.high === null
-                  ? 'undefined'
+                  ? figure.value === null
+                    ? 'undefined'
+                    : 'too few or all alike'
                   : `${formatNumber(figure.low, DECIMALS)} to ${formatNumber(figure.high, DECIMALS)}`}
               </td>
               <td className="max-md:hidden">
