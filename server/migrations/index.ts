@@ -4,7 +4,7 @@ import { SceneGuessedRoles1796101200000 } from './1796101200000-scene-guessed-ro
 import { RunSnapshot1796101500000 } from './1796101500000-run-snapshot.ts';
 import { ReferenceDesigns1796104000000 } from './1796104000000-reference-designs.ts';
 import { ZoneLayers1796117000000 } from './1796117000000-zone-layers.ts';
-import { QueueAndRecipes1796105000000 } from './1796105000000-queue-and-recipes.ts';
+import { QueueAndRecipes1796118000000 } from './1796118000000-queue-and-recipes.ts';
 
 /** In the order they run; a new one goes to the end. */
 export const migrations = [
@@ -14,5 +14,5 @@ export const migrations = [
   RunSnapshot1796101500000,
   ReferenceDesigns1796104000000,
   ZoneLayers1796117000000,
-  QueueAndRecipes1796105000000,
+  QueueAndRecipes1796118000000,
 ];

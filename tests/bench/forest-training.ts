@@ -78,7 +78,7 @@ async function compare(name: string, given: TrainingSet, trees: number, folder: 
     const reference: Timing[] = [];
     try {
       // Threads start with their first task and compile what they run.
-      await trainOurs(pools, set, 60 * threads, 99);
+      await trainOurs(pools, set, 150 * threads, 99);
       for (let seed = 0; seed < repeat; seed++) {
         ours.push(await trainOurs(pools, set, trees, seed));
         const args = [...paths, ...[set.nFeatures, trees, maxFeatures, threads, seed].map(String)];

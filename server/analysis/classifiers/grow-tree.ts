@@ -1,6 +1,7 @@
 import type { Rng } from '../sampling/rng.ts';
 import type { TrainingSet } from './classifier.ts';
 import { atMostThreshold } from './float32-threshold.ts';
+import { CountedSplitSearch, isCountable } from './counted-split-search.ts';
 import { rankFeatures } from './rank-features.ts';
 import { SplitSearch, type NodeRows, type NodeSums, type Split } from './split-search.ts';
 import type { FlatTree } from './tree-part.ts';
@@ -36,7 +37,9 @@ export function growTree(
   const { ranks, levels } = rankFeatures(set);
   const drawn = listDrawnRows(set, timesDrawn);
   const nDrawn = drawn.rows.length;
-  const search = new SplitSearch(options.classWeights, options.minLeaf, nDrawn);
+  const search = isCountable(options.classWeights, levels, drawn)
+    ? new CountedSplitSearch(nClasses, options.minLeaf, nDrawn)
+    : new SplitSearch(options.classWeights, options.minLeaf, nDrawn);
   const impurityDecrease = new Float64Array(nFeatures);
   const order = Int32Array.from({ length: nFeatures }, (_, f) => f);
   const sums: NodeSums = { nRows: 0, weight: 0, classWeights: new Float64Array(nClasses), squares: 0 };
@@ -91,6 +94,7 @@ export function growTree(
   function findSplit(lo: number, hi: number): Split | null {
     const best: Split = { feature: -1, rank: -1, nextRank: -1, score: -1 };
     let tried = 0;
+    if (search instanceof CountedSplitSearch) search.openNode(sums);
     for (let j = 0; j < nFeatures && tried < options.featuresPerSplit; j++) {
       const k = j + rng.nextBelow(nFeatures - j);
       const candidate = order[k];

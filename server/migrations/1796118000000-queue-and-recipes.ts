@@ -1,7 +1,7 @@
 import type { MigrationInterface, QueryRunner } from 'typeorm';
 
-export class QueueAndRecipes1796105000000 implements MigrationInterface {
-  name = 'QueueAndRecipes1796105000000';
+export class QueueAndRecipes1796118000000 implements MigrationInterface {
+  name = 'QueueAndRecipes1796118000000';
 
   public async up(queryRunner: QueryRunner): Promise<void> {
     await queryRunner.query('ALTER TABLE `jobs` ADD COLUMN IF NOT EXISTS `subjectId` uuid NULL');
