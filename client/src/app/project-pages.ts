@@ -41,6 +41,30 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/runs/new-run-page.tsx'), 'NewRunPage'),
   },
   {
+    path: 'runs/queue',
+    lazy: lazyPage(() => import('../pages/queue/queue-page.tsx'), 'QueuePage'),
+  },
+  {
+    path: 'runs/recipes',
+    lazy: lazyPage(() => import('../pages/recipes/recipes-page.tsx'), 'RecipesPage'),
+  },
+  {
+    path: 'runs/tunings',
+    lazy: lazyPage(() => import('../pages/tunings/tunings-page.tsx'), 'TuningsPage'),
+  },
+  {
+    path: 'runs/tunings/new',
+    lazy: lazyPage(() => import('../pages/tunings/new-tuning-page.tsx'), 'NewTuningPage'),
+  },
+  {
+    path: 'runs/tunings/:tuningId',
+    lazy: lazyPage(() => import('../pages/tunings/tuning-page.tsx'), 'TuningPage'),
+  },
+  {
+    path: 'runs/:runId/record',
+    lazy: lazyPage(() => import('../pages/run-record/run-record-page.tsx'), 'RunRecordPage'),
+  },
+  {
     path: 'runs/:runId',
     lazy: lazyPage(() => import('../pages/run/run-page.tsx'), 'RunPage'),
   },

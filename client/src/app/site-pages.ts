@@ -15,6 +15,10 @@ export const sitePages: RouteObject[] = [
     path: '/site/accounts',
     lazy: lazyPage(() => import('../pages/site-accounts/site-accounts-page.tsx'), 'SiteAccountsPage'),
   },
+  {
+    path: '/site/queue',
+    lazy: lazyPage(() => import('../pages/site-queue/site-queue-page.tsx'), 'SiteQueuePage'),
+  },
 ];
 
 /** Pages for people who are not signed in, besides the sign-in page. */

@@ -7,6 +7,7 @@ export const paths = {
   projects: () => '/projects',
   account: () => '/account',
   siteAccounts: () => '/site/accounts',
+  siteQueue: () => '/site/queue',
   project: (projectId: string) => `/projects/${projectId}`,
   overview: (projectId: string) => `/projects/${projectId}/overview`,
   scenes: (projectId: string) => `/projects/${projectId}/scenes`,
@@ -22,6 +23,18 @@ export const paths = {
   /** With `fromRunId`, the recipe of that run is filled in. */
   newRun: (projectId: string, fromRunId?: string) =>
     `/projects/${projectId}/runs/new${fromRunId ? `?from=${fromRunId}` : ''}`,
+  newRunByRecipe: (projectId: string, recipeId: string) => `/projects/${projectId}/runs/new?recipe=${recipeId}`,
+  newRunByTrial: (projectId: string, tuningId: string, trial: number) =>
+    `/projects/${projectId}/runs/new?tuning=${tuningId}&trial=${trial}`,
+  queue: (projectId: string) => `/projects/${projectId}/runs/queue`,
+  recipes: (projectId: string) => `/projects/${projectId}/runs/recipes`,
+  tunings: (projectId: string) => `/projects/${projectId}/runs/tunings`,
+  tuning: (projectId: string, tuningId: string) => `/projects/${projectId}/runs/tunings/${tuningId}`,
+  /** With a run or a named recipe, its settings are where the search begins. */
+  newTuning: (projectId: string, of: { runId?: string; recipeId?: string } = {}) =>
+    `/projects/${projectId}/runs/tunings/new${of.runId ? `?from=${of.runId}` : of.recipeId ? `?recipe=${of.recipeId}` : ''}`,
+  /** How a run was made: its log, and whether it comes out the same again. */
+  runRecord: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}/record`,
   run: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}`,
   accuracy: (projectId: string, runId?: string) => `/projects/${projectId}/accuracy${runId ? `?run=${runId}` : ''}`,
   newDesign: (projectId: string, runId?: string) =>

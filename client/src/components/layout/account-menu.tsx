@@ -1,4 +1,4 @@
-import { ChevronsUpDown, LogOut, UserRound, UsersRound } from 'lucide-react';
+import { ChevronsUpDown, ListOrdered, LogOut, UserRound, UsersRound } from 'lucide-react';
 import { paths } from '../../lib/paths.ts';
 import { type ThemeChoice, useTheme } from '../../lib/theme.ts';
 import { Menu, MenuChoice, MenuItem, MenuLine } from '../ui/menu.tsx';
@@ -59,6 +59,11 @@ export function AccountMenu({ name, note, isSiteAdmin, onSignOut }: AccountMenuP
       {isSiteAdmin && (
         <MenuItem icon={<UsersRound />} to={paths.siteAccounts()}>
           Accounts and storage
+        </MenuItem>
+      )}
+      {isSiteAdmin && (
+        <MenuItem icon={<ListOrdered />} to={paths.siteQueue()}>
+          Queue of all projects
         </MenuItem>
       )}
       <MenuItem icon={<LogOut />} onSelect={onSignOut}>

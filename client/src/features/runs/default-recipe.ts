@@ -63,7 +63,7 @@ export function defaultClassifier(kind: ClassifierKind): ClassifierRecipe {
 
 /** A run's recipe to use again, less what is gone since: its scene, bands or classes. */
 export function draftFromRun(
-  run: Pick<Run, 'number' | 'name' | 'note' | 'recipe'>,
+  run: Pick<Run, 'name' | 'note' | 'recipe'>,
   scenes: readonly Scene[],
   classes: readonly LandClass[],
 ): { draft: RunDraft; lost: string[] } {

@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import { buttonClass } from '../../components/ui/button.tsx';
@@ -7,10 +8,12 @@ import { paths } from '../../lib/paths.ts';
 interface RunEndedProps {
   run: Run;
   mayStart: boolean;
+  /** Buttons that try it again as it is. */
+  retry?: ReactNode;
 }
 
 /** A run that made no map: why, and what to do. */
-export function RunEnded({ run, mayStart }: RunEndedProps) {
+export function RunEnded({ run, mayStart, retry }: RunEndedProps) {
   const { job } = run;
   const isFailed = job.state === 'failed';
   return (
@@ -24,14 +27,17 @@ export function RunEnded({ run, mayStart }: RunEndedProps) {
       {isFailed && <p className="mt-1">{job.error ?? 'The server gave no reason; its log has more.'}</p>}
       <p className="mt-1 text-ink-soft">
         {isFailed
-          ? 'Nothing of it is kept but its recipe. Mend what is named, then start again with the same recipe; the form checks it first.'
-          : 'Nothing of it is kept but its recipe.'}
+          ? 'What it had made is kept: trying again goes on from there. Where the recipe is to blame, start anew with it; the form checks it first.'
+          : 'Nothing of it is kept but its recipe and snapshot; trying again begins anew with them.'}
         {job.endedAt && ` It ended on ${formatDateTime(job.endedAt)}.`}
       </p>
       {mayStart && (
-        <Link to={paths.newRun(run.projectId, run.id)} className={`mt-4 ${buttonClass('primary')}`}>
-          Use this recipe again
-        </Link>
+        <div className="mt-4 flex flex-wrap gap-2">
+          {retry}
+          <Link to={paths.newRun(run.projectId, run.id)} className={buttonClass(retry ? 'secondary' : 'primary')}>
+            Use this recipe again
+          </Link>
+        </div>
       )}
     </section>
   );

@@ -6,6 +6,7 @@ import { ReadingPage } from '../../components/layout/reading-page.tsx';
 import { DeviceList } from '../../features/account/device-list.tsx';
 import { NameForm } from '../../features/account/name-form.tsx';
 import { PasswordForm } from '../../features/account/password-form.tsx';
+import { RunLetters } from '../../features/account/run-letters.tsx';
 import { ThemeChoiceField } from '../../features/account/theme-choice.tsx';
 import { formatDate } from '../../lib/format-date.ts';
 import { paths } from '../../lib/paths.ts';
@@ -30,6 +31,9 @@ export function AccountPage() {
           note="If one of these is not yours, change your password and sign out everywhere."
         >
           <DeviceList onSignedOut={() => void navigate(paths.signIn(), { replace: true })} />
+        </Part>
+        <Part title="Letters" note="Sent where the server has a mail server to send through.">
+          <RunLetters account={account} />
         </Part>
         <Part title="Theme" note="Kept in this browser only.">
           <ThemeChoiceField />

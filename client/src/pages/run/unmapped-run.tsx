@@ -5,6 +5,7 @@ import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { PageHeader } from '../../components/layout/page-header.tsx';
 import { ReadingPage, Section } from '../../components/layout/reading-page.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
+import { JobLogPanel } from '../../features/queue/job-log-panel.tsx';
 import { CancelRunDialog } from '../../features/runs/cancel-run-dialog.tsx';
 import { RecipeSummary } from '../../features/runs/recipe-summary.tsx';
 import { runTitle } from '../../features/runs/recipe-text.ts';
@@ -13,6 +14,7 @@ import { RunProgress } from '../../features/runs/run-progress.tsx';
 import { RunStateTag, isUnderWay } from '../../features/runs/run-state-tag.tsx';
 import { paths } from '../../lib/paths.ts';
 import { useProject } from '../../lib/project/project-context.ts';
+import { RetryButtons } from './retry-buttons.tsx';
 import { RunMenu } from './run-menu.tsx';
 
 /** A run without a map: under way, failed or cancelled. */
@@ -42,9 +44,13 @@ export function UnmappedRun({ run, scene }: { run: Run; scene: Scene | null }) {
         ) : run.job.state === 'finished' ? (
           <PendingState label="Loading the map" shape="block" />
         ) : (
-          <RunEnded run={run} mayStart={abilities.startRuns} />
+          <RunEnded
+            run={run}
+            mayStart={abilities.startRuns}
+            retry={run.abilities.retry && <RetryButtons run={run} />}
+          />
         )}
-        <div className="space-y-8 text-sm">
+        <div className="space-y-8 text-sm lg:row-span-2">
           <Section title="Recipe">
             <RecipeSummary run={run} scene={scene} />
           </Section>
@@ -58,6 +64,7 @@ export function UnmappedRun({ run, scene }: { run: Run; scene: Scene | null }) {
             </Section>
           )}
         </div>
+        <JobLogPanel projectId={id} jobId={run.job.id} isUnderWay={isWorking} />
       </div>
       <CancelRunDialog run={run} isOpen={isCancelling && isWorking} onOpenChange={setIsCancelling} />
     </ReadingPage>

@@ -1,7 +1,7 @@
 import { useCallback, useMemo, useState } from 'react';
-import { useNavigate, useSearchParams } from 'react-router-dom';
+import { useNavigate } from 'react-router-dom';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
-import type { Recipe, Run } from '../../../../shared/contracts/run.ts';
+import type { Recipe } from '../../../../shared/contracts/run.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { PageHeader } from '../../components/layout/page-header.tsx';
 import { ReadingPage } from '../../components/layout/reading-page.tsx';
@@ -12,7 +12,6 @@ import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
 import { useRecipeCheck } from '../../features/runs/check-recipe.ts';
 import { type RunDraft, defaultDraft, draftFromRun } from '../../features/runs/default-recipe.ts';
-import { useRun } from '../../features/runs/get-run.ts';
 import { RecipeCheckPanel } from '../../features/runs/recipe-check-panel.tsx';
 import { RecipeForm } from '../../features/runs/recipe-form.tsx';
 import { useStartRun } from '../../features/runs/start-run.ts';
@@ -21,17 +20,16 @@ import { useClasses } from '../../lib/project/classes-query.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useScenes } from '../../lib/project/scenes-query.ts';
 import { NoRunYet } from './no-run-yet.tsx';
+import { type RecipeSource, useRecipeSource } from './use-recipe-source.ts';
 
 const TITLE = 'New run';
 
-/** The recipe of a new run; `?from=<run>` fills it in from another. */
+/** The recipe of a new run; the address may ask for another one to begin with. */
 export function NewRunPage() {
   const { id, abilities } = useProject();
-  const [query] = useSearchParams();
-  const fromId = query.get('from');
   const scenes = useScenes(id);
   const classes = useClasses(id);
-  const from = useRun(id, fromId);
+  const { asked, isPending, source } = useRecipeSource(id, abilities.startRuns);
   if (!abilities.startRuns) {
     return (
       <Plain>
@@ -39,7 +37,7 @@ export function NewRunPage() {
       </Plain>
     );
   }
-  const failed = [scenes, classes, from].find((one) => one.isError && !one.data);
+  const failed = [scenes, classes, asked].find((one) => one?.isError && !one.data);
   if (failed) {
     return (
       <Plain>
@@ -47,14 +45,14 @@ export function NewRunPage() {
       </Plain>
     );
   }
-  if (!scenes.data || !classes.data || (fromId && !from.data)) {
+  if (!scenes.data || !classes.data || isPending) {
     return (
       <Plain>
         <PendingState label="Loading scenes and classes" rows={8} />
       </Plain>
     );
   }
-  return <NewRun key={fromId} scenes={scenes.data} classes={classes.data} from={from.data ?? null} />;
+  return <NewRun key={source?.key} scenes={scenes.data} classes={classes.data} from={source} />;
 }
 
 function Plain({ children }: { children: React.ReactNode }) {
@@ -64,7 +62,7 @@ function Plain({ children }: { children: React.ReactNode }) {
 interface NewRunProps {
   scenes: readonly Scene[];
   classes: readonly LandClass[];
-  from: Run | null;
+  from: RecipeSource | null;
 }
 
 function NewRun({ scenes, classes, from }: NewRunProps) {
@@ -100,7 +98,7 @@ function RecipePage({ draft, lost, from, scenes, classes }: NewRunProps & { draf
       header={
         <PageHeader
           title={TITLE}
-          crumb={from ? `by the recipe of run ${from.number}` : undefined}
+          crumb={from ? `by the recipe of ${from.label}` : undefined}
           action={
             <>
               <Button onClick={() => void navigate(-1)}>Leave</Button>
@@ -124,7 +122,7 @@ function RecipePage({ draft, lost, from, scenes, classes }: NewRunProps & { draf
         <div>
           {lost.length > 0 && (
             <Callout tone="beware" title="Not quite the same recipe." className="mb-5">
-              Gone since run {from?.number}: {lost.join(', ')}. Look at what is chosen below.
+              Gone since {from?.label}: {lost.join(', ')}. Look at what is chosen below.
             </Callout>
           )}
           <RecipeForm

@@ -49,7 +49,21 @@ function RunList() {
               </Link>
             )
           }
-        />
+        >
+          <nav aria-label="More about runs" className="flex gap-x-4 text-sm">
+            <Link to={paths.queue(project.id)} className="link">
+              Queue
+            </Link>
+            <Link to={paths.recipes(project.id)} className="link">
+              Recipes
+            </Link>
+            {project.abilities.startRuns && (
+              <Link to={paths.tunings(project.id)} className="link">
+                Tuning
+              </Link>
+            )}
+          </nav>
+        </PageHeader>
       }
     >
       {runs.isPending && <PendingState label="Loading runs" shape="table" rows={5} />}
