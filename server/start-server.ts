@@ -62,8 +62,15 @@ export function createLogger(config: Pick<Config, 'logLevel'>, out?: Destination
   return out ? pino(options, out) : pino(options);
 }
 
-/** Opens everything a server needs, runs pending migrations, and takes up background work; not yet listening. */
-export async function openApp(config: Config, log: Logger): Promise<{ app: App; close(): Promise<void> }> {
+/**
+ * Opens everything a server needs, runs pending migrations, and takes up background work unless told not to; not yet
+ * listening.
+ */
+export async function openApp(
+  config: Config,
+  log: Logger,
+  { takesJobs = true } = {},
+): Promise<{ app: App; close(): Promise<void> }> {
   const db = createDataSource(config.db);
   await db.initialize();
   await db.runMigrations({ transaction: 'each' });
@@ -91,7 +98,7 @@ export async function openApp(config: Config, log: Logger): Promise<{ app: App; 
   wake.now = runner.wake;
   wake.cancelled = runner.stopCancelled;
   await events.start();
-  await runner.start();
+  if (takesJobs) await runner.start();
   const sweeper = sweepSessions(app);
   return {
     app,
