@@ -12,6 +12,8 @@ export class JobLog {
   constructor(
     private readonly db: DataSource,
     private readonly jobId: string,
+    /** Whether an earlier attempt may have left work that need not be done again. */
+    private readonly isResumed: boolean,
     private readonly now: () => number = Date.now,
   ) {}
 
@@ -29,9 +31,12 @@ export class JobLog {
       this.step.total = total;
       return;
     }
+    // The next step begins when the last is through, though its last report may have come earlier.
+    if (this.step) this.step.done = this.step.total;
     this.endStep();
     this.step = { name, sinceMs: this.now(), done, total };
-    this.add(`${name}: begun${done > 0 && total > 0 ? `, ${done} of ${total} were there already` : ''}.`);
+    const left = this.isResumed && done > 0 ? `, ${done} of ${total} were there already` : '';
+    this.add(`${name}: begun${left}.`);
   };
 
   endStep(): void {

@@ -141,7 +141,7 @@ export class JobRunner {
       await this.jobs.update({ id: job.id, owner: this.owner }, progress);
       await this.announce(job.id);
     });
-    const log = new JobLog(this.db, job.id);
+    const log = new JobLog(this.db, job.id, job.attempts > 1);
     const began = Date.now();
     const report = (step: string, done: number, total: number, share: number): void => {
       log.follow(step, done, total);

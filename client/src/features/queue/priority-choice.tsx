@@ -22,6 +22,7 @@ export function PriorityChoice({ projectId, jobId, title, priority }: PriorityCh
   return (
     <Select
       aria-label={`Priority of ${title}`}
+      size="sm"
       value={priority}
       options={OPTIONS}
       onChange={(next) => change.mutate({ jobId, priority: next as JobPriority }, { onError: sayProblem })}

@@ -7,7 +7,7 @@ import { useWidth } from '../../lib/use-width.ts';
 import { printValue, settingLabel } from './tuning-settings.ts';
 
 const ROW_HEIGHT = 24;
-const NAME_WIDTH = 210;
+const NAME_WIDTH = 256;
 const FIGURE_WIDTH = 58;
 const FOOT = 38;
 
@@ -93,7 +93,7 @@ interface TrialRowProps {
 function TrialRow({ trial, name, isBest, y, x, width }: TrialRowProps) {
   const mean = trial.meanAccuracy ?? 0;
   const spread = trial.spread ?? 0;
-  const shown = name.length > 34 ? `${name.slice(0, 33)}…` : name;
+  const shown = name.length > 42 ? `${name.slice(0, 41)}…` : name;
   return (
     <g>
       <title>{`Trial ${trial.number}: ${name}`}</title>
