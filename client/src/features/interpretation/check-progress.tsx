@@ -24,7 +24,7 @@ export function CheckProgress({ progress }: { progress: BlindPoint['progress'] }
       <p className="text-sm whitespace-nowrap">
         {formatNumber(answered)} of {formatNumber(total)}
         {skipped > 0 && <span className="text-ink-soft">, {skipped} skipped</span>}
-        {pace && <span className="ml-3 text-ink-soft max-lg:hidden">{pace}</span>}
+        {pace && <span className="ml-3 text-ink-soft max-md:hidden">{pace}</span>}
       </p>
     </div>
   );

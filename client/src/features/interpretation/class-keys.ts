@@ -23,17 +23,30 @@ export function classKeys(
     PageUp: () => onFirstDigit(Math.max(0, firstDigit - DIGITS)),
   };
   classes.slice(firstDigit, firstDigit + DIGITS).forEach(({ id }, place) => {
-    keys[String((place + 1) % DIGITS)] = () => onChoose(id);
+    keys[String((place + 1) % DIGITS)] = () => {
+      releaseFocus();
+      onChoose(id);
+    };
   });
   return keys;
 }
 
 /**
- * Whether Enter belongs to the control that has the focus: a button or link takes it itself, but for the class already
- * chosen, where it can only mean "save".
+ * Whether Enter belongs to the control that has the focus: a button or link takes it itself, but for the choice already
+ * made (the class, the confidence), where it can only mean "save".
  */
 export function takesEnter({ target }: KeyboardEvent): boolean {
   if (!(target instanceof HTMLElement)) return false;
   const control = target.closest('button, a');
-  return control !== null && control.getAttribute('aria-pressed') !== 'true';
+  return (
+    control !== null &&
+    control.getAttribute('aria-pressed') !== 'true' &&
+    control.getAttribute('aria-checked') !== 'true'
+  );
+}
+
+/** Takes the focus from a control pressed before: it would take the Enter that is to save. */
+export function releaseFocus(): void {
+  const control = document.activeElement?.closest('button, a');
+  if (control instanceof HTMLElement) control.blur();
 }

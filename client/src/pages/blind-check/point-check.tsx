@@ -20,7 +20,7 @@ import {
 } from '../../features/interpretation/answer-draft.ts';
 import { AnswerForm } from '../../features/interpretation/answer-form.tsx';
 import { usePutAnswer, useSkipPoint } from '../../features/interpretation/blind-point-queries.ts';
-import { classKeys, type NameableClass, takesEnter } from '../../features/interpretation/class-keys.ts';
+import { classKeys, type NameableClass, releaseFocus, takesEnter } from '../../features/interpretation/class-keys.ts';
 import { formatCoordinates } from '../../lib/format-coordinates.ts';
 import { useKeys } from '../../lib/keys.ts';
 import { asProblem } from '../../lib/problem-error.ts';
@@ -70,6 +70,10 @@ export function PointCheck(props: PointCheckProps) {
     change(chooseClass(draft, classId, isAlternate));
     setIsAlternate(false);
   };
+  const turnConfidence = () => {
+    releaseFocus();
+    change({ ...draft, confidence: nextConfidence(draft.confidence) });
+  };
   const save = () => {
     if (isHeld || draft.classId === null) return;
     const seconds = Math.min(LONGEST_LOOK_SECONDS, (Date.now() - beganAt) / MS);
@@ -88,7 +92,7 @@ export function PointCheck(props: PointCheckProps) {
   useKeys({
     ...classKeys(classes, firstDigit, choose, setFirstDigit),
     a: () => setIsAlternate(!isAlternate),
-    c: () => change({ ...draft, confidence: nextConfidence(draft.confidence) }),
+    c: turnConfidence,
     n: () => note.current?.focus(),
     s: skipIt,
     Enter: (event) => (takesEnter(event) ? false : save()),

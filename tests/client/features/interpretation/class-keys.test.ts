@@ -39,16 +39,27 @@ describe('keys of the classes', () => {
   });
 });
 
+describe('a digit', () => {
+  it('takes the focus from a tool pressed before, so that Enter saves', () => {
+    document.body.innerHTML = '<button>Closer</button>';
+    document.querySelector('button')!.focus();
+    expect(document.activeElement?.tagName).toBe('BUTTON');
+    tryKeys(0);
+    expect(document.activeElement).toBe(document.body);
+  });
+});
+
 describe('Enter', () => {
   const at = (html: string) => {
     document.body.innerHTML = html;
     return { target: document.querySelector('[data-at]') } as unknown as KeyboardEvent;
   };
 
-  it('belongs to a button or link with the focus, but to the page on the class already chosen', () => {
+  it('belongs to a button or link with the focus, but to the page on what is already chosen', () => {
     expect(takesEnter(at('<button data-at>Leave</button>'))).toBe(true);
     expect(takesEnter(at('<a href="/"><span data-at>Design</span></a>'))).toBe(true);
     expect(takesEnter(at('<button aria-pressed="true" data-at>Arable</button>'))).toBe(false);
+    expect(takesEnter(at('<button role="radio" aria-checked="true" data-at>Sure</button>'))).toBe(false);
     expect(takesEnter(at('<h2 data-at>Point 3</h2>'))).toBe(false);
   });
 });
