@@ -10,7 +10,7 @@ import {
   type Relation,
 } from 'typeorm';
 import type { ArealGeometry } from '../../shared/contracts/geometry.ts';
-import type { Recipe } from '../../shared/contracts/run.ts';
+import type { Recipe, RunLayer } from '../../shared/contracts/run.ts';
 import { geometryTransformer } from './geometry-column.ts';
 import { Job } from './job.ts';
 import { Project } from './project.ts';
@@ -40,6 +40,8 @@ export interface RunResult {
   mapKey: string;
   mapNamesKey: string;
   modelKey: string;
+  /** Rasters of how sure the map is; runs made before there were layers have none. */
+  layerKeys?: Record<RunLayer, string>;
 }
 
 @Entity('runs')

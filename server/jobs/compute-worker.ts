@@ -12,7 +12,8 @@ import { readTraining } from './compute/read-training.ts';
 import { summariseSamples } from './compute/summarise-samples.ts';
 import { judgeFold } from './compute/judge-fold.ts';
 import { maskStrip } from './compute/study-area-mask.ts';
-import type { ComputeResult, ComputeTask, ComputeTasks } from './compute/tasks.ts';
+import { joinStrips } from './compute/join-strips.ts';
+import type { ComputeResult, ComputeTask, ComputeTasks, MappedStrip } from './compute/tasks.ts';
 
 const store = new BandStore({ cacheMb: 32, decode: 'blocking' });
 /** The last model used: a thread maps many strips with the same one. */
@@ -47,10 +48,12 @@ async function assembleModel(input: ComputeTasks['assemble-model']['input']): Pr
   return prepareClassifier(input.classifier, input.shape.nFeatures).assemble(input.shape, parts).serialise();
 }
 
-async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint8Array> {
+async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<MappedStrip> {
   const { scene, y, height, codes, minShare } = input;
   const model = await openModel(input.modelPath);
-  const strip = await classifyStrip({
+  const nPixels = scene.grid.width * height;
+  const layers = { confidence: new Uint8Array(nPixels), margin: new Uint8Array(nPixels) };
+  const codesOfStrip = await classifyStrip({
     grid: scene.grid,
     bands: await openBands(scene.bandPaths),
     y,
@@ -59,10 +62,19 @@ async function mapStrip(input: ComputeTasks['map-strip']['input']): Promise<Uint
     nodataCode: NODATA_CODE,
     unclassified: minShare > 0 ? { below: minShare, code: UNCLASSIFIED_CODE } : null,
     inside: maskStrip(scene.studyArea, scene.grid.width, y, height),
-    classify: (features, n, classIndex, share) => model.predictBlock(features, n, classIndex, share),
+    classify: (features, n, classIndex, share, margin) => model.predictBlock(features, n, classIndex, share, margin),
+    layers,
   });
-  // Copied out of Node's shared buffer pool.
-  return new Uint8Array(deflateRawSync(strip, { level: 1 }));
+  return {
+    codes: deflate(codesOfStrip),
+    confidence: deflate(layers.confidence),
+    margin: deflate(layers.margin),
+  };
+}
+
+/** Copied out of Node's shared buffer pool. */
+function deflate(bytes: Uint8Array): Uint8Array {
+  return new Uint8Array(deflateRawSync(bytes, { level: 1 }));
 }
 
 /** Worker entry: the heavy steps of a run. */
@@ -80,6 +92,8 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
       return assembleModel(task);
     case 'map-strip':
       return mapStrip(task);
+    case 'join-strips':
+      return joinStrips(task);
     case 'finish-map':
       return finishMap(task);
   }

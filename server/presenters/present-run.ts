@@ -1,5 +1,5 @@
 import { NODATA_CODE, UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
-import type { Run as RunContract } from '../../shared/contracts/run.ts';
+import { runLayers, type Run as RunContract } from '../../shared/contracts/run.ts';
 import type { z } from 'zod';
 import type { classAreaSchema } from '../../shared/contracts/run.ts';
 import type { Run } from '../entities/run.ts';
@@ -63,6 +63,7 @@ export function presentRun(run: Run, viewer: Viewer, isMapWithheld = false): Run
     overallLow: shown?.overallLow ?? null,
     overallHigh: shown?.overallHigh ?? null,
     bounds: run.scene.bounds,
+    layers: isMapWithheld || !result?.layerKeys ? [] : [...runLayers],
     notes: [...run.warnings, ...(isMapWithheld ? [] : (result?.notes ?? []))],
     abilities: {
       cancel: mayStop && isUnderWay(run),

@@ -9,8 +9,14 @@ export interface StripRequest {
   /** First row and number of rows. */
   y: number;
   height: number;
-  /** Fills classIndex[0..n), and share[0..n) when it is given, from n rows of row-major features. */
-  classify: (features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array) => void;
+  /** Fills classIndex[0..n), and share[0..n) and margin[0..n) when given, from n rows of row-major features. */
+  classify: (
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ) => void;
   /** Class code of each class index. */
   codes: ArrayLike<number>;
   /** Code of pixels without data or outside. */
@@ -19,7 +25,20 @@ export interface StripRequest {
   unclassified?: { below: number; code: number } | null;
   /** Row-major over the strip, 0 where a pixel is outside the area to be mapped; all of it where not given. */
   inside?: Uint8Array | null;
+  /** Row-major over the strip; filled in percent, with `layerNodata` where nothing is mapped. */
+  layers?: StripLayers | null;
 }
+
+/** How sure the map is of each pixel, whole percent 0–100. */
+export interface StripLayers {
+  /** The winner's share of the votes, or its chance. */
+  confidence: Uint8Array;
+  /** That share less the runner-up's. */
+  margin: Uint8Array;
+}
+
+/** Value of layer pixels where nothing is mapped. */
+export const layerNodata = 255;
 
 /** Whole blocks, so that each is decoded once, and few enough that memory does not grow with the scene's width. */
 const windowColumns = 8 * blockSize;
@@ -36,8 +55,11 @@ export async function classifyStrip(request: StripRequest): Promise<Uint8Array> 
   const features = new Float32Array(chunkPixels * bands.length);
   const places = new Uint32Array(chunkPixels);
   const classIndex = new Uint8Array(chunkPixels);
-  const { unclassified } = request;
-  const share = unclassified ? new Float32Array(chunkPixels) : undefined;
+  const { unclassified, layers } = request;
+  const share = unclassified || layers ? new Float32Array(chunkPixels) : undefined;
+  const margin = layers ? new Float32Array(chunkPixels) : undefined;
+  layers?.confidence.fill(layerNodata);
+  layers?.margin.fill(layerNodata);
   // Shares are 32-bit numbers, and one equal to the limit is not below it.
   const limit = unclassified ? Math.fround(unclassified.below) : 0;
   for (let x = 0; x < grid.width; x += windowColumns) {
@@ -50,10 +72,16 @@ export async function classifyStrip(request: StripRequest): Promise<Uint8Array> 
     let n = 0;
     const flush = (): void => {
       if (n === 0) return;
-      request.classify(features, n, classIndex, share);
+      request.classify(features, n, classIndex, share, margin);
       for (let i = 0; i < n; i++) out[places[i]] = request.codes[classIndex[i]];
       if (share && unclassified) {
         for (let i = 0; i < n; i++) if (share[i] < limit) out[places[i]] = unclassified.code;
+      }
+      if (layers && share && margin) {
+        for (let i = 0; i < n; i++) {
+          layers.confidence[places[i]] = Math.round(share[i] * 100);
+          layers.margin[places[i]] = Math.round(margin[i] * 100);
+        }
       }
       n = 0;
     };

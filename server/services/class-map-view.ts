@@ -8,7 +8,8 @@ import { readColour } from './class-colour.ts';
 import { placeScene, type PlacedScene } from './run-scene.ts';
 import { checkTileAddress, describeCaching, drawEmptyTile, type PlannedTile, type TileAddress } from './tiles.ts';
 
-function requirePlace(run: Run): PlacedScene {
+/** Grid of a run's scene. @throws NotFound once the scene is not ready */
+export function requirePlace(run: Run): PlacedScene {
   const placed = placeScene(run.scene);
   if (!placed) throw new NotFound();
   return placed;

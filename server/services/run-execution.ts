@@ -81,6 +81,7 @@ async function storeResult(work: RunWork, training: TrainingSummary): Promise<vo
     mapKey: files.map,
     mapNamesKey: files.mapNames,
     modelKey: files.model,
+    layerKeys: { confidence: files.layer('confidence'), margin: files.layer('margin') },
   };
   signal.throwIfAborted();
   await app.db.transaction(async (manager) => {
@@ -95,9 +96,10 @@ async function storeResult(work: RunWork, training: TrainingSummary): Promise<vo
 
 /** What is left over takes room and nothing else, so failing to remove it does not fail a run that stands. */
 async function removeWorkFiles(app: App, runId: string): Promise<void> {
-  const { parts, strips, training } = runFiles(runId);
+  const { parts, strips, training, layerStrips } = runFiles(runId);
   try {
-    for (const key of [parts, strips, training]) await app.files.remove(key);
+    for (const key of [parts, strips, training, layerStrips('confidence'), layerStrips('margin')])
+      await app.files.remove(key);
   } catch (error) {
     app.log.error({ err: error, run: runId }, 'work files of a run could not be removed');
   }

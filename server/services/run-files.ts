@@ -1,3 +1,5 @@
+import type { RunLayer } from '../../shared/contracts/run.ts';
+
 /** Keys of a run's files. What lies under `parts/` and `strips/` is work in progress and goes once the map stands. */
 export function runFiles(runId: string) {
   const root = `runs/${runId}/`;
@@ -10,6 +12,10 @@ export function runFiles(runId: string) {
     model: `${root}model.bin`,
     strips: `${root}strips/`,
     strip: (number: number) => numbered('strips', number),
+    /** Strips of a layer; those of the classes are written last, so that a strip that has them is whole. */
+    layerStrips: (layer: RunLayer) => `${root}${layer}-strips/`,
+    layerStrip: (layer: RunLayer, number: number) => numbered(`${layer}-strips`, number),
+    layer: (layer: RunLayer) => `${root}${layer}.tif`,
     map: `${root}class-map.tif`,
     mapNames: `${root}class-map.tif.aux.xml`,
   };

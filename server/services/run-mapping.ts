@@ -1,10 +1,14 @@
+import { rm } from 'node:fs/promises';
 import { join } from 'node:path';
 import { UNCLASSIFIED_CODE } from '../../shared/constants/class-codes.ts';
+import { runLayers, type RunLayer } from '../../shared/contracts/run.ts';
 import { runComputeTask, runWatched } from '../jobs/compute/run-compute-task.ts';
 import type { FinishedMap } from '../jobs/compute/tasks.ts';
 import { forEachLimited } from '../jobs/for-each-limited.ts';
 import { blockSize } from '../raster/band-file-format.ts';
 import { writeClassMapFile } from '../raster/class-map-file.ts';
+import { layerNodata } from '../raster/classify-strip.ts';
+import { writeGeoTiffFromRaw } from '../raster/raw-to-geotiff.ts';
 import { readColour } from './class-colour.ts';
 import { measurePixelAreas } from './run-areas.ts';
 import { runFiles } from './run-files.ts';
@@ -15,6 +19,11 @@ import type { RunWork } from './run-work.ts';
 const STRIP_ROWS = blockSize;
 /** Colour of unclassified pixels in the class map's file. */
 const UNCLASSIFIED_COLOR: [number, number, number] = [128, 128, 128];
+
+const LAYER_DESCRIPTION: Record<RunLayer, string> = {
+  confidence: 'Share of the winning class, percent',
+  margin: 'Share of the winning class less that of the runner-up, percent',
+};
 
 export interface MappedRun extends FinishedMap {
   notes: string[];
@@ -44,7 +53,11 @@ async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): 
   const modelPath = await app.files.localPath(files.model);
   const codes = run.classes.map(({ code }) => code);
   const made = new Set(await app.files.list(files.strips));
-  const missing = Array.from({ length: nStrips }, (_, strip) => strip).filter((strip) => !made.has(files.strip(strip)));
+  for (const layer of runLayers) for (const key of await app.files.list(files.layerStrips(layer))) made.add(key);
+  const keysOf = (strip: number) => [files.strip(strip), ...runLayers.map((layer) => files.layerStrip(layer, strip))];
+  const missing = Array.from({ length: nStrips }, (_, strip) => strip).filter((strip) =>
+    keysOf(strip).some((key) => !made.has(key)),
+  );
   let done = nStrips - missing.length;
   const say = () => {
     const share = shares.mapping + ((shares.finishing - shares.mapping) * done) / nStrips;
@@ -54,13 +67,14 @@ async function mapStrips(work: RunWork, shares: ReturnType<typeof planShares>): 
   await forEachLimited(missing, app.workers.compute.threads, signal, async (strip, stripSignal) => {
     const y = strip * STRIP_ROWS;
     const height = Math.min(STRIP_ROWS, scene.grid.height - y);
-    const deflated = await runComputeTask(
+    const mapped = await runComputeTask(
       app.workers.compute,
       'map-strip',
       { scene, modelPath, y, height, codes, minShare: run.recipe.minShare },
       stripSignal,
     );
-    await app.files.write(files.strip(strip), deflated);
+    for (const layer of runLayers) await app.files.write(files.layerStrip(layer, strip), mapped[layer]);
+    await app.files.write(files.strip(strip), mapped.codes);
     done++;
     say();
   });
@@ -105,9 +119,10 @@ async function finishRunMap(work: RunWork, nStrips: number, from: number): Promi
       join(scratch.path, 'class-map.tif'),
       {
         signal,
-        onProgress: (done) => report('Writing the class map', done * 100, 100, from + ((1 - from) * (1 + done)) / 2),
+        onProgress: (done) => report('Writing the maps', done * 100, 300, from + ((1 - from) * (1 + done / 3)) / 2),
       },
     );
+    for (const layer of runLayers) await writeLayer(work, nStrips, layer, scratch.path);
     await app.files.adopt(files.mapNames, written.auxPath);
     await app.files.adopt(files.map, written.path);
     return {
@@ -117,6 +132,36 @@ async function finishRunMap(work: RunWork, nStrips: number, from: number): Promi
   } finally {
     await scratch.dispose();
   }
+}
+
+/** Joins the strips of a layer into its GeoTIFF. */
+async function writeLayer(
+  { app, run, scene, placed, signal }: RunWork,
+  nStrips: number,
+  layer: RunLayer,
+  folder: string,
+) {
+  const files = runFiles(run.id);
+  const stripPaths: string[] = [];
+  for (let strip = 0; strip < nStrips; strip++)
+    stripPaths.push(await app.files.localPath(files.layerStrip(layer, strip)));
+  const rawPath = join(folder, `${layer}.raw`);
+  const outPath = join(folder, `${layer}.tif`);
+  await runComputeTask(app.workers.compute, 'join-strips', { stripPaths, rawPath }, signal);
+  await writeGeoTiffFromRaw(
+    {
+      ...{ rawPath, dtype: 'uint8', grid: scene.grid, wkt: placed.wkt, nodata: layerNodata },
+      description: LAYER_DESCRIPTION[layer],
+      metadata: {
+        TIFFTAG_IMAGEDESCRIPTION: `${LAYER_DESCRIPTION[layer]}, ${run.scene.name}`,
+        INPUT_SHA256: run.inputSha256,
+      },
+    },
+    outPath,
+    { overviews: 'average', signal },
+  );
+  await rm(rawPath);
+  await app.files.adopt(files.layer(layer), outPath);
 }
 
 function describeUnclassified(minShare: number, { pixelsByCode }: FinishedMap): string[] {

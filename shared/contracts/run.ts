@@ -97,6 +97,11 @@ export const recipeCheckSchema = z.object({
 });
 export type RecipeCheck = z.infer<typeof recipeCheckSchema>;
 
+/** Rasters beside the class map, in whole percent: the winner's share of the votes, and its lead over the runner-up. */
+export const runLayers = ['confidence', 'margin'] as const;
+export const runLayerSchema = z.enum(runLayers);
+export type RunLayer = z.infer<typeof runLayerSchema>;
+
 export const classAreaSchema = z.object({
   classId: idSchema.nullable(),
   code: z.number().int(),
@@ -132,6 +137,8 @@ export const runSchema = z.object({
   overallLow: z.number().nullable(),
   overallHigh: z.number().nullable(),
   bounds: boundsSchema.nullable(),
+  /** Layers the run has; runs made before there were layers have none. */
+  layers: z.array(runLayerSchema),
   notes: z.array(z.string()),
   abilities: z.object({ cancel: z.boolean(), delete: z.boolean(), retry: z.boolean(), prioritise: z.boolean() }),
 });
@@ -139,3 +146,17 @@ export type Run = z.infer<typeof runSchema>;
 export const runListSchema = z.object({ runs: z.array(runSchema) });
 
 export const runProbeSchema = z.object({ code: z.number().int().nullable(), name: z.string().nullable() });
+
+/** How a run's model votes on one pixel. */
+export const runVotesSchema = z.object({
+  /** Class code on the current map; null where nothing is mapped. */
+  code: z.number().int().nullable(),
+  /** What the shares are: votes of trees or neighbours, or chances. */
+  kind: z.enum(['votes', 'chances']),
+  /** Of all classes, the most likely first; empty where a band has no data or the place lies outside the study area. */
+  shares: z.array(z.object({ classId: idSchema, share: z.number() })),
+  /** The first share, and what it has more than the second. */
+  confidence: z.number().nullable(),
+  margin: z.number().nullable(),
+});
+export type RunVotes = z.infer<typeof runVotesSchema>;

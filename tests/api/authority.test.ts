@@ -148,6 +148,9 @@ const TABLE: Record<string, Row> = {
   'tunings.delete': LEAD_MODELLER,
   'runs.tile': TEAM,
   'runs.probe': TEAM,
+  'runs.votes': TEAM,
+  'runs.layer-tile': TEAM,
+  'runs.layer': TEAM,
   'runs.class-map': TEAM,
   'runs.class-map-package': TEAM,
   'accuracy.read': ACCURACY,
@@ -233,7 +236,7 @@ beforeAll(async () => {
     ...{ projectId: project.id, sceneId: ground.scene.id, classId: ground.classes[0]!.id, sampleId: sample.id, runId },
     ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
     ...{ jobId: run.jobId, recipeId: await makeSpareRecipe(), tuningId: await makeSpareTuning() },
-    ...{ z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
+    ...{ layer: 'confidence', z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
   };
   for (const actor of ACTORS) cookies.set(actor, await signIn(actor));
 }, 120_000);
@@ -306,6 +309,7 @@ const QUERY: Record<string, () => string> = {
   'designs.cell': () => `?mapped=1&reference=${params['classId']}`,
   'recipes.diff': () => `?left=run:${runId}&right=run:${runId}`,
   'runs.probe': () => '?lon=-15&lat=60',
+  'runs.votes': () => '?lon=-15&lat=60',
   'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
 };
 

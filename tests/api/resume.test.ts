@@ -149,7 +149,13 @@ describe('a run whose server is killed', () => {
     expect(resumed.overallAccuracy).toBe(inPeace.overallAccuracy);
     expect(resumed.notes).toEqual(inPeace.notes);
     const names = await readdir(join(test.config.dataDir, 'files/runs', runId));
-    expect(names.sort()).toEqual(['class-map.tif', 'class-map.tif.aux.xml', 'model.bin']);
+    expect(names.sort()).toEqual([
+      'class-map.tif',
+      'class-map.tif.aux.xml',
+      'confidence.tif',
+      'margin.tif',
+      'model.bin',
+    ]);
   }, 150_000);
 
   it('goes on after an orderly stop as well, from what it had', async () => {

@@ -74,12 +74,18 @@ describe('a run', () => {
     const { body } = await labeller.get(`/api/v1/runs/${finished.id}`).expect(200);
     expect(body).toMatchObject({ overallAccuracy: null, abilities: { cancel: false, delete: false } });
     expect(finished.overallAccuracy).toBeGreaterThan(0.6);
-    expect(finished.abilities).toEqual({ cancel: false, delete: true });
+    expect(finished.abilities).toEqual({ cancel: false, delete: true, prioritise: false, retry: false });
   });
 
   it('leaves no work files behind', async () => {
     const keys = await test.app.files.list(`runs/${finished.id}/`);
-    expect(keys.map((key) => key.split('/').pop())).toEqual(['class-map.tif', 'class-map.tif.aux.xml', 'model.bin']);
+    expect(keys.map((key) => key.split('/').pop())).toEqual([
+      'class-map.tif',
+      'class-map.tif.aux.xml',
+      'confidence.tif',
+      'margin.tif',
+      'model.bin',
+    ]);
   });
 
   it('gives the same bytes again from the same recipe', async () => {

@@ -28,11 +28,22 @@ export interface TrainedModel {
   readonly featureImportance: Float64Array | null;
   /**
    * Classifies n rows of row-major features: fills classIndex[0..n) and, when given, share[0..n) with the winner's
-   * share of the votes (0..1), or its chance where the method has chances. Rows of no data are the caller's to mask: a
-   * NaN gives some class.
+   * share of the votes (0..1), or its chance where the method has chances, and margin[0..n) with that share minus the
+   * runner-up's: 0 where two classes are as good. Rows of no data are the caller's to mask: a NaN gives some class.
    * @throws RangeError when an array is too short.
    */
-  predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void;
+  predictBlock(
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ): void;
+  /**
+   * Fills shares[0..n·nClasses), row-major, with every class's share of the votes or its chance; a row sums to 1.
+   * @throws RangeError when an array is too short.
+   */
+  predictShares(features: Float32Array, n: number, shares: Float32Array): void;
   /** The model as bytes with kind, version and checksum; equal models give equal bytes. */
   serialise(): Uint8Array;
 }
@@ -131,11 +142,28 @@ export function requireBlock(
   n: number,
   classIndex: Uint8Array,
   share?: Float32Array,
+  margin?: Float32Array,
 ): void {
-  if (features.length < n * nFeatures || classIndex.length < n || (share && share.length < n)) {
+  const isShort = (share && share.length < n) || (margin && margin.length < n);
+  if (features.length < n * nFeatures || classIndex.length < n || isShort) {
     throw new RangeError(
       `${n} rows of ${nFeatures} features need longer arrays than ${features.length} values, ` +
-        `${classIndex.length} classes${share ? ` and ${share.length} shares` : ''}.`,
+        `${classIndex.length} classes${share ? `, ${share.length} shares` : ''}${margin ? `, ${margin.length} margins` : ''}.`,
+    );
+  }
+}
+
+/** Checks the arrays handed to `predictShares`. @throws RangeError when one is too short. */
+export function requireShares(
+  { nFeatures, nClasses }: { nFeatures: number; nClasses: number },
+  features: Float32Array,
+  n: number,
+  shares: Float32Array,
+): void {
+  if (features.length < n * nFeatures || shares.length < n * nClasses) {
+    throw new RangeError(
+      `${n} rows of ${nFeatures} features and ${nClasses} classes need longer arrays than ${features.length} values ` +
+        `and ${shares.length} shares.`,
     );
   }
 }

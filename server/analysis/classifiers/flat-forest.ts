@@ -1,4 +1,4 @@
-import { requireBlock, type TrainedModel } from './classifier.ts';
+import { requireBlock, requireShares, type TrainedModel } from './classifier.ts';
 import { ModelBytesError, packArrays, unpackArrays } from './model-bytes.ts';
 import { createThresholdRanks, type ThresholdRanks } from './threshold-ranks.ts';
 import type { FlatTree, TreePart } from './tree-part.ts';
@@ -117,23 +117,62 @@ export class FlatForest implements TrainedModel {
     ]);
   }
 
-  predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
-    requireBlock(this.nFeatures, features, n, classIndex, share);
+  predictBlock(
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ): void {
+    requireBlock(this.nFeatures, features, n, classIndex, share, margin);
     for (let from = 0; from < n; from += BLOCK_ROWS) {
       const nHere = Math.min(BLOCK_ROWS, n - from);
       this.#ranks.rankRows(features, from, nHere, this.#block.ranks);
       this.#block.votes.fill(0);
       this.#block.best.fill(0);
-      if (share) this.#countAllVotes(from, nHere, classIndex, share);
+      if (share || margin) this.#countAllVotes(from, nHere, classIndex, share, margin);
       else this.#settle(from, nHere, classIndex);
     }
   }
 
-  #countAllVotes(from: number, nRows: number, classIndex: Uint8Array, share: Float32Array): void {
+  predictShares(features: Float32Array, n: number, shares: Float32Array): void {
+    requireShares(this, features, n, shares);
+    const { nClasses, nTrees } = this;
+    const { votes } = this.#block;
+    for (let from = 0; from < n; from += BLOCK_ROWS) {
+      const nHere = Math.min(BLOCK_ROWS, n - from);
+      this.#ranks.rankRows(features, from, nHere, this.#block.ranks);
+      votes.fill(0);
+      this.#block.best.fill(0);
+      for (const root of this.#roots) this.#walk(root, nHere);
+      for (let i = 0; i < nHere * nClasses; i++) shares[from * nClasses + i] = votes[i] / nTrees;
+    }
+  }
+
+  #countAllVotes(
+    from: number,
+    nRows: number,
+    classIndex: Uint8Array,
+    share: Float32Array | undefined,
+    margin: Float32Array | undefined,
+  ): void {
     const { best, winner } = this.#block;
     for (const root of this.#roots) this.#walk(root, nRows);
     classIndex.set(winner.subarray(0, nRows), from);
-    for (let i = 0; i < nRows; i++) share[from + i] = best[i] / this.nTrees;
+    if (share) for (let i = 0; i < nRows; i++) share[from + i] = best[i] / this.nTrees;
+    if (margin) for (let i = 0; i < nRows; i++) margin[from + i] = (best[i] - this.#countSecond(i)) / this.nTrees;
+  }
+
+  /** Votes of the runner-up of a row. */
+  #countSecond(row: number): number {
+    const { votes, winner } = this.#block;
+    const { nClasses } = this;
+    let second = 0;
+    for (let c = 0; c < nClasses; c++) {
+      const count = votes[row * nClasses + c];
+      if (count > second && c !== winner[row]) second = count;
+    }
+    return second;
   }
 
   /**
@@ -153,12 +192,7 @@ export class FlatForest implements TrainedModel {
       if (nLeft > 0 && (2 * nLeft > nTrees || nLeft % stride > 0)) continue;
       let kept = 0;
       for (let i = 0; i < nOpen; i++) {
-        let second = 0;
-        for (let c = 0; c < nClasses; c++) {
-          const count = votes[i * nClasses + c];
-          if (count > second && c !== winner[i]) second = count;
-        }
-        if (best[i] - second >= nLeft) {
+        if (best[i] - this.#countSecond(i) >= nLeft) {
           classIndex[places[i]] = winner[i];
           continue;
         }

@@ -1,6 +1,7 @@
 import { measureClassSpread, nameClass, type ClassSpread } from './class-spread.ts';
 import {
   requireBlock,
+  requireShares,
   requireTrainingSet,
   type Classifier,
   type TrainedModel,
@@ -93,37 +94,81 @@ class GaussianModel implements TrainedModel {
     return this.#bytes.slice();
   }
 
-  predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
+  predictBlock(
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ): void {
     const { nFeatures, nClasses } = this;
-    requireBlock(nFeatures, features, n, classIndex, share);
-    const constants = this.#constants;
-    const means = this.#means;
-    const whiteners = this.#whiteners;
+    requireBlock(nFeatures, features, n, classIndex, share, margin);
     const scores = new Float64Array(nClasses);
     const difference = new Float64Array(nFeatures);
     for (let i = 0; i < n; i++) {
-      const from = i * nFeatures;
-      let best = -Infinity;
-      let winner = 0;
-      let w = 0;
-      for (let c = 0; c < nClasses; c++) {
-        let distance = 0;
-        for (let f = 0; f < nFeatures; f++) {
-          difference[f] = features[from + f] - means[c * nFeatures + f];
-          let whitened = 0;
-          for (let g = 0; g <= f; g++) whitened += whiteners[w++] * difference[g];
-          distance += whitened * whitened;
-        }
-        const score = constants[c] - distance / 2;
-        scores[c] = score;
-        if (score > best) {
-          best = score;
-          winner = c;
-        }
-      }
+      const winner = this.#score(features, i * nFeatures, scores, difference);
       classIndex[i] = winner;
-      if (share) share[i] = shareOfBest(scores, best);
+      if (share) share[i] = shareOfBest(scores, scores[winner]);
+      if (margin) margin[i] = marginOfBest(scores, winner);
     }
+  }
+
+  predictShares(features: Float32Array, n: number, shares: Float32Array): void {
+    requireShares(this, features, n, shares);
+    const { nFeatures, nClasses } = this;
+    const scores = new Float64Array(nClasses);
+    const difference = new Float64Array(nFeatures);
+    for (let i = 0; i < n; i++) {
+      const winner = this.#score(features, i * nFeatures, scores, difference);
+      writeShares(scores, winner, shares, i * nClasses);
+    }
+  }
+
+  /** Fills the log densities of the row at `from`, and gives the class with the greatest. */
+  #score(features: Float32Array, from: number, scores: Float64Array, difference: Float64Array): number {
+    const { nFeatures, nClasses } = this;
+    const constants = this.#constants;
+    const means = this.#means;
+    const whiteners = this.#whiteners;
+    let best = -Infinity;
+    let winner = 0;
+    let w = 0;
+    for (let c = 0; c < nClasses; c++) {
+      let distance = 0;
+      for (let f = 0; f < nFeatures; f++) {
+        difference[f] = features[from + f] - means[c * nFeatures + f];
+        let whitened = 0;
+        for (let g = 0; g <= f; g++) whitened += whiteners[w++] * difference[g];
+        distance += whitened * whitened;
+      }
+      const score = constants[c] - distance / 2;
+      scores[c] = score;
+      if (score > best) {
+        best = score;
+        winner = c;
+      }
+    }
+    return winner;
+  }
+}
+
+/** The winner's chance less the runner-up's, from log densities; 0 when every class is infinitely far. */
+export function marginOfBest(logDensities: Float64Array, winner: number): number {
+  const best = logDensities[winner];
+  if (best === -Infinity) return 0;
+  let second = -Infinity;
+  for (let c = 0; c < logDensities.length; c++) {
+    if (c !== winner && logDensities[c] > second) second = logDensities[c];
+  }
+  return shareOfBest(logDensities, best) * (1 - Math.exp(second - best));
+}
+
+/** Writes every class's chance from log densities to `shares`, from place `at` on. */
+export function writeShares(logDensities: Float64Array, winner: number, shares: Float32Array, at: number): void {
+  const best = logDensities[winner];
+  const top = shareOfBest(logDensities, best);
+  for (let c = 0; c < logDensities.length; c++) {
+    shares[at + c] = best === -Infinity ? top : top * Math.exp(logDensities[c] - best);
   }
 }
 

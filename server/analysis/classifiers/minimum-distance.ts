@@ -1,7 +1,7 @@
 import { measureClassSpread, type ClassSpread } from './class-spread.ts';
-import { requireBlock, requireTrainingSet, type Classifier, type TrainedModel } from './classifier.ts';
+import { requireBlock, requireShares, requireTrainingSet, type Classifier, type TrainedModel } from './classifier.ts';
 import { factorCovariance } from './covariance-factor.ts';
-import { shareOfBest } from './gaussian-maximum-likelihood.ts';
+import { marginOfBest, shareOfBest, writeShares } from './gaussian-maximum-likelihood.ts';
 import { ModelBytesError, packArrays, unpackArrays } from './model-bytes.ts';
 
 export interface MinimumDistanceParams {
@@ -85,46 +85,77 @@ class MeansModel implements TrainedModel {
     return this.#bytes.slice();
   }
 
-  predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
+  predictBlock(
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ): void {
     const { nFeatures, nClasses } = this;
-    requireBlock(nFeatures, features, n, classIndex, share);
-    const means = this.#means;
-    const whitener = this.#whitener;
-    const isWhitened = whitener.length > 0;
-    const variance = this.#variance;
+    requireBlock(nFeatures, features, n, classIndex, share, margin);
     const distances = new Float64Array(nClasses);
     const difference = new Float64Array(nFeatures);
     for (let i = 0; i < n; i++) {
-      const from = i * nFeatures;
-      let nearest = Infinity;
-      let winner = 0;
-      for (let c = 0; c < nClasses; c++) {
-        let distance = 0;
-        let w = 0;
-        for (let f = 0; f < nFeatures; f++) {
-          difference[f] = features[from + f] - means[c * nFeatures + f];
-          let whitened = difference[f];
-          if (isWhitened) {
-            whitened = 0;
-            for (let g = 0; g <= f; g++) whitened += whitener[w++] * difference[g];
-          }
-          distance += whitened * whitened;
-        }
-        distances[c] = distance;
-        if (distance < nearest) {
-          nearest = distance;
-          winner = c;
-        }
-      }
+      const winner = this.#measure(features, i * nFeatures, distances, difference);
       classIndex[i] = winner;
-      if (share) {
-        for (let c = 0; c < nClasses; c++) {
-          // Without any spread the nearest mean is certain, and means as near share it.
-          const excess = distances[c] - nearest;
-          distances[c] = variance > 0 ? -excess / (2 * variance) : excess === 0 ? 0 : -Infinity;
+      if (!share && !margin) continue;
+      this.#toLogDensities(distances, winner);
+      if (share) share[i] = shareOfBest(distances, distances[winner]);
+      if (margin) margin[i] = marginOfBest(distances, winner);
+    }
+  }
+
+  predictShares(features: Float32Array, n: number, shares: Float32Array): void {
+    requireShares(this, features, n, shares);
+    const { nFeatures, nClasses } = this;
+    const distances = new Float64Array(nClasses);
+    const difference = new Float64Array(nFeatures);
+    for (let i = 0; i < n; i++) {
+      const winner = this.#measure(features, i * nFeatures, distances, difference);
+      this.#toLogDensities(distances, winner);
+      writeShares(distances, winner, shares, i * nClasses);
+    }
+  }
+
+  /** Fills the squared distances of the row at `from` to the means, and gives the nearest class. */
+  #measure(features: Float32Array, from: number, distances: Float64Array, difference: Float64Array): number {
+    const { nFeatures, nClasses } = this;
+    const means = this.#means;
+    const whitener = this.#whitener;
+    const isWhitened = whitener.length > 0;
+    let nearest = Infinity;
+    let winner = 0;
+    for (let c = 0; c < nClasses; c++) {
+      let distance = 0;
+      let w = 0;
+      for (let f = 0; f < nFeatures; f++) {
+        difference[f] = features[from + f] - means[c * nFeatures + f];
+        let whitened = difference[f];
+        if (isWhitened) {
+          whitened = 0;
+          for (let g = 0; g <= f; g++) whitened += whitener[w++] * difference[g];
         }
-        share[i] = nearest === Infinity ? 1 / nClasses : shareOfBest(distances, 0);
+        distance += whitened * whitened;
       }
+      distances[c] = distance;
+      if (distance < nearest) {
+        nearest = distance;
+        winner = c;
+      }
+    }
+    return winner;
+  }
+
+  /** Turns squared distances into log densities; all −∞ when every class is infinitely far. */
+  #toLogDensities(distances: Float64Array, winner: number): void {
+    const variance = this.#variance;
+    const nearest = distances[winner];
+    for (let c = 0; c < distances.length; c++) {
+      // Without any spread the nearest mean is certain, and means as near share it.
+      const excess = distances[c] - nearest;
+      if (nearest === Infinity) distances[c] = -Infinity;
+      else distances[c] = variance > 0 ? -excess / (2 * variance) : excess === 0 ? 0 : -Infinity;
     }
   }
 }

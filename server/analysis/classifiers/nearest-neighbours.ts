@@ -1,4 +1,11 @@
-import { requireBlock, requireInteger, requireTrainingSet, type Classifier, type TrainedModel } from './classifier.ts';
+import {
+  requireBlock,
+  requireInteger,
+  requireShares,
+  requireTrainingSet,
+  type Classifier,
+  type TrainedModel,
+} from './classifier.ts';
 import { keepScales, measureScales, scaleRows, type FeatureScales } from './feature-scales.ts';
 import { ModelBytesError, packArrays, unpackArrays } from './model-bytes.ts';
 import { NeighbourSearch } from './neighbour-search.ts';
@@ -89,9 +96,15 @@ class NeighbourModel implements TrainedModel {
     return this.#bytes.slice();
   }
 
-  predictBlock(features: Float32Array, n: number, classIndex: Uint8Array, share?: Float32Array): void {
+  predictBlock(
+    features: Float32Array,
+    n: number,
+    classIndex: Uint8Array,
+    share?: Float32Array,
+    margin?: Float32Array,
+  ): void {
     const { nFeatures } = this;
-    requireBlock(nFeatures, features, n, classIndex, share);
+    requireBlock(nFeatures, features, n, classIndex, share, margin);
     const { means, scales } = this.#scales;
     const search = this.#search;
     const votes = this.#votes;
@@ -111,7 +124,28 @@ class NeighbourModel implements TrainedModel {
       }
       classIndex[i] = winner;
       if (share) share[i] = votes[winner] / this.#k;
+      if (margin) {
+        let second = 0;
+        for (let j = 0; j < found.length; j++) {
+          const candidate = labels[found[j]];
+          if (candidate !== winner && votes[candidate] > second) second = votes[candidate];
+        }
+        margin[i] = (votes[winner] - second) / this.#k;
+      }
       for (let j = 0; j < found.length; j++) votes[labels[found[j]]] = 0;
+    }
+  }
+
+  predictShares(features: Float32Array, n: number, shares: Float32Array): void {
+    requireShares(this, features, n, shares);
+    const { nFeatures, nClasses } = this;
+    const { means, scales } = this.#scales;
+    const position = new Float64Array(nFeatures);
+    shares.fill(0, 0, n * nClasses);
+    for (let i = 0; i < n; i++) {
+      for (let f = 0; f < nFeatures; f++) position[f] = (features[i * nFeatures + f] - means[f]) * scales[f];
+      this.#search.find(position);
+      for (const row of this.#search.found) shares[i * nClasses + this.#labels[row]] += 1 / this.#k;
     }
   }
 }

@@ -49,6 +49,13 @@ export interface SampleDigest {
   kept: Float32Array;
 }
 
+/** A strip's class codes and layers (whole percent), each row-major, one byte a pixel, deflated. */
+export interface MappedStrip {
+  codes: Uint8Array;
+  confidence: Uint8Array;
+  margin: Uint8Array;
+}
+
 /** One count in shared memory, written by the thread and looked at from outside. */
 export type SharedProgress = Int32Array;
 
@@ -104,7 +111,7 @@ export interface ComputeTasks {
     };
     result: Uint8Array;
   };
-  /** The result is the strip's class codes, deflated without a header. */
+  /** The results are deflated without a header. */
   'map-strip': {
     input: {
       scene: SceneInput;
@@ -115,7 +122,12 @@ export interface ComputeTasks {
       /** Pixels whose class has a smaller share stay unclassified. */
       minShare: number;
     };
-    result: Uint8Array;
+    result: MappedStrip;
+  };
+  /** Joins the strips of a layer into one raw file at `rawPath`. */
+  'join-strips': {
+    input: { stripPaths: readonly string[]; rawPath: string };
+    result: null;
   };
   /** Joins the strips into one raw file at `rawPath` and counts what is on the map. */
   'finish-map': {

@@ -1,10 +1,13 @@
 import { pipeline } from 'node:stream/promises';
-import { runProbeSchema } from '../../../shared/contracts/run.ts';
+import type { Response } from 'express';
+import { runLayerSchema, runProbeSchema, runVotesSchema } from '../../../shared/contracts/run.ts';
 import { probeQuerySchema, tileParamsSchema } from '../../../shared/contracts/scene.ts';
 import { listClassAreas } from '../../presenters/present-run.ts';
 import { requireResult } from '../../services/accuracy.ts';
 import { nameDownload, packClassMap } from '../../services/class-map-package.ts';
 import { probeClassMap, planClassTile } from '../../services/class-map-view.ts';
+import { planLayerTile, readVotes, requireLayer } from '../../services/run-layers.ts';
+import type { App } from '../../app-context.ts';
 import { findProject } from '../../services/projects.ts';
 import { route } from '../route.ts';
 import { sendTile } from '../send-tile.ts';
@@ -15,6 +18,20 @@ const read = { kind: 'project', action: 'run.read', find: findRunTarget } as con
 /** A browser that hangs up in the middle of a download is no failure of the server. */
 function isHangUp(error: unknown): boolean {
   return (error as NodeJS.ErrnoException).code === 'ERR_STREAM_PREMATURE_CLOSE';
+}
+
+const layerParams = runParams.extend({ layer: runLayerSchema });
+
+async function sendTiff(app: App, res: Response, key: string, name: string): Promise<undefined> {
+  const stream = await app.files.stream(key);
+  res.attachment(`${name}.tif`);
+  res.type('image/tiff');
+  res.setHeader('Content-Length', await app.files.sizeBytes(key));
+  res.setHeader('Cache-Control', 'private, no-cache');
+  await pipeline(stream, res).catch((error: unknown) => {
+    if (!isHangUp(error)) throw error;
+  });
+  return undefined;
 }
 
 export const classMapRoutes = [
@@ -41,6 +58,41 @@ export const classMapRoutes = [
     handle: ({ app, target, query }) => probeClassMap(app, target.run, query.lon, query.lat),
   }),
   route({
+    id: 'runs.votes',
+    method: 'get',
+    path: '/runs/:runId/votes',
+    summary: 'How the model of a run votes on the pixel at a position',
+    access: read,
+    params: runParams,
+    query: probeQuerySchema,
+    answer: runVotesSchema,
+    handle: ({ app, target, query }) => readVotes(app, target.run, query.lon, query.lat),
+  }),
+  route({
+    id: 'runs.layer-tile',
+    method: 'get',
+    path: '/runs/:runId/layers/:layer/tiles/:z/:x/:y.webp',
+    summary: 'A Web Mercator tile of how sure the map is: confidence or margin',
+    access: read,
+    params: layerParams.extend(tileParamsSchema.shape),
+    answer: { mediaType: 'image/webp' },
+    handle: ({ app, params: { layer, z, x, y }, target, req, res }) =>
+      sendTile(req, res, planLayerTile(app, target.run, layer, { z, x, y })),
+  }),
+  route({
+    id: 'runs.layer',
+    method: 'get',
+    path: '/runs/:runId/layers/:layer.tif',
+    summary: 'Confidence or margin as a GeoTIFF in whole percent, 255 where nothing is mapped',
+    access: read,
+    params: layerParams,
+    answer: { mediaType: 'image/tiff' },
+    async handle({ app, target, params, res }) {
+      const key = requireLayer(target.run, params.layer);
+      return sendTiff(app, res, key, nameDownload(target.run, params.layer));
+    },
+  }),
+  route({
     id: 'runs.class-map',
     method: 'get',
     path: '/runs/:runId/class-map.tif',
@@ -49,16 +101,7 @@ export const classMapRoutes = [
     params: runParams,
     answer: { mediaType: 'image/tiff' },
     async handle({ app, target, res }) {
-      const { mapKey } = requireResult(target.run);
-      const stream = await app.files.stream(mapKey);
-      res.attachment(`${nameDownload(target.run, 'class-map')}.tif`);
-      res.type('image/tiff');
-      res.setHeader('Content-Length', await app.files.sizeBytes(mapKey));
-      res.setHeader('Cache-Control', 'private, no-cache');
-      await pipeline(stream, res).catch((error: unknown) => {
-        if (!isHangUp(error)) throw error;
-      });
-      return undefined;
+      return sendTiff(app, res, requireResult(target.run).mapKey, nameDownload(target.run, 'class-map'));
     },
   }),
   route({
