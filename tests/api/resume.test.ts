@@ -9,6 +9,7 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { createDataSource } from '../../server/data-source.ts';
 import { Job } from '../../server/entities/job.ts';
 import { openApp } from '../../server/start-server.ts';
+import type { Reproduction } from '../../shared/contracts/reproduction.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround, type RunGround } from '../factories/make-run-ground.ts';
@@ -33,28 +34,33 @@ async function findFreePort(): Promise<number> {
   return free;
 }
 
-/** Starts the server as a process of its own on the test's database and files. */
-async function startServer(threads: number): Promise<void> {
+/** What a process of its own needs to work on the test's database and files. */
+function describeEnvironment(threads: number): NodeJS.ProcessEnv {
   const { db, dataDir, sessionSecret } = test.config;
+  return {
+    PATH: process.env['PATH'],
+    TSX_TSCONFIG_PATH: join(repository, 'server/tsconfig.json'),
+    NODE_ENV: 'test',
+    GROUNDSEL_PORT: String(port),
+    GROUNDSEL_DATA_DIR: dataDir,
+    GROUNDSEL_DB_HOST: db.host,
+    GROUNDSEL_DB_PORT: String(db.port),
+    GROUNDSEL_DB_USER: db.user,
+    GROUNDSEL_DB_PASSWORD: db.password,
+    GROUNDSEL_DB_NAME: db.name,
+    GROUNDSEL_SESSION_SECRET: sessionSecret,
+    GROUNDSEL_WORKER_THREADS: String(threads),
+    GROUNDSEL_DEMO: 'off',
+    GROUNDSEL_LOG_LEVEL: 'error',
+  };
+}
+
+/** Starts the server as a process of its own. */
+async function startServer(threads: number): Promise<void> {
   const child = spawn(process.execPath, ['--import', 'tsx', 'server/main.ts'], {
     cwd: repository,
     stdio: ['ignore', 'pipe', 'pipe'],
-    env: {
-      PATH: process.env['PATH'],
-      TSX_TSCONFIG_PATH: join(repository, 'server/tsconfig.json'),
-      NODE_ENV: 'test',
-      GROUNDSEL_PORT: String(port),
-      GROUNDSEL_DATA_DIR: dataDir,
-      GROUNDSEL_DB_HOST: db.host,
-      GROUNDSEL_DB_PORT: String(db.port),
-      GROUNDSEL_DB_USER: db.user,
-      GROUNDSEL_DB_PASSWORD: db.password,
-      GROUNDSEL_DB_NAME: db.name,
-      GROUNDSEL_SESSION_SECRET: sessionSecret,
-      GROUNDSEL_WORKER_THREADS: String(threads),
-      GROUNDSEL_DEMO: 'off',
-      GROUNDSEL_LOG_LEVEL: 'error',
-    },
+    env: describeEnvironment(threads),
   });
   server = child;
   let said = '';
@@ -192,3 +198,59 @@ describe('a run whose server is killed', () => {
     expect(await countFiles(runId, 'strips')).toEqual([]);
   }, 60_000);
 });
+
+describe('a reproduction', () => {
+  it('finds the same bytes with another number of threads, and after its server was killed in the middle', async () => {
+    await killServer();
+    await startServer(2);
+    const run = await waitForRun(await signIn(), await startRun(await signIn()));
+    expect(run.job.state).toBe('finished');
+    await killServer();
+    await startServer(1);
+    const { body } = await (await signIn()).post(`/api/v1/runs/${run.id}/reproductions`).expect(201);
+    const { id } = body as Reproduction;
+    await waitForFiles(id, 'parts', 5);
+    await killServer();
+    expect((await countFiles(id, 'parts')).length).toBeLessThan(250);
+    await startServer(1);
+    const agent = await signIn();
+    const row = await waitForReproduction(agent, run.id, id);
+    expect(row).toMatchObject({ verdict: 'same', threads: 1, job: { state: 'finished' } });
+    expect(row.checks[0]?.foundSha256).toBe(run.classMapSha256);
+
+    // The same by command, beside the running server.
+    const { code, said } = await runCommand(`${team.project.name}/${run.number}`);
+    expect(said).toContain('The same bytes, after');
+    expect(code).toBe(0);
+    expect(await countFiles(id, 'strips')).toEqual([]);
+    const listed = await agent.get(`/api/v1/runs/${run.id}/reproductions`).expect(200);
+    expect((listed.body.reproductions as Reproduction[])[0]).toMatchObject({ verdict: 'same', job: null });
+    const unknown = await runCommand(`${team.project.name}/999`);
+    expect(unknown.said).toContain('has no run 999; wanted the id of a run');
+    expect(unknown.code).toBe(1);
+  }, 150_000);
+});
+
+async function waitForReproduction(agent: Agent, runId: string, id: string): Promise<Reproduction> {
+  const until = Date.now() + 60_000;
+  for (;;) {
+    const { body } = await agent.get(`/api/v1/runs/${runId}/reproductions`).expect(200);
+    const row = (body.reproductions as Reproduction[]).find((one) => one.id === id);
+    if (row?.job && row.job.state !== 'queued' && row.job.state !== 'running') return row;
+    if (Date.now() > until) throw new Error(`the reproduction is still ${row?.job?.state}`);
+    await new Promise((resolve) => setTimeout(resolve, 60));
+  }
+}
+
+/** What `npm run reproduce` starts. */
+async function runCommand(run: string): Promise<{ code: number | null; said: string }> {
+  const child = spawn(process.execPath, ['--import', 'tsx', 'server/reproduce-run.ts', run], {
+    cwd: repository,
+    stdio: ['ignore', 'pipe', 'pipe'],
+    env: describeEnvironment(2),
+  });
+  let said = '';
+  for (const stream of [child.stdout, child.stderr]) stream.on('data', (part: Buffer) => (said += part.toString()));
+  const [code] = (await once(child, 'close')) as [number | null];
+  return { code, said };
+}

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { CountedSplitSearch, isCountable } from '../../../server/analysis/classifiers/counted-split-search.ts';
 import {
   SplitSearch,
   type NodeRows,
@@ -79,6 +80,16 @@ describe('the best split on one feature', () => {
           expect(search.improve(best, 3, ranks, nLevels, drawn, 0, drawn.rows.length, sums)).toBe(true);
           const wanted = searchByBruteForce(ranks, labels, rows, weights, minLeaf);
           expect(best.score).toBeCloseTo(wanted.score, 9);
+          const isPlain = isCountable(weights, [new Float32Array(nLevels)], drawn);
+          expect(isPlain).toBe(weights === searches[0] && nLevels <= 32_768);
+          if (isPlain) {
+            const counted = new CountedSplitSearch(weights.length, minLeaf, drawn.rows.length);
+            counted.openNode(sums);
+            const same = nothing();
+            expect(counted.improve(same, 3, ranks, nLevels, drawn, 0, drawn.rows.length, sums)).toBe(true);
+            // Not about the same but the same: the forest must not depend on which search was taken.
+            expect(same).toEqual(best);
+          }
           if (wanted.rank >= 0) expect([best.feature, best.rank, best.nextRank]).toEqual([3, wanted.rank, wanted.nextRank]); // prettier-ignore
         }
       }
@@ -96,6 +107,21 @@ describe('the best split on one feature', () => {
       expect(search.improve(best, 1, Int32Array.of(0, 1, 2, 3), nLevels, drawn, 0, 4, sums)).toBe(true);
     }
     expect(best.feature).toBe(8);
+  });
+
+  it('counts only what 32 bits can count', () => {
+    const weights = Float64Array.of(1, 1);
+    const levels = [new Float32Array(10)];
+    const drawn = (times: number, n: number): NodeRows => ({
+      rows: new Int32Array(n),
+      tags: new Int32Array(n).fill(times << 8),
+    });
+    expect(isCountable(weights, levels, drawn(1, 46_340))).toBe(true);
+    expect(isCountable(weights, levels, drawn(1, 46_341))).toBe(false);
+    expect(isCountable(weights, levels, drawn(255, 10))).toBe(true);
+    expect(isCountable(weights, levels, drawn(256, 10))).toBe(false);
+    expect(isCountable(Float64Array.of(1, 2), levels, drawn(1, 10))).toBe(false);
+    expect(isCountable(weights, [new Float32Array(32_769)], drawn(1, 10))).toBe(false);
   });
 
   it('looks at a stretch of the rows only', () => {
