@@ -4,12 +4,15 @@ import type { Config } from './config.ts';
 import { AccountToken } from './entities/account-token.ts';
 import { Activity } from './entities/activity.ts';
 import { Band } from './entities/band.ts';
+import { BlockAssignment } from './entities/block-assignment.ts';
+import { Block } from './entities/block.ts';
 import { EventEntry } from './entities/event-entry.ts';
 import { JobLogEntry } from './entities/job-log-entry.ts';
 import { Job } from './entities/job.ts';
 import { LandClass } from './entities/land-class.ts';
 import { Membership } from './entities/membership.ts';
 import { NamedRecipe } from './entities/named-recipe.ts';
+import { Presence } from './entities/presence.ts';
 import { Project } from './entities/project.ts';
 import { RateCounter } from './entities/rate-counter.ts';
 import { ReferenceAnswer } from './entities/reference-answer.ts';
@@ -18,6 +21,7 @@ import { ReferencePoint } from './entities/reference-point.ts';
 import { Reproduction } from './entities/reproduction.ts';
 import { RunSample } from './entities/run-sample.ts';
 import { Run } from './entities/run.ts';
+import { SampleRemark } from './entities/sample-remark.ts';
 import { SampleVersion } from './entities/sample-version.ts';
 import { Sample } from './entities/sample.ts';
 import { Scene } from './entities/scene.ts';
@@ -33,12 +37,15 @@ export const entities = [
   AccountToken,
   Activity,
   Band,
+  Block,
+  BlockAssignment,
   EventEntry,
   Job,
   JobLogEntry,
   LandClass,
   Membership,
   NamedRecipe,
+  Presence,
   Project,
   RateCounter,
   ReferenceAnswer,
@@ -48,6 +55,7 @@ export const entities = [
   Run,
   RunSample,
   Sample,
+  SampleRemark,
   SampleVersion,
   Scene,
   Session,

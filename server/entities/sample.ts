@@ -10,8 +10,9 @@ import {
   type Relation,
 } from 'typeorm';
 import type { Polygon } from '../../shared/contracts/geometry.ts';
-import type { Confidence } from '../../shared/contracts/sample.ts';
+import type { Confidence, SampleState } from '../../shared/contracts/sample.ts';
 import { geometryTransformer } from './geometry-column.ts';
+import { Block } from './block.ts';
 import { LandClass } from './land-class.ts';
 import { Project } from './project.ts';
 import { Scene } from './scene.ts';
@@ -46,6 +47,14 @@ export class Sample {
   @Column({ type: 'int' }) pixelCount!: number;
   @Column({ type: 'double' }) areaHa!: number;
   @Column({ type: 'int', default: 1 }) version!: number;
+  /** Moves without a new version: an edit under way is not disturbed by its review. */
+  @Column({ type: 'varchar', length: 12, default: 'draft' }) state!: SampleState;
+  /** The block its centroid lies in; kept up by place-samples. */
+  @Column({ type: 'uuid', nullable: true, default: null }) blockId!: string | null;
+  @ManyToOne(() => Block, { onDelete: 'SET NULL', nullable: true })
+  @JoinColumn({ name: 'blockId', foreignKeyConstraintName: 'FK_sample_block' })
+  block!: Relation<Block> | null;
+  @Column({ type: 'int', default: 0 }) openRemarks!: number;
   @Column({ type: 'uuid', nullable: true }) createdById!: string | null;
   @ManyToOne(() => User, { onDelete: 'SET NULL', nullable: true })
   @JoinColumn({ name: 'createdById' })

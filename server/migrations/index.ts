@@ -5,6 +5,7 @@ import { RunSnapshot1796101500000 } from './1796101500000-run-snapshot.ts';
 import { ReferenceDesigns1796104000000 } from './1796104000000-reference-designs.ts';
 import { ZoneLayers1796117000000 } from './1796117000000-zone-layers.ts';
 import { QueueAndRecipes1796118000000 } from './1796118000000-queue-and-recipes.ts';
+import { ReviewAndBlocks1796118600000 } from './1796118600000-review-and-blocks.ts';
 
 /** In the order they run; a new one goes to the end. */
 export const migrations = [
@@ -15,4 +16,5 @@ export const migrations = [
   ReferenceDesigns1796104000000,
   ZoneLayers1796117000000,
   QueueAndRecipes1796118000000,
+  ReviewAndBlocks1796118600000,
 ];

@@ -20,12 +20,17 @@ function mayEdit(roles: readonly ProjectRole[], sample: PresentableSample, viewe
 
 export function presentSample(sample: PresentableSample, viewer: Viewer): SampleContract {
   const { id, projectId, number, sceneId, classId, geometry, confidence, note, pixelCount, areaHa, version } = sample;
+  const { state, blockId, openRemarks } = sample;
   return {
     ...{ id, projectId, number, sceneId, classId, geometry, confidence, note, pixelCount, areaHa, version },
+    ...{ state, blockId, openRemarks },
     createdBy: presentPerson(sample.createdBy),
     createdAt: sample.createdAt.toISOString(),
     updatedAt: sample.updatedAt.toISOString(),
-    abilities: { edit: mayEdit(viewer.roles, sample, viewer.userId) },
+    abilities: {
+      edit: mayEdit(viewer.roles, sample, viewer.userId),
+      review: can('sample.review', viewer.roles),
+    },
   };
 }
 

@@ -1,5 +1,6 @@
 import { accountRoutes } from './accounts/routes.ts';
 import { accuracyRoutes } from './accuracy/routes.ts';
+import { blockRoutes } from './blocks/routes.ts';
 import { classRoutes } from './classes/routes.ts';
 import { designRoutes } from './designs/routes.ts';
 import { eventRoutes } from './events/routes.ts';
@@ -11,6 +12,8 @@ import { recipeRoutes } from './recipes/routes.ts';
 import type { Route } from './route.ts';
 import { runRoutes } from './runs/routes.ts';
 import { sampleRoutes } from './samples/routes.ts';
+import { presenceRoutes } from './samples/presence-routes.ts';
+import { sampleReviewRoutes } from './samples/review-routes.ts';
 import { signatureRoutes } from './samples/signature-routes.ts';
 import { sceneRoutes } from './scenes/routes.ts';
 import { sessionRoutes } from './session/routes.ts';
@@ -26,6 +29,9 @@ export const routes: readonly Route[] = [
   ...sceneRoutes,
   ...classRoutes,
   ...sampleRoutes,
+  ...sampleReviewRoutes,
+  ...blockRoutes,
+  ...presenceRoutes,
   ...signatureRoutes,
   ...runRoutes,
   ...jobRoutes,

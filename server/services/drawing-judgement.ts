@@ -30,7 +30,13 @@ interface Asked {
 }
 
 /** How a drawing stands to the samples there are: typical or not, mixed, overlapping, near what is held out. */
-export async function judgeDrawing(app: App, project: Project, scene: Scene, asked: Asked): Promise<DrawingJudgement> {
+export async function judgeDrawing(
+  app: App,
+  project: Project,
+  scene: Scene,
+  asked: Asked,
+  viewerId: string,
+): Promise<DrawingJudgement> {
   const classes = (await listLandClasses(app, project.id)).map(({ landClass }) => landClass);
   const ownIndex = classes.findIndex(({ id }) => id === asked.classId);
   const own = classes[ownIndex];
@@ -43,7 +49,7 @@ export async function judgeDrawing(app: App, project: Project, scene: Scene, ask
   const drawing = pixels && (await summariseDrawing(app, scene, pixels));
   if (!pixels || !drawing || drawing.nPixels === 0) return NOTHING;
 
-  const all = await listSamples(app, project.id, null);
+  const all = await listSamples(app, project.id, null, viewerId);
   const others = all.filter(({ id }) => id !== asked.sampleId);
   const digested = (await digestSamples(app, scene, project.studyArea, others)).filter(
     ({ summary }) => summary.nPixels > 0,

@@ -1,9 +1,13 @@
 import type { Bounds } from '../../shared/contracts/geometry.ts';
 import type { App } from '../app-context.ts';
 import type { Sample } from '../entities/sample.ts';
+import { findIndependentBlocks } from './block-independence.ts';
 
 /** A sample as the list carries it. */
-export interface SampleListRow extends Omit<Sample, 'project' | 'scene' | 'landClass' | 'createdBy' | 'deletedAt'> {
+export interface SampleListRow extends Omit<
+  Sample,
+  'project' | 'scene' | 'landClass' | 'block' | 'createdBy' | 'deletedAt'
+> {
   createdBy: { id: string; name: string } | null;
 }
 
@@ -14,18 +18,26 @@ interface RawSample extends Omit<SampleListRow, 'geometry' | 'createdBy'> {
 
 /**
  * The samples on the map, by number; with bounds only those whose own bounds meet them. One query whatever their number, and the driver reads
- * geometry in binary: ten thousand samples are a matter of a few tenths of a second.
+ * geometry in binary: ten thousand samples are a matter of a few tenths of a second. What others drew in a block the viewer labels
+ * independently is left out.
  */
-export async function listSamples(app: App, projectId: string, bounds: Bounds | null): Promise<SampleListRow[]> {
+export async function listSamples(
+  app: App,
+  projectId: string,
+  bounds: Bounds | null,
+  viewerId: string,
+): Promise<SampleListRow[]> {
+  const withheld = await findIndependentBlocks(app, projectId, viewerId);
   const boxes = bounds ? boxesAsWkt(bounds) : [];
   const rows = await app.db.query<RawSample[]>(
     `SELECT s.id, s.projectId, s.number, s.sceneId, s.classId, s.geometry, s.confidence, s.note, s.pixelCount, s.areaHa,
-       s.version, s.createdById, s.createdAt, s.updatedAt, u.name AS createdByName
+       s.version, s.state, s.blockId, s.openRemarks, s.createdById, s.createdAt, s.updatedAt, u.name AS createdByName
      FROM samples s LEFT JOIN users u ON u.id = s.createdById
      WHERE s.projectId = ? AND s.deletedAt IS NULL
        ${boxes.length ? `AND (${boxes.map(() => 'MBRIntersects(s.geometry, ST_GeomFromText(?))').join(' OR ')})` : ''}
+       ${withheld.length ? 'AND (s.blockId IS NULL OR s.createdById = ? OR s.blockId NOT IN (?))' : ''}
      ORDER BY s.number`,
-    [projectId, ...boxes],
+    [projectId, ...boxes, ...(withheld.length ? [viewerId, withheld] : [])],
   );
   return rows.map(({ geometry, createdByName, ...row }) => ({
     ...row,

@@ -10,7 +10,9 @@ import { Sample } from '../entities/sample.ts';
 import type { Scene } from '../entities/scene.ts';
 import { Conflict, InvalidInput, NotFound } from '../errors.ts';
 import { requireDrawing } from './drawing-measure.ts';
+import { placeSamples } from './place-samples.ts';
 import { recordSampleActivity } from './sample-activity.ts';
+import { resubmitAccepted } from './sample-review.ts';
 import { findScene } from './scenes.ts';
 
 /** A sample, deleted or not, with its maker. */
@@ -118,6 +120,7 @@ export async function createSample(
         updatedAt: new Date(),
         deletedAt: null,
       });
+      await placeSamples(manager, project.id, input.id);
       await recordVersion(manager, input.id, 1, 'created', content, byId);
       await recordSampleActivity(manager, project.id, byId, 'drew', lastSampleNumber);
     });
@@ -171,6 +174,8 @@ export async function updateSample(
       { classId, geometry, confidence, note, pixelCount, areaHa, version: version + 1, updatedAt: new Date() },
     );
     if (result.affected === 0) throw refuseStale();
+    if (change.geometry) await placeSamples(manager, project.id, sample.id);
+    await resubmitAccepted(manager, sample.id, byId);
     await recordVersion(manager, sample.id, version + 1, 'edited', content, byId);
     await recordSampleActivity(manager, project.id, byId, 'changed', sample.number);
   });
@@ -216,12 +221,25 @@ export async function restoreSample(app: App, id: string, byId: string, versionN
     const content = { classId, geometry, confidence, note, pixelCount, areaHa };
     const version = now.version + 1;
     await manager.update(Sample, { id }, { ...content, version, updatedAt: new Date(), deletedAt: null });
+    await placeSamples(manager, now.projectId, id);
+    if (!hasSameContent(now, content)) await resubmitAccepted(manager, id, byId);
     await recordVersion(manager, id, version, 'restored', content, byId);
     await recordSampleActivity(manager, now.projectId, byId, 'restored', now.number);
     return now;
   });
   await announce(app, sample, byId);
   return loadSample(app, id);
+}
+
+/** Whether bringing back a version leaves the sample as it is, as undoing a deletion does. */
+function hasSameContent(now: Sample, content: SampleContent): boolean {
+  const { classId, geometry, confidence, note } = content;
+  return (
+    now.classId === classId &&
+    now.confidence === confidence &&
+    now.note === note &&
+    JSON.stringify(now.geometry) === JSON.stringify(geometry)
+  );
 }
 
 /** Every version of a sample, latest first. */

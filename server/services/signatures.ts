@@ -31,11 +31,12 @@ export async function describeSignatures(
   project: Project,
   scene: Scene,
   bandNumbers: readonly number[] | null,
+  viewerId: string,
 ): Promise<SignatureSet> {
   const columns = listFeatureColumns(scene.bands);
   const chosen = chooseBands(scene, bandNumbers);
   const classes = (await listLandClasses(app, project.id)).map(({ landClass }) => landClass);
-  const all = await listSamples(app, project.id, null);
+  const all = await listSamples(app, project.id, null, viewerId);
   const digested = await digestSamples(app, scene, project.studyArea, all);
   const samples = digested.filter(({ summary }) => summary.nPixels > 0);
   const byClass = classes.map(({ id }) => samples.filter(({ classId }) => classId === id));

@@ -33,7 +33,7 @@ export const projectEventSchema = z.discriminatedUnion('type', [
   z.object({ type: z.literal('job'), sceneId: idSchema.nullable(), runId: idSchema.nullable(), job: jobSchema }),
   z.object({
     type: z.literal('changed'),
-    what: z.enum(['project', 'scenes', 'classes', 'samples', 'runs', 'members', 'designs']),
+    what: z.enum(['project', 'scenes', 'classes', 'samples', 'runs', 'members', 'designs', 'blocks', 'presence']),
     id: idSchema.nullable(),
     by: idSchema.nullable(),
   }),

@@ -6,6 +6,10 @@ import { textSchema } from './text.ts';
 export const confidenceSchema = z.enum(['low', 'medium', 'high']);
 export type Confidence = z.infer<typeof confidenceSchema>;
 
+/** Where a sample stands between whoever drew it and the lead. Nothing forces anybody to submit: runs use samples in every state. */
+export const sampleStateSchema = z.enum(['draft', 'submitted', 'accepted', 'returned']);
+export type SampleState = z.infer<typeof sampleStateSchema>;
+
 export const sampleSchema = z.object({
   id: idSchema,
   projectId: idSchema,
@@ -20,10 +24,15 @@ export const sampleSchema = z.object({
   pixelCount: z.number().int(),
   areaHa: z.number(),
   version: z.number().int(),
+  state: sampleStateSchema,
+  /** The block its centre lies in, if any. */
+  blockId: idSchema.nullable(),
+  /** Remarks nobody has resolved yet. */
+  openRemarks: z.number().int(),
   createdBy: personSchema.nullable(),
   createdAt: instantSchema,
   updatedAt: instantSchema,
-  abilities: z.object({ edit: z.boolean() }),
+  abilities: z.object({ edit: z.boolean(), review: z.boolean() }),
 });
 export type Sample = z.infer<typeof sampleSchema>;
 export const sampleListSchema = z.object({ samples: z.array(sampleSchema) });

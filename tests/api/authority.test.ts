@@ -5,6 +5,7 @@ import { Membership } from '../../server/entities/membership.ts';
 import { ReferenceDesign } from '../../server/entities/reference-design.ts';
 import { ReferencePoint } from '../../server/entities/reference-point.ts';
 import { Run } from '../../server/entities/run.ts';
+import { SampleRemark } from '../../server/entities/sample-remark.ts';
 import { Sample } from '../../server/entities/sample.ts';
 import { Tuning } from '../../server/entities/tuning.ts';
 import type { User } from '../../server/entities/user.ts';
@@ -15,6 +16,7 @@ import { createDesign } from '../../server/services/designs.ts';
 import { createNamedRecipe } from '../../server/services/named-recipes.ts';
 import { findProject } from '../../server/services/projects.ts';
 import { startRun } from '../../server/services/runs.ts';
+import { makeBlock } from '../factories/make-block.ts';
 import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround } from '../factories/make-run-ground.ts';
 import { makeUser, PASSWORD } from '../factories/make-user.ts';
@@ -121,6 +123,23 @@ const TABLE: Record<string, Row> = {
   'samples.delete': MAKER_OR_LEAD,
   'samples.restore': MAKER_OR_LEAD,
   'samples.history': TEAM,
+  'samples.submit': DRAWS,
+  'samples.review': LEAD,
+  'samples.thread': TEAM,
+  'samples.remark': TEAM,
+  'remarks.resolve': MAKER_OR_LEAD,
+  'blocks.list': TEAM,
+  'blocks.cut': LEAD,
+  'blocks.draw': LEAD,
+  'blocks.assign': LEAD,
+  'blocks.update': LEAD,
+  'blocks.delete': LEAD,
+  'blocks.move': DRAWS,
+  'blocks.agreement': TEAM,
+  'blocks.settle': LEAD,
+  'presence.list': TEAM,
+  'presence.say': TEAM,
+  'presence.leave': TEAM,
   'runs.list': TEAM,
   'runs.start': LEAD_MODELLER,
   'runs.check': LEAD_MODELLER,
@@ -237,6 +256,7 @@ beforeAll(async () => {
     ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
     ...{ jobId: run.jobId, recipeId: await makeSpareRecipe(), tuningId: await makeSpareTuning() },
     ...{ layer: 'confidence', z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
+    ...{ remarkId: await makeSpareRemark(sample.id), blockId: await makeSpareBlock() },
   };
   for (const actor of ACTORS) cookies.set(actor, await signIn(actor));
 }, 120_000);
@@ -246,6 +266,23 @@ async function makeSpareRecipe(): Promise<string> {
   const { recipe } = await test.app.db.getRepository(Run).findOneByOrFail({ id: runId });
   const input = { name: randomUUID(), note: '', recipe };
   return (await createNamedRecipe(test.app, team.project.id, team.lead.id, input)).id;
+}
+
+async function makeSpareRemark(sampleId: string): Promise<string> {
+  const remarks = test.app.db.getRepository(SampleRemark);
+  const none = { byId: null, resolvedAt: null, resolvedById: null };
+  return (await remarks.save(remarks.create({ sampleId, kind: 'comment', text: 'Is it?', ...none }))).id;
+}
+
+/** Far from every sample. */
+async function makeSpareBlock(): Promise<string> {
+  const corners = [
+    [100, 10],
+    [100, 11],
+    [101, 11],
+    [100, 10],
+  ] as [number, number][];
+  return (await makeBlock(test.app, team.project, { type: 'Polygon', coordinates: [corners] }, [])).id;
 }
 
 /** A search that ended before it found anything. */
@@ -297,6 +334,7 @@ const SPARE: Record<string, () => Promise<Record<string, string>>> = {
   'runs.delete': async () => ({ runId: await makeSpareRun() }),
   'recipes.delete': async () => ({ recipeId: await makeSpareRecipe() }),
   'tunings.delete': async () => ({ tuningId: await makeSpareTuning() }),
+  'blocks.delete': async () => ({ blockId: await makeSpareBlock() }),
   'members.remove': async () => ({ memberId: await makeSpareMember() }),
   'zone-layers.delete': async () => ({ layerId: await makeSpareLayer() }),
 };

@@ -13,10 +13,12 @@ const TOUCHES: Record<Extract<ProjectEvent, { type: 'changed' }>['what'], readon
   project: ['project', 'overview'],
   scenes: ['scenes', 'project', 'overview'],
   classes: ['classes', 'samples', 'runs', 'project', 'overview'],
-  samples: ['samples', 'classes', 'project', 'overview'],
+  samples: ['samples', 'blocks', 'classes', 'project', 'overview'],
   runs: ['runs', 'accuracy', 'project', 'overview'],
   members: ['members', 'project', 'overview'],
   // While a design is open, maps and their accuracy are withheld from its interpreters.
+  blocks: ['blocks', 'samples', 'overview'],
+  presence: ['presence'],
   designs: ['designs', 'runs', 'accuracy', 'overview'],
 };
 

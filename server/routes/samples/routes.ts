@@ -1,5 +1,3 @@
-import { z } from 'zod';
-import { idSchema } from '../../../shared/contracts/common.ts';
 import type { Bounds } from '../../../shared/contracts/geometry.ts';
 import {
   createSampleSchema,
@@ -18,6 +16,7 @@ import type { Project } from '../../entities/project.ts';
 import type { Sample } from '../../entities/sample.ts';
 import { NotFound } from '../../errors.ts';
 import { presentMeasure, presentSample, presentSampleVersion } from '../../presenters/present-sample.ts';
+import { requireShown } from '../../services/block-independence.ts';
 import { measureDrawing } from '../../services/drawing-measure.ts';
 import { findProject } from '../../services/projects.ts';
 import { listSamples } from '../../services/samples-list.ts';
@@ -33,20 +32,7 @@ import {
 import { findProjectTarget, projectParams } from '../find-project.ts';
 import { route } from '../route.ts';
 import { showCurrent } from '../show-current.ts';
-
-const sampleParams = z.object({ sampleId: idSchema });
-
-interface SampleTarget {
-  projectId: string;
-  madeById: string | null;
-  sample: Sample;
-}
-
-/** A deleted sample is still found: it can be restored, and a late change has to be told. */
-async function findSampleTarget(app: App, params: { sampleId: string }): Promise<SampleTarget | null> {
-  const sample = await findSample(app, params.sampleId);
-  return sample ? { projectId: sample.projectId, madeById: sample.createdById, sample } : null;
-}
+import { findSampleTarget, sampleParams } from './find-sample.ts';
 
 async function requireProject(app: App, id: string): Promise<Project> {
   const project = await findProject(app, id);
@@ -66,7 +52,7 @@ export const sampleRoutes = [
     answer: sampleListSchema,
     async handle({ app, params, query, viewer }) {
       const bounds = query.bbox ? (query.bbox.split(',').map(Number) as Bounds) : null;
-      const samples = await listSamples(app, params.projectId, bounds);
+      const samples = await listSamples(app, params.projectId, bounds, viewer.userId);
       return { samples: samples.map((sample) => presentSample(sample, viewer)) };
     },
   }),
@@ -106,7 +92,8 @@ export const sampleRoutes = [
     access: { kind: 'project', action: 'sample.read', find: findSampleTarget },
     params: sampleParams,
     answer: sampleSchema,
-    async handle({ viewer, target: { sample } }) {
+    async handle({ app, viewer, target: { sample } }) {
+      await requireShown(app, sample, viewer.userId);
       if (sample.deletedAt) throw new NotFound('The sample was deleted.');
       return presentSample(sample, viewer);
     },
@@ -123,6 +110,7 @@ export const sampleRoutes = [
     handle: ({ app, viewer, body, target }) =>
       showCurrent(
         async () => {
+          await requireShown(app, target.sample, viewer.userId);
           const project = await requireProject(app, target.projectId);
           return presentSample(await updateSample(app, project, target.sample, viewer.userId, body), viewer);
         },
@@ -139,6 +127,7 @@ export const sampleRoutes = [
     body: deleteSampleSchema,
     answer: 'none',
     async handle({ app, viewer, body, target }) {
+      await requireShown(app, target.sample, viewer.userId);
       await showCurrent(
         () => deleteSample(app, target.sample, viewer.userId, body.version),
         () => showSample(app, target.sample.id, (sample) => presentSample(sample, viewer)),
@@ -156,6 +145,7 @@ export const sampleRoutes = [
     body: restoreSampleSchema,
     answer: sampleSchema,
     async handle({ app, viewer, body, target }) {
+      await requireShown(app, target.sample, viewer.userId);
       return presentSample(await restoreSample(app, target.sample.id, viewer.userId, body.versionNumber), viewer);
     },
   }),
@@ -167,7 +157,8 @@ export const sampleRoutes = [
     access: { kind: 'project', action: 'sample.read', find: findSampleTarget },
     params: sampleParams,
     answer: sampleHistorySchema,
-    async handle({ app, params }) {
+    async handle({ app, viewer, params, target }) {
+      await requireShown(app, target.sample, viewer.userId);
       return { versions: (await listSampleVersions(app, params.sampleId)).map(presentSampleVersion) };
     },
   }),

@@ -21,10 +21,10 @@ export const signatureRoutes = [
     params: projectParams.extend({ sceneId: idSchema }),
     query: signatureQuerySchema,
     answer: signatureSetSchema,
-    async handle({ app, params, query, target: { project } }) {
+    async handle({ app, viewer, params, query, target: { project } }) {
       const scene = await findDrawingScene(app, project.id, params.sceneId);
       const bands = query.bands ? query.bands.split(',').map(Number) : null;
-      return describeSignatures(app, project, scene, bands);
+      return describeSignatures(app, project, scene, bands, viewer.userId);
     },
   }),
   route({
@@ -37,9 +37,9 @@ export const signatureRoutes = [
     params: projectParams,
     body: judgeDrawingSchema,
     answer: drawingJudgementSchema,
-    async handle({ app, body, target: { project } }) {
+    async handle({ app, viewer, body, target: { project } }) {
       const scene = await findDrawingScene(app, project.id, body.sceneId);
-      return judgeDrawing(app, project, scene, body);
+      return judgeDrawing(app, project, scene, body, viewer.userId);
     },
   }),
 ];

@@ -4,7 +4,17 @@ import { fetchJson } from '../fetch-json.ts';
 
 /** What a query of a project is about; the event stream refetches by it. */
 export type ProjectTopic =
-  'project' | 'overview' | 'scenes' | 'classes' | 'samples' | 'runs' | 'accuracy' | 'members' | 'designs';
+  | 'project'
+  | 'overview'
+  | 'scenes'
+  | 'classes'
+  | 'samples'
+  | 'runs'
+  | 'accuracy'
+  | 'members'
+  | 'designs'
+  | 'blocks'
+  | 'presence';
 
 /** The first parts of the key of every query about a project: `['project', projectId, topic, …]`. */
 export function projectKey(projectId: string, topic: ProjectTopic, ...rest: readonly unknown[]): readonly unknown[] {

@@ -46,10 +46,13 @@ export function makeSample(overrides: Partial<Sample> = {}): Sample {
     pixelCount: 20,
     areaHa: 1.8,
     version: 1,
+    state: 'draft',
+    blockId: null,
+    openRemarks: 0,
     createdBy: { id: 'a', name: 'Labeller A' },
     createdAt: '2026-05-01T10:00:00.000Z',
     updatedAt: '2026-05-01T10:00:00.000Z',
-    abilities: { edit: true },
+    abilities: { edit: true, review: false },
     ...overrides,
   };
 }
