@@ -122,3 +122,22 @@ export const sampleVersionSchema = z.object({
 });
 export type SampleVersion = z.infer<typeof sampleVersionSchema>;
 export const sampleHistorySchema = z.object({ versions: z.array(sampleVersionSchema) });
+
+/** Asks for the connected pixels about a place whose spectrum is like the pixel's there. */
+export const growRegionSchema = z
+  .object({
+    sceneId: idSchema,
+    lon: z.number().min(-180).max(180),
+    lat: z.number().min(-90).max(90),
+    /** Largest distance from the pixel's spectrum, in standard deviations of the scene's bands. */
+    distance: z.number().min(0, 'A distance is 0 or more.').max(10, 'At most 10 standard deviations.'),
+  })
+  .strict();
+export const grownRegionSchema = z.object({
+  /** Just within the pixels' edges; null where nothing can be grown. */
+  geometry: polygonSchema.nullable(),
+  pixelCount: z.number().int(),
+  /** What stands in the way, or what was cut; null where nothing is amiss. */
+  remark: z.string().nullable(),
+});
+export type GrownRegion = z.infer<typeof grownRegionSchema>;

@@ -116,6 +116,7 @@ const TABLE: Record<string, Row> = {
   'samples.list': TEAM,
   'samples.create': DRAWS,
   'samples.measure': TEAM,
+  'samples.grow': DRAWS,
   'samples.judge': TEAM,
   'signatures.read': TEAM,
   'samples.read': TEAM,

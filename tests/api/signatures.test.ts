@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { LandClass } from '../../server/entities/land-class.ts';
 import type { Scene } from '../../server/entities/scene.ts';
+import { grownRegionSchema } from '../../shared/contracts/sample.ts';
 import { drawingJudgementSchema, signatureSetSchema } from '../../shared/contracts/signature.ts';
 import { send } from '../factories/expect-authority.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
@@ -162,5 +163,43 @@ describe('judging a drawing', () => {
     const body = { sceneId: scene.id, classId: team.project.id, geometry: pixelRectangle(scene, 20, 20, 3, 3) };
     const answer = await send(test, team.labeller, { method: 'post', path: `${base()}/samples/judge`, body });
     expect(answer.status).toBe(400);
+  });
+});
+
+describe('growing from a pixel', () => {
+  const grow = async (column: number, row: number, distance: number) => {
+    const [ring] = pixelRectangle(scene, column, row, 1, 1).coordinates;
+    const [lon, lat] = [(ring![0]![0] + ring![2]![0]) / 2, (ring![0]![1] + ring![2]![1]) / 2];
+    const body = { sceneId: scene.id, lon, lat, distance };
+    const answer = await send(test, team.labeller, { method: 'post', path: `${base()}/samples/grow`, body });
+    expect(answer.status).toBe(200);
+    return grownRegionSchema.parse(answer.body);
+  };
+
+  it('gives an outline that can be stored as a sample and holds just the pixels counted', async () => {
+    const { geometry, pixelCount } = await grow(20, 60, 0.6);
+    expect(pixelCount).toBeGreaterThan(50);
+    const body = { sceneId: scene.id, geometry };
+    const measured = await send(test, team.labeller, { method: 'post', path: `${base()}/samples/measure`, body });
+    expect(measured.body).toMatchObject({ refusal: null, pixelCount });
+  });
+
+  it('grows with the distance, and stays in its cover at a small one', async () => {
+    const [small, large] = [await grow(20, 60, 0.3), await grow(20, 60, 0.9)];
+    expect(small.pixelCount).toBeLessThan(large.pixelCount);
+    // The first cover ends at column 32, and its neighbour is far off in value.
+    const east = Math.max(...large.geometry!.coordinates[0]!.map(([lon]) => lon));
+    expect(east).toBeLessThan(pixelRectangle(scene, 33, 60, 1, 1).coordinates[0]![2]![0]);
+  });
+
+  it('says why there is nothing to grow', async () => {
+    expect(await grow(3, 3, 1)).toMatchObject({ geometry: null, remark: expect.stringContaining('no data') as string });
+    const body = { sceneId: scene.id, lon: 100, lat: 10, distance: 1 };
+    const outside = await send(test, team.labeller, { method: 'post', path: `${base()}/samples/grow`, body });
+    expect(outside.body.remark).toContain('outside the scene');
+    const wrong = { ...body, distance: -1 };
+    expect(
+      (await send(test, team.labeller, { method: 'post', path: `${base()}/samples/grow`, body: wrong })).status,
+    ).toBe(400);
   });
 });

@@ -1,10 +1,12 @@
 import { idSchema } from '../../../shared/contracts/common.ts';
+import { growRegionSchema, grownRegionSchema } from '../../../shared/contracts/sample.ts';
 import {
   drawingJudgementSchema,
   judgeDrawingSchema,
   signatureQuerySchema,
   signatureSetSchema,
 } from '../../../shared/contracts/signature.ts';
+import { growFromPixel } from '../../services/grow-from-pixel.ts';
 import { judgeDrawing } from '../../services/drawing-judgement.ts';
 import { findDrawingScene } from '../../services/samples.ts';
 import { describeSignatures } from '../../services/signatures.ts';
@@ -12,6 +14,21 @@ import { findProjectTarget, projectParams } from '../find-project.ts';
 import { route } from '../route.ts';
 
 export const signatureRoutes = [
+  route({
+    id: 'samples.grow',
+    method: 'post',
+    path: '/projects/:projectId/samples/grow',
+    summary:
+      'The connected pixels about a place whose spectrum is like the one there, as an outline; nothing is stored',
+    access: { kind: 'project', action: 'sample.draw', find: findProjectTarget },
+    params: projectParams,
+    body: growRegionSchema,
+    answer: grownRegionSchema,
+    async handle({ app, body, target: { project } }) {
+      const scene = await findDrawingScene(app, project.id, body.sceneId);
+      return growFromPixel(app, project, scene, body);
+    },
+  }),
   route({
     id: 'signatures.read',
     method: 'get',
