@@ -1,12 +1,13 @@
 import {
   type HexColor,
   TerraDrawCircleMode,
+  TerraDrawFreehandMode,
   TerraDrawPolygonMode,
   TerraDrawRectangleMode,
   TerraDrawSelectMode,
 } from 'terra-draw';
 
-export type DrawTool = 'polygon' | 'rectangle' | 'circle';
+export type DrawTool = 'polygon' | 'freehand' | 'rectangle' | 'circle';
 
 /** Names of keys no keyboard has: the desk's own shortcuts decide when a drawing is closed or left. */
 export const CLOSE_KEY = 'GroundselClose';
@@ -17,6 +18,8 @@ const LIGHT: HexColor = '#fffdf8';
 const GOLD: HexColor = '#f2b705';
 /** A circle is a polygon of this many corners once drawn; few enough to be mended by hand. */
 const CIRCLE_CORNERS = 32;
+/** Screen pixels between two corners of a line drawn freehand: fine enough to follow an edge, coarse enough to be mended. */
+const FREEHAND_STEP_PIXELS = 12;
 /** How near (CSS pixels) a press must be to a corner. */
 const REACH_PIXELS = 14;
 const keyEvents = { cancel: LEAVE_KEY, finish: CLOSE_KEY };
@@ -25,15 +28,18 @@ const keyEvents = { cancel: LEAVE_KEY, finish: CLOSE_KEY };
 export function drawingModes(colour: () => string) {
   const fillColor = () => colour() as HexColor;
   const line = { fillColor, fillOpacity: 0.34, outlineColor: GOLD, outlineWidth: 2 };
-  const corners = {
-    coordinatePointColor: LIGHT,
-    coordinatePointWidth: 4,
-    coordinatePointOutlineColor: INK,
-    coordinatePointOutlineWidth: 2,
+  const closing = {
     closingPointColor: GOLD,
     closingPointWidth: 6,
     closingPointOutlineColor: INK,
     closingPointOutlineWidth: 2,
+  };
+  const corners = {
+    ...closing,
+    coordinatePointColor: LIGHT,
+    coordinatePointWidth: 4,
+    coordinatePointOutlineColor: INK,
+    coordinatePointOutlineWidth: 2,
   };
   return [
     new TerraDrawPolygonMode({
@@ -41,6 +47,14 @@ export function drawingModes(colour: () => string) {
       pointerDistance: REACH_PIXELS,
       showCoordinatePoints: true,
       styles: { ...line, ...corners },
+    }),
+    new TerraDrawFreehandMode({
+      keyEvents,
+      pointerDistance: REACH_PIXELS,
+      drawInteraction: 'click-move-or-drag',
+      minDistance: FREEHAND_STEP_PIXELS,
+      autoClose: true,
+      styles: { ...line, ...closing },
     }),
     new TerraDrawRectangleMode({ keyEvents, drawInteraction: 'click-move-or-drag', styles: line }),
     new TerraDrawCircleMode({

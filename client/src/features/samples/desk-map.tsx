@@ -33,7 +33,8 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
   const { scene, draft, tool, shown, byId, project, selected } = desk;
   const polygons = useMemo(() => samplePolygons(shown, byId), [shown, byId]);
   const drawTool = desk.canDraw ? drawToolOf(tool) : null;
-  const isStill = draft !== null || drawTool !== null || tool === 'inspect';
+  const isGrowing = tool === 'grow' && desk.canDraw && draft === null;
+  const isStill = draft !== null || drawTool !== null || tool === 'inspect' || isGrowing;
   const colour = byId.get(desk.classId)?.colour ?? '#85867a';
   const gsdMeters = scene.bands.find((band) => band.role === 'red')?.gsdMeters ?? scene.bands[0]?.gsdMeters;
   const firstBounds = unwrapBounds(project.studyAreaBounds ?? scene.bounds ?? [-180, -85, 180, 85]);
@@ -72,7 +73,8 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
       {!draft && !drawTool && (
         <PressMap
           onPress={(place, event) => {
-            if (tool === 'inspect' || event.altKey) desk.setProbe(place);
+            if (isGrowing && !event.altKey) desk.growFrom(place);
+            else if (tool === 'inspect' || event.altKey) desk.setProbe(place);
             else desk.select(null);
           }}
         />
@@ -80,7 +82,10 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
       <Crosshair
         isOn={isStill}
         action={draft ? 'carry' : 'press'}
-        onPress={(place) => tool === 'inspect' && !draft && desk.setProbe(place)}
+        onPress={(place) => {
+          if (isGrowing) desk.growFrom(place);
+          else if (tool === 'inspect' && !draft) desk.setProbe(place);
+        }}
       />
       {!isStill && <PanByKeys />}
       {desk.probe && <PlaceMarker place={onMap(desk.probe)} mark="probe" />}
@@ -88,7 +93,7 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
         <PlaceMarker place={onMap({ lon: refusal.at[0], lat: refusal.at[1] })} mark="fault" label="Here" />
       )}
       <ZoomTo target={desk.zoom} />
-      <DrawingCursor isOn={drawTool !== null && !draft} />
+      <DrawingCursor isOn={(drawTool !== null || isGrowing) && !draft} />
     </BaseMap>
   );
 }

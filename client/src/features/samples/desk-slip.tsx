@@ -27,6 +27,9 @@ export function DeskSlip({ desk, viewerId, scenes, measure }: DeskSlipProps) {
         scene={scene}
         isFromBefore={desk.isFromBefore}
         isSaving={desk.isBusy}
+        growth={
+          desk.isGrown ? { distance: desk.growDistance, isGrowing: desk.isGrowing, onDistance: desk.growAgain } : null
+        }
         error={desk.saveError}
         onChange={desk.changeDraft}
         onSave={() => void desk.save(draft)}

@@ -1,3 +1,4 @@
+import { useState } from 'react';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import { confidenceSchema } from '../../../../shared/contracts/sample.ts';
 import { Facts, Slip } from '../../components/layout/slip.tsx';
@@ -9,6 +10,7 @@ import { Field } from '../../components/ui/field.tsx';
 import { Kbd } from '../../components/ui/kbd.tsx';
 import { Segmented } from '../../components/ui/segmented.tsx';
 import { Select } from '../../components/ui/select.tsx';
+import { Slider } from '../../components/ui/slider.tsx';
 import { TextArea } from '../../components/ui/text-input.tsx';
 import { formatSince } from '../../lib/format-date.ts';
 import { formatHectares, formatNumber } from '../../lib/format.ts';
@@ -31,6 +33,8 @@ export interface DraftSlipProps {
   /** The drawing comes from before a reload. */
   isFromBefore: boolean;
   isSaving: boolean;
+  /** How like the pixel it grew from its pixels are; null for a drawing by hand. */
+  growth: { distance: number; isGrowing: boolean; onDistance: (distance: number) => void } | null;
   error: ProblemError | null;
   onChange: (draft: Draft) => void;
   onSave: () => void;
@@ -39,8 +43,20 @@ export interface DraftSlipProps {
 
 /** A drawing not saved yet: what is inside, its class, confidence and note. */
 export function DraftSlip(props: DraftSlipProps) {
-  const { draft, classes, measure, projectId, scene, isFromBefore, isSaving, error, onChange, onSave, onDiscard } =
-    props;
+  const {
+    draft,
+    classes,
+    measure,
+    projectId,
+    scene,
+    isFromBefore,
+    isSaving,
+    growth,
+    error,
+    onChange,
+    onSave,
+    onDiscard,
+  } = props;
   const landClass = classes.find((one) => one.id === draft.classId);
   const refusal = measure.data?.refusal ?? null;
   const isSame = isUnchanged(draft);
@@ -73,6 +89,7 @@ export function DraftSlip(props: DraftSlipProps) {
         </>
       }
     >
+      {growth && <GrowSlider {...growth} />}
       {isFromBefore && (
         <Callout tone="beware" title="Kept from before.">
           This drawing was not saved when the page was left. Save it or discard it.
@@ -128,6 +145,29 @@ export function DraftSlip(props: DraftSlipProps) {
       </div>
       {draft.base && isSame && <p className="text-xs text-ink-soft">Nothing is changed yet.</p>}
     </Slip>
+  );
+}
+
+/** How far from the first pixel's spectrum a pixel may be. */
+function GrowSlider({ distance, isGrowing, onDistance }: NonNullable<DraftSlipProps['growth']>) {
+  const [shown, setShown] = useState(distance);
+  return (
+    <div aria-busy={isGrowing} className={isGrowing ? 'opacity-60' : undefined}>
+      <p className="text-sm font-medium">
+        Grown to {formatNumber(shown, 2)} σ{' '}
+        <span className="font-normal text-ink-soft">from the pixel pressed, over all bands</span>
+      </p>
+      <Slider
+        value={[shown]}
+        onChange={([next = shown]) => setShown(next)}
+        onCommit={([next = shown]) => onDistance(next)}
+        min={0.02}
+        max={1.5}
+        step={0.02}
+        labels={['Distance from the pixel pressed, standard deviations']}
+        formatValue={(value) => formatNumber(value, 2)}
+      />
+    </div>
   );
 }
 

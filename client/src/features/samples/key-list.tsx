@@ -6,8 +6,10 @@ const GROUPS: { title: string; keys: [string[], string][] }[] = [
     title: 'Tools',
     keys: [
       [['P'], 'Draw a polygon'],
+      [['F'], 'Draw freehand along an edge'],
       [['R'], 'Draw a rectangle, corner to corner'],
       [['C'], 'Draw a circle, middle to edge'],
+      [['G'], 'Grow a drawing from a pixel'],
       [['V'], 'Select and change'],
       [['I'], 'Inspect a pixel; or Alt and a press at any time'],
       [['M'], 'Open or close the sample list'],

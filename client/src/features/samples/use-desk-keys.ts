@@ -39,6 +39,8 @@ export function useDeskKeys(desk: Desk, editor: RefObject<ShapeEditorHandle | nu
   }
   const drawKeys: KeyMap = {
     p: () => desk.chooseTool('polygon'),
+    f: () => desk.chooseTool('freehand'),
+    g: () => desk.chooseTool('grow'),
     r: () => desk.chooseTool('rectangle'),
     c: () => desk.chooseTool('circle'),
     e: () => selected?.abilities.edit && desk.edit(selected),
@@ -67,11 +69,16 @@ export function toolHelp(desk: Pick<Desk, 'tool' | 'draft' | 'canDraw'>): string
   switch (drawToolOf(desk.tool)) {
     case 'polygon':
       return 'Press for each corner; Enter, or a press on the first corner, closes. Arrow keys and Space do it without a mouse.';
+    case 'freehand':
+      return 'Press and move along the edge; it closes where it began. Press again, or Enter, closes it earlier.';
     case 'rectangle':
       return 'Press at one corner, then at the one across. Arrow keys and Space do it without a mouse.';
     case 'circle':
       return 'Press in the middle, then at the edge. Arrow keys and Space do it without a mouse.';
     default:
+      if (desk.tool === 'grow') {
+        return 'Press a pixel: its neighbours of like spectrum become a drawing, and a slider sets how like. Arrow keys and Space do it without a mouse.';
+      }
       return desk.tool === 'inspect'
         ? 'Press a pixel for its values in every band; arrow keys and Space do it without a mouse.'
         : null;

@@ -10,6 +10,7 @@ import type { ZoomTarget } from '../../components/map/zoom-to.tsx';
 import type { Place } from '../../lib/project/probe-query.ts';
 import type { DeskTool } from './desk-tool.ts';
 import { type Draft, draftOfSample, isSameOutline, newDraft } from './draft.ts';
+import { useGrow } from './grow-from-pixel.ts';
 import { polygonBounds } from './polygon-bounds.ts';
 import { NO_FILTER, filterSamples } from './sample-filter.ts';
 import { useDeskActs } from './use-desk-acts.ts';
@@ -77,6 +78,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
       { replace: true },
     );
   };
+  const growing = useGrow(project.id, sceneId);
   const acts = useDeskActs({ projectId: project.id, draft, setDraft, onSelect: select });
   const openDraft = (next: Draft) => {
     setProbe(null);
@@ -84,6 +86,20 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     setDraft(next);
   };
   const showPlace = (geometry: Polygon) => setZoom(zoomTarget([geometry], 'show'));
+
+  const beginDrawing = (shape: Polygon): Draft => {
+    const next = newDraft(sceneId, classId, shape, confidence);
+    openDraft(next);
+    acts.noteDrawn(next);
+    showPlace(shape);
+    return next;
+  };
+  const reshape = (shape: Polygon) => {
+    if (!draft || isSameOutline(draft.geometry, shape)) return;
+    acts.noteShaped(draft.geometry, shape);
+    acts.clearError();
+    setDraft({ ...draft, geometry: shape });
+  };
 
   return {
     ...acts,
@@ -151,16 +167,24 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
       setDraft(next);
     },
     drawn: (shape: Polygon) => {
-      const next = newDraft(sceneId, classId, shape, confidence);
-      openDraft(next);
-      acts.noteDrawn(next);
-      showPlace(shape);
+      growing.setGrown(null);
+      beginDrawing(shape);
     },
     shaped: (shape: Polygon) => {
-      if (!draft || isSameOutline(draft.geometry, shape)) return;
-      acts.noteShaped(draft.geometry, shape);
-      acts.clearError();
-      setDraft({ ...draft, geometry: shape });
+      // An outline mended by hand is no longer what grew.
+      growing.setGrown(null);
+      reshape(shape);
+    },
+    growDistance: growing.distance,
+    isGrowing: growing.isGrowing,
+    /** The drawing in hand was grown and its distance may be changed. */
+    isGrown: draft !== null && growing.grown?.draftId === draft.id,
+    growFrom: (place: Place) => {
+      if (draft) return;
+      growing.grow(place, growing.distance, (shape) => growing.setGrown({ draftId: beginDrawing(shape).id, place }));
+    },
+    growAgain: (distance: number) => {
+      if (growing.grown) growing.grow(growing.grown.place, distance, reshape);
     },
     edit: (sample: Sample) => {
       openDraft(draftOfSample(sample));
