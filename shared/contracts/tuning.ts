@@ -15,7 +15,7 @@ export const tuningRangeSchema = z
       .max(20, 'At most 20 values.'),
   })
   .strict();
-export type TuningRange = z.infer<typeof tuningRangeSchema>;
+
 export const tuningPlanSchema = z
   .object({
     /** All combinations, or so many of them drawn by the seed. */

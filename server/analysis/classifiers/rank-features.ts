@@ -59,6 +59,13 @@ function listWholeLevels(column: Float32Array): Float32Array | null {
 }
 
 function fillRanks<T extends Uint16Array | Int32Array>(ranks: T, column: Float32Array, sorted: Float32Array): T {
+  const last = sorted[sorted.length - 1];
+  if (sorted[0] >= 0 && last < MAX_16_BIT_LEVELS && sorted.every((level) => level === Math.floor(level))) {
+    const rankOf = new Uint16Array(last + 1);
+    for (let rank = 0; rank < sorted.length; rank++) rankOf[sorted[rank]] = rank;
+    for (let row = 0; row < column.length; row++) ranks[row] = rankOf[column[row]];
+    return ranks;
+  }
   let previous = NaN;
   for (let row = 0; row < column.length; row++) {
     const value = column[row];
