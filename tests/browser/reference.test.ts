@@ -127,6 +127,11 @@ describe('a map judged by reference points', () => {
     await reviewer.goto(designUrl('/check'));
     await reviewer.locator('img.leaflet-tile-loaded').first().waitFor();
     await expectAccessible(reviewer);
+    await reviewer.keyboard.press('?');
+    const keys = reviewer.getByRole('dialog', { name: 'Keys of the blind check' });
+    await keys.getByText('Save and go on').waitFor();
+    await reviewer.keyboard.press('Escape');
+    await keys.waitFor({ state: 'hidden' });
     await reviewer.keyboard.press('3');
     await reviewer.keyboard.press('a');
     await reviewer.keyboard.press('4');
@@ -202,6 +207,8 @@ describe('a map judged by reference points', () => {
     await lead.getByRole('button', { name: 'Overall accuracy, how was this computed?' }).first().click();
     const how = lead.getByRole('dialog', { name: 'How Overall accuracy was computed' });
     await how.getByText(/Olofsson/).waitFor();
+    await how.evaluate((box) => Promise.all(box.getAnimations().map(({ finished }) => finished)));
+    await expectAccessible(lead);
     await lead.keyboard.press('Escape');
     await how.waitFor({ state: 'hidden' });
     await expectAccessible(lead);

@@ -27,6 +27,7 @@ export function HowComputed({ name, how, trigger }: HowComputedProps) {
   return (
     <Popover
       label={`How ${name} was computed`}
+      className="max-h-[min(26rem,var(--radix-popover-content-available-height))] overflow-y-auto"
       trigger={
         <button
           type="button"
@@ -41,7 +42,7 @@ export function HowComputed({ name, how, trigger }: HowComputedProps) {
       <p className="mt-1 font-mono text-xs whitespace-pre-wrap">{how.formula}</p>
       <p className="mt-1 text-xs text-ink-soft">{how.source}</p>
       {how.inputs.length > 0 && (
-        <dl className="mt-2 grid max-h-48 grid-cols-[1fr_auto] gap-x-4 gap-y-0.5 overflow-y-auto border-t border-line pt-2 text-xs">
+        <dl className="mt-2 grid grid-cols-[1fr_auto] gap-x-4 gap-y-0.5 border-t border-line pt-2 text-xs">
           {how.inputs.map((input) => (
             <div key={input.name} className="contents">
               <dt className="text-ink-soft">{input.name}</dt>
