@@ -16,7 +16,10 @@ import { openSceneInput, placeScene } from './run-scene.ts';
 /** Pixels to each side of the one pressed that are looked at. */
 const REACH = 100;
 /** An outline of more corners is no sample that anyone could mend. */
-const MAX_CORNERS = 2_000;
+const MAX_CORNERS = 400;
+/** How much smaller the next distance is when an outline has too many corners, and how often that is tried. */
+const SHRINK = 0.7;
+const MAX_TRIES = 10;
 /** Degrees are kept to nine decimals, a tenth of a millimetre. */
 const ROUND = 1e9;
 
@@ -28,7 +31,7 @@ export async function growFromPixel(
   app: App,
   project: Project,
   scene: Scene,
-  { lon, lat, distance }: { lon: number; lat: number; distance: number },
+  { lon, lat, distance: asked }: { lon: number; lat: number; distance: number },
 ): Promise<GrownRegion> {
   const placed = placeScene(scene);
   if (!placed) throw new NotFound();
@@ -52,14 +55,15 @@ export async function growFromPixel(
   keepInside(isUsable, pixels, grid, studyArea);
   const scales = scene.bands.map(({ statistics }) => statistics.standardDeviation || 1);
   const window = { width, height, nFeatures: files.length, values, isUsable };
-  const grown = growRegion(window, { column: atColumn - x, row: atRow - y }, scales, distance);
-  const outline = traceRegion(grown.region, width, height);
+  const seed = { column: atColumn - x, row: atRow - y };
+  let grown = growRegion(window, seed, scales, asked);
+  let outline = traceRegion(grown.region, width, height);
   if (!outline) return nothing('This pixel has no data, or lies outside the study area.');
-  if (outline.reduce((sum, ring) => sum + ring.length, 0) > MAX_CORNERS) {
-    return {
-      ...nothing('The region is too ragged for an outline: choose a smaller distance.'),
-      pixelCount: grown.nPixels,
-    };
+  let distance = asked;
+  for (let tries = 0; countCorners(outline) > MAX_CORNERS && tries < MAX_TRIES; tries++) {
+    distance *= SHRINK;
+    grown = growRegion(window, seed, scales, distance);
+    outline = traceRegion(grown.region, width, height) ?? outline;
   }
   const transform = getCrsTransform(proj4);
   const geometry: Polygon = {
@@ -71,12 +75,19 @@ export async function growFromPixel(
       }),
     ),
   };
-  const remark = grown.reachesEdge
-    ? `It goes on beyond ${REACH} pixels from the place pressed and is cut there.`
-    : null;
-  return { geometry, pixelCount: grown.nPixels, remark };
+  const remarks = [
+    ...(distance < asked
+      ? [`At ${asked.toFixed(2)} σ its outline is too ragged; grown to ${distance.toFixed(2)} σ.`]
+      : []),
+    ...(grown.reachesEdge ? [`It goes on beyond ${REACH} pixels from the place pressed and is cut there.`] : []),
+  ];
+  return { geometry, pixelCount: grown.nPixels, distance, remark: remarks.join(' ') || null };
+}
+
+function countCorners(outline: readonly (readonly unknown[])[]): number {
+  return outline.reduce((sum, ring) => sum + ring.length, 0);
 }
 
 function nothing(remark: string): GrownRegion {
-  return { geometry: null, pixelCount: 0, remark };
+  return { geometry: null, pixelCount: 0, distance: 0, remark };
 }

@@ -137,6 +137,8 @@ export const grownRegionSchema = z.object({
   /** Just within the pixels' edges; null where nothing can be grown. */
   geometry: polygonSchema.nullable(),
   pixelCount: z.number().int(),
+  /** The distance it was grown to: a smaller one than asked where that made no outline anyone could mend. */
+  distance: z.number(),
   /** What stands in the way, or what was cut; null where nothing is amiss. */
   remark: z.string().nullable(),
 });

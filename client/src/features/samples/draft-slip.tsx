@@ -89,7 +89,7 @@ export function DraftSlip(props: DraftSlipProps) {
         </>
       }
     >
-      {growth && <GrowSlider {...growth} />}
+      {growth && <GrowSlider key={growth.distance} {...growth} />}
       {isFromBefore && (
         <Callout tone="beware" title="Kept from before.">
           This drawing was not saved when the page was left. Save it or discard it.

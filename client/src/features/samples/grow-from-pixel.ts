@@ -38,9 +38,11 @@ export function useGrow(projectId: string, sceneId: string) {
     mutation.mutate(
       { sceneId, place, distance: atDistance },
       {
-        onSuccess: ({ geometry, remark }) => {
+        onSuccess: ({ geometry, distance: reached, remark }) => {
           if (remark) sayDone(remark);
-          if (geometry) take(geometry);
+          if (!geometry) return;
+          setDistance(reached);
+          take(geometry);
         },
         onError: (error) => {
           if (error instanceof ProblemError) sayProblem(error);

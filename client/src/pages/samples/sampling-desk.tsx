@@ -11,6 +11,7 @@ import { SceneChoice } from '../../components/map/scene-choice.tsx';
 import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import { StretchControl } from '../../components/map/stretch-control.tsx';
 import { Button, buttonClass } from '../../components/ui/button.tsx';
+import { Tooltip } from '../../components/ui/tooltip.tsx';
 import { ConflictDialog } from '../../features/samples/conflict-dialog.tsx';
 import { DeskMap } from '../../features/samples/desk-map.tsx';
 import { DeskSlip } from '../../features/samples/desk-slip.tsx';
@@ -53,10 +54,15 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
             title="Sampling desk"
             action={
               <>
-                <Link to={paths.signatures(project.id)} className={buttonClass('secondary', 'sm')}>
-                  <ChartSpline aria-hidden />
-                  Signatures
-                </Link>
+                <Tooltip text="Signatures">
+                  <Link
+                    to={paths.signatures(project.id)}
+                    aria-label="Signatures"
+                    className={buttonClass('secondary', 'sm')}
+                  >
+                    <ChartSpline aria-hidden />
+                  </Link>
+                </Tooltip>
                 <Button
                   size="sm"
                   kind={desk.isListOpen ? 'strong' : 'secondary'}
