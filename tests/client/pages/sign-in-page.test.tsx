@@ -10,6 +10,7 @@ const account = {
   email: 'labeller-a@vennory.example',
   name: 'Labeller A',
   siteAdmin: false,
+  mailsRunEnd: true,
   createdAt: '2025-09-04T12:00:00Z',
 };
 
