@@ -51,17 +51,3 @@ function StateShape({ tone }: { tone: TagTone }) {
     </svg>
   );
 }
-
-/** A count or a short word set apart, without a state. */
-export function Badge({ children, className }: { children: ReactNode; className?: string }) {
-  return (
-    <span
-      className={classNames(
-        'inline-flex rounded-md bg-sunken px-1.5 py-px text-xs font-medium text-ink-soft',
-        className,
-      )}
-    >
-      {children}
-    </span>
-  );
-}

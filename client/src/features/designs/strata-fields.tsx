@@ -1,15 +1,17 @@
-import { Upload } from 'lucide-react';
+import { Trash2, Upload } from 'lucide-react';
 import { useState } from 'react';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import { Button } from '../../components/ui/button.tsx';
+import { ConfirmDialog } from '../../components/ui/confirm-dialog.tsx';
 import { Field } from '../../components/ui/field.tsx';
 import { RadioGroup } from '../../components/ui/radio-group.tsx';
 import { Select } from '../../components/ui/select.tsx';
 import { formatCount } from '../../lib/format.ts';
+import { asProblem } from '../../lib/problem-error.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import type { PlanValues } from './plan-values.ts';
 import { ZoneLayerDialog } from './zone-layer-dialog.tsx';
-import { useZoneLayers } from './zone-layers.ts';
+import { useDeleteZoneLayer, useZoneLayers } from './zone-layers.ts';
 
 export interface StrataFieldsProps {
   values: PlanValues;
@@ -23,6 +25,9 @@ export function StrataFields({ values, onChange, runs }: StrataFieldsProps) {
   const { id } = useProject();
   const layers = useZoneLayers(id);
   const [isAdding, setIsAdding] = useState(false);
+  const [isDeleting, setIsDeleting] = useState(false);
+  const remove = useDeleteZoneLayer(id);
+  const layer = layers.data?.layers.find((one) => one.id === values.layerId);
   const others = runs.filter((run) => run.id !== values.runId);
   return (
     <>
@@ -81,7 +86,32 @@ export function StrataFields({ values, onChange, runs }: StrataFieldsProps) {
               Bring in zones…
             </Button>
           )}
+          {layer?.abilities.delete && (
+            <Button kind="ghost" icon={<Trash2 aria-hidden />} onClick={() => setIsDeleting(true)}>
+              Delete…
+            </Button>
+          )}
         </div>
+      )}
+      {layer && (
+        <ConfirmDialog
+          isOpen={isDeleting}
+          onOpenChange={setIsDeleting}
+          title={`Delete the zones “${layer.name}”?`}
+          loses={[`The outlines of ${formatCount(layer.zones.length, 'zone')}, and estimates zone by zone`]}
+          keeps="Designs drawn from them keep their strata and estimates."
+          confirmLabel="Delete zones"
+          isPending={remove.isPending}
+          error={remove.error ? asProblem(remove.error) : null}
+          onConfirm={() =>
+            remove.mutate(layer.id, {
+              onSuccess: () => {
+                setIsDeleting(false);
+                onChange({ layerId: null });
+              },
+            })
+          }
+        />
       )}
       <ZoneLayerDialog
         isOpen={isAdding}
