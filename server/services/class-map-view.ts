@@ -20,11 +20,17 @@ export function requirePlace(run: Run): PlacedScene {
  * tiles for good.
  * @throws NotFound without a map, or for a tile that does not exist
  */
-export function planClassTile(app: App, run: Run, address: TileAddress): PlannedTile {
+export function planClassTile(
+  app: App,
+  run: Run,
+  address: TileAddress,
+  hiddenCodes: readonly number[] = [],
+): PlannedTile {
   checkTileAddress(address);
   const { mapKey, classMapSha256 } = requireResult(run);
   const { grid, proj4: crs } = requirePlace(run);
-  const palette = run.classes.map(({ code, colour }): [number, [number, number, number, number]] => [
+  const shown = run.classes.filter(({ code }) => !hiddenCodes.includes(code));
+  const palette = shown.map(({ code, colour }): [number, [number, number, number, number]] => [
     code,
     [...readColour(colour), 255],
   ]);

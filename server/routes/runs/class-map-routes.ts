@@ -1,3 +1,4 @@
+import { z } from 'zod';
 import { pipeline } from 'node:stream/promises';
 import type { Response } from 'express';
 import { runLayerSchema, runProbeSchema, runVotesSchema } from '../../../shared/contracts/run.ts';
@@ -20,6 +21,14 @@ function isHangUp(error: unknown): boolean {
   return (error as NodeJS.ErrnoException).code === 'ERR_STREAM_PREMATURE_CLOSE';
 }
 
+const classTileQuerySchema = z.object({
+  /** Codes of classes to leave transparent, with commas between. */
+  hide: z
+    .string()
+    .regex(/^\d{1,3}(,\d{1,3})*$/, 'Class codes with commas between, such as 3,7.')
+    .transform((text) => text.split(',').map(Number))
+    .optional(),
+});
 const layerParams = runParams.extend({ layer: runLayerSchema });
 
 async function sendTiff(app: App, res: Response, key: string, name: string): Promise<undefined> {
@@ -42,9 +51,10 @@ export const classMapRoutes = [
     summary: 'A Web Mercator tile of the class map in its class colours',
     access: read,
     params: runParams.extend(tileParamsSchema.shape),
+    query: classTileQuerySchema,
     answer: { mediaType: 'image/webp' },
-    handle: ({ app, params: { z, x, y }, target, req, res }) =>
-      sendTile(req, res, planClassTile(app, target.run, { z, x, y })),
+    handle: ({ app, params: { z, x, y }, query, target, req, res }) =>
+      sendTile(req, res, planClassTile(app, target.run, { z, x, y }, query.hide)),
   }),
   route({
     id: 'runs.probe',

@@ -9,7 +9,9 @@ import { withPositions } from '../../lib/class-positions.ts';
 import { formatCoordinates } from '../../lib/format-coordinates.ts';
 import { formatNumber } from '../../lib/format.ts';
 import { type Place, useProbe } from '../../lib/project/probe-query.ts';
+import { PixelVotes } from './pixel-votes.tsx';
 import { useRunProbe } from './probe-run.ts';
+import { useRunVotes } from './run-votes.ts';
 
 interface PixelSlipProps {
   run: Run;
@@ -25,11 +27,12 @@ const DECIMALS = { reflectance: 4, kelvin: 1, 'digital number': 0 };
 export function PixelSlip({ run, scene, scheme, place, onClose }: PixelSlipProps) {
   const mapped = useRunProbe(run.projectId, run.id, place);
   const probe = useProbe(run.projectId, scene, place);
+  const votes = useRunVotes(run.projectId, run.id, place);
   const landClass = withPositions(run.classes, scheme).find((one) => one.code === mapped.data?.code);
   const pixel = probe.data?.pixel;
   const values = probe.data?.values ?? [];
   const series = pixelSeries(values);
-  const failed = mapped.error ?? probe.error;
+  const failed = mapped.error ?? probe.error ?? votes.error;
   return (
     <Slip
       title={mapped.isPending ? 'Reading the pixel' : (landClass?.name ?? mapped.data?.name ?? 'No class here')}
@@ -43,7 +46,11 @@ export function PixelSlip({ run, scene, scheme, place, onClose }: PixelSlipProps
       onClose={onClose}
     >
       {failed && (
-        <ErrorState error={failed} isInline onRetry={() => void Promise.all([mapped.refetch(), probe.refetch()])} />
+        <ErrorState
+          error={failed}
+          isInline
+          onRetry={() => void Promise.all([mapped.refetch(), probe.refetch(), votes.refetch()])}
+        />
       )}
       {probe.isPending && !failed && <PendingState label="Reading the pixel" shape="block" />}
       {mapped.data && !landClass && (
@@ -55,6 +62,7 @@ export function PixelSlip({ run, scene, scheme, place, onClose }: PixelSlipProps
       )}
       {pixel && (
         <>
+          {votes.data && <PixelVotes run={run} votes={votes.data} scheme={scheme} />}
           {series.points.length > 0 ? (
             <SpectralProfile title="Spectrum of this pixel" isTitleHidden series={[series]} plotHeight={150} />
           ) : (

@@ -9,6 +9,7 @@ import { Menu, MenuItem } from '../../components/ui/menu.tsx';
 import { apiUrl } from '../../lib/fetch-json.ts';
 import { formatNumber } from '../../lib/format.ts';
 import { ClassLegend } from './class-legend.tsx';
+import { LAYER_NAMES } from './map-choice.ts';
 import { RecipeSummary } from './recipe-summary.tsx';
 
 interface RunSlipProps {
@@ -30,7 +31,7 @@ export function RunSlip({ run, scene, scheme, accuracy }: RunSlipProps) {
           {formatNumber(run.heldOutPolygons)} polygons held out
         </>
       }
-      footer={<Downloads runId={run.id} />}
+      footer={<Downloads run={run} />}
     >
       {accuracy}
       <ClassLegend run={run} scheme={scheme} />
@@ -86,7 +87,7 @@ function Digest({ name, value }: { name: string; value: string | null }) {
   );
 }
 
-function Downloads({ runId }: { runId: string }) {
+function Downloads({ run: { id: runId, layers } }: { run: Run }) {
   return (
     <>
       <a href={apiUrl(`/runs/${runId}/class-map.tif`)} download className={buttonClass('strong')}>
@@ -105,6 +106,11 @@ function Downloads({ runId }: { runId: string }) {
           Package: map, class names, areas, cautions (ZIP)
         </MenuItem>
         <MenuItem href={apiUrl(`/runs/${runId}/class-map.tif`)}>Class map alone (GeoTIFF)</MenuItem>
+        {layers.map((layer) => (
+          <MenuItem key={layer} href={apiUrl(`/runs/${runId}/layers/${layer}.tif`)}>
+            {LAYER_NAMES[layer]} in percent (GeoTIFF)
+          </MenuItem>
+        ))}
       </Menu>
     </>
   );

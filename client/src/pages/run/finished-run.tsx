@@ -13,6 +13,12 @@ import { ClassMap } from '../../features/runs/class-map.tsx';
 import { PixelSlip } from '../../features/runs/pixel-slip.tsx';
 import { runTitle } from '../../features/runs/recipe-text.ts';
 import { RunSlip } from '../../features/runs/run-slip.tsx';
+import { classDigit } from '../../components/layout/class-keys.tsx';
+import { SwipeDivider } from '../../components/map/swipe-divider.tsx';
+import { useRuns } from '../../features/runs/list-runs.ts';
+import { MapClassKeys } from '../../features/runs/map-class-keys.tsx';
+import { LAYER_NAMES, type ShownLayer, type SwipeChoice } from '../../features/runs/map-choice.ts';
+import { withPositions } from '../../lib/class-positions.ts';
 import { formatPercent } from '../../lib/format.ts';
 import { useKeys } from '../../lib/keys.ts';
 import { paths } from '../../lib/paths.ts';
@@ -33,6 +39,15 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
   const [view, setView] = useSceneView(project.id);
   const [opacity, setOpacity] = useState(0.8);
   const [place, setPlace] = useState<Place | null>(null);
+  const [layer, setLayer] = useState<ShownLayer>('classes');
+  const [hidden, setHidden] = useState<ReadonlySet<string>>(new Set());
+  const [swipe, setSwipe] = useState<SwipeChoice>('none');
+  const [share, setShare] = useState(0.5);
+  const runs = useRuns(project.id);
+  const others = (runs.data ?? []).filter((one) => one.id !== run.id && one.areas && isAlike(one, run));
+  const classes = withPositions(run.classes, scheme);
+  const toggle = (id: string) =>
+    setHidden((now) => new Set(now.has(id) ? [...now].filter((one) => one !== id) : [...now, id]));
   const map = useRef<LeafletMap>(null);
   const inspectMiddle = () => {
     const middle = map.current?.getCenter().wrap();
@@ -41,6 +56,12 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
   useKeys({
     h: () => setOpacity((now) => (now > 0 ? 0 : 1)),
     i: inspectMiddle,
+    ...Object.fromEntries(
+      classes.flatMap(({ id }, index) => {
+        const digit = classDigit(index);
+        return digit ? [[digit, () => toggle(id)]] : [];
+      }),
+    ),
     Escape: () => (place ? setPlace(null) : false),
   });
   const { bounds } = scene ?? run;
@@ -68,18 +89,32 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
       }
       map={
         scene && bounds ? (
-          <ClassMap
-            run={run}
-            scene={{ ...scene, bounds }}
-            view={view}
-            opacity={opacity}
-            studyArea={project.studyArea}
-            place={place}
-            onPress={setPlace}
-            onReady={(ready) => {
-              map.current = ready;
-            }}
-          />
+          <>
+            <ClassMap
+              run={run}
+              scene={{ ...scene, bounds }}
+              view={view}
+              opacity={opacity}
+              layer={layer}
+              hiddenCodes={run.classes.filter(({ id }) => hidden.has(id)).map(({ code }) => code)}
+              swipe={swipe}
+              share={share}
+              studyArea={project.studyArea}
+              place={place}
+              onPress={setPlace}
+              onReady={(ready) => {
+                map.current = ready;
+              }}
+            />
+            {swipe !== 'none' && (
+              <SwipeDivider
+                share={share}
+                onChange={setShare}
+                leftName={`${runTitle(run)}, ${LAYER_NAMES[layer].toLowerCase()}`}
+                rightName={swipe === 'scene' ? scene.name : others.find(({ id }) => id === swipe)?.name || 'Other run'}
+              />
+            )}
+          </>
         ) : (
           <div className="p-6">
             <NotFoundState title="The scene of this run cannot be shown">
@@ -97,7 +132,19 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
             opacity={opacity}
             onOpacity={setOpacity}
             onInspectMiddle={inspectMiddle}
-          />
+            layers={run.layers}
+            layer={layer}
+            onLayer={setLayer}
+            swipe={swipe}
+            swipeChoices={[
+              { value: 'none', label: 'No swipe' },
+              { value: 'scene', label: 'Swipe: scene' },
+              ...others.map((one) => ({ value: one.id, label: `Swipe: ${runTitle(one)}` })),
+            ]}
+            onSwipe={setSwipe}
+          >
+            <MapClassKeys classes={classes} hidden={hidden} onToggle={toggle} onShowAll={() => setHidden(new Set())} />
+          </ClassMapStrip>
         )
       }
       slip={
@@ -114,6 +161,15 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
       }
     />
   );
+}
+
+function nameOf(run: Run | undefined): string {
+  return run ? [runTitle(run), run.name].filter(Boolean).join(' · ') : 'Other run';
+}
+
+/** Whether another run's map lies on the same ground, so that a swipe compares like with like. */
+function isAlike(one: Run, other: Run): boolean {
+  return JSON.stringify(one.bounds) === JSON.stringify(other.bounds);
 }
 
 /** The overall accuracy in a line, never without its interval or the lack of one. */
