@@ -166,6 +166,7 @@ const TABLE: Record<string, Row> = {
   'tunings.start': LEAD_MODELLER,
   'tunings.read': LEAD_MODELLER,
   'tunings.delete': LEAD_MODELLER,
+  'runs.compare': ACCURACY,
   'runs.tile': TEAM,
   'runs.probe': TEAM,
   'runs.votes': TEAM,
@@ -348,6 +349,7 @@ const QUERY: Record<string, () => string> = {
   'designs.cell': () => `?mapped=1&reference=${params['classId']}`,
   'recipes.diff': () => `?left=run:${runId}&right=run:${runId}`,
   'runs.probe': () => '?lon=-15&lat=60',
+  'runs.compare': () => `?first=${runId}&second=${runId}`,
   'runs.votes': () => '?lon=-15&lat=60',
   'accuracy.cell': () => `?mapped=${params['classId']}&reference=${params['classId']}`,
 };

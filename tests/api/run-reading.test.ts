@@ -1,10 +1,12 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Run, RunVotes } from '../../shared/contracts/run.ts';
+import type { RunComparison } from '../../shared/contracts/run-comparison.ts';
 import { Run as RunEntity } from '../../server/entities/run.ts';
 import { readLayerWindow } from '../../server/services/run-layers.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround, type RunGround } from '../factories/make-run-ground.ts';
 import { readBytes } from '../factories/read-bytes.ts';
+import { makeScene } from '../factories/make-scene.ts';
 import { openTestApp, type Agent, type TestApp } from '../factories/test-app.ts';
 import { waitForRun } from '../factories/wait-for-run.ts';
 
@@ -63,6 +65,60 @@ describe('how sure a map is', () => {
     const tiff = await readBytes(modeller, `/api/v1/runs/${first.id}/layers/margin.tif`);
     expect(tiff.subarray(0, 2).toString()).toBe('II');
     await modeller.get(`/api/v1/runs/${first.id}/layers/confidence/tiles/4/7/4.webp`).expect(200);
-    await modeller.get(`/api/v1/runs/${first.id}/layers/other.tif`).expect(400);
+    await modeller.get(`/api/v1/runs/${first.id}/layers/other.tif`).expect(404);
   });
+});
+
+describe('two runs compared', () => {
+  let second: Run;
+  beforeAll(async () => {
+    second = await map({ ...ground.recipe, classifier: { kind: 'minimum-distance', metric: 'euclidean' } });
+  }, 60_000);
+  const compare = (agent: Agent, one: string, other: string) =>
+    agent.get(`/api/v1/projects/${team.project.id}/run-comparison?first=${one}&second=${other}`);
+
+  it('counts what became what, in sum the areas of either map', async () => {
+    const { body } = await compare(modeller, first.id, second.id).expect(200);
+    const { transitions, isOneScene, agreeingShare } = body as RunComparison;
+    expect(isOneScene).toBe(true);
+    for (const { classId, pixels, areaHa } of first.areas!.filter((area) => area.classId)) {
+      const from = transitions.filter(({ fromClassId }) => fromClassId === classId);
+      expect(from.reduce((sum, one) => sum + one.pixels, 0)).toBe(pixels);
+      expect(from.reduce((sum, one) => sum + one.areaHa, 0)).toBeCloseTo(areaHa, 6);
+    }
+    for (const { classId, pixels } of second.areas!.filter((area) => area.classId)) {
+      const to = transitions.filter(({ toClassId }) => toClassId === classId);
+      expect(to.reduce((sum, one) => sum + one.pixels, 0)).toBe(pixels);
+    }
+    expect(transitions.some(({ fromClassId, toClassId }) => fromClassId !== toClassId)).toBe(true);
+    expect(agreeingShare).toBeGreaterThan(0.5);
+    expect(agreeingShare).toBeLessThan(1);
+  });
+
+  it('tests both on the samples they held out, whose counts are those of each run’s accuracy', async () => {
+    const { body } = await compare(modeller, first.id, second.id).expect(200);
+    const { heldOut, cautions } = body as RunComparison;
+    const { byPixel, byPolygon, polygons } = heldOut!;
+    expect(polygons).toBe(9);
+    expect(byPixel.n).toBe(9 * 36);
+    expect((byPixel.bothRight + byPixel.onlyFirstRight) / byPixel.n).toBeCloseTo(first.overallAccuracy!, 9);
+    expect((byPixel.bothRight + byPixel.onlySecondRight) / byPixel.n).toBeCloseTo(second.overallAccuracy!, 9);
+    const { onlyFirstRight: b, onlySecondRight: c } = byPixel;
+    // McNemar 1947: (b − c)² / (b + c).
+    expect(byPixel.chiSquare).toBeCloseTo((b - c) ** 2 / (b + c), 9);
+    expect(byPolygon.n).toBe(9);
+    expect(cautions.join(' ')).toMatch(/Olofsson et al\. 2014.*alike/);
+  });
+
+  it('refuses a run with itself, maps of different pixels, and those who may not read accuracy', async () => {
+    await compare(modeller, first.id, first.id).expect(400);
+    const spec = { width: 120, height: 96, bandNames: ['Red'], value: () => 1 };
+    const elsewhere = await makeScene(test.app, team.project, {}, spec);
+    const third = await map({ ...ground.recipe, seed: 2 });
+    await test.app.db.getRepository(RunEntity).update({ id: third.id }, { sceneId: elsewhere.id });
+    const { body } = await compare(modeller, first.id, third.id).expect(400);
+    expect((body as { title: string }).title).toMatch(/different pixels/);
+    await compare(await test.signedIn(team.labeller), first.id, second.id).expect(403);
+    await compare(modeller, first.id, '00000000-0000-4000-8000-000000000000').expect(404);
+  }, 60_000);
 });

@@ -65,6 +65,10 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/run-record/run-record-page.tsx'), 'RunRecordPage'),
   },
   {
+    path: 'runs/compare',
+    lazy: lazyPage(() => import('../pages/run-comparison/run-comparison-page.tsx'), 'RunComparisonPage'),
+  },
+  {
     path: 'runs/:runId',
     lazy: lazyPage(() => import('../pages/run/run-page.tsx'), 'RunPage'),
   },

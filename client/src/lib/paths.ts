@@ -35,6 +35,8 @@ export const paths = {
     `/projects/${projectId}/runs/tunings/new${of.runId ? `?from=${of.runId}` : of.recipeId ? `?recipe=${of.recipeId}` : ''}`,
   /** How a run was made: its log, and whether it comes out the same again. */
   runRecord: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}/record`,
+  compareRuns: (projectId: string, secondRunId?: string) =>
+    `/projects/${projectId}/runs/compare${secondRunId ? `?second=${secondRunId}` : ''}`,
   run: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}`,
   accuracy: (projectId: string, runId?: string) => `/projects/${projectId}/accuracy${runId ? `?run=${runId}` : ''}`,
   newDesign: (projectId: string, runId?: string) =>

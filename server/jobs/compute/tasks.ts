@@ -2,6 +2,7 @@ import type { ClassifierRecipe } from '../../../shared/contracts/run.ts';
 import type { TrainingSet } from '../../analysis/classifiers/classifier.ts';
 import type { MultiPolygon, Polygon } from '../../analysis/sampling/polygon.ts';
 import type { SampleSummary } from '../../analysis/spectral/sample-summary.ts';
+import type { CodeComparison, ComparedCodes } from '../../raster/compare-codes.ts';
 import type { RasterGrid } from '../../raster/raster-grid.ts';
 
 /** The pixels a run reads: band files in the recipe's order, on the scene's grid. */
@@ -123,6 +124,10 @@ export interface ComputeTasks {
       minShare: number;
     };
     result: MappedStrip;
+  };
+  'compare-codes': {
+    input: CodeComparison & { mapPaths: readonly [string, string] };
+    result: ComparedCodes;
   };
   /** Joins the strips of a layer into one raw file at `rawPath`. */
   'join-strips': {

@@ -13,6 +13,7 @@ import { findProjectTarget, projectParams } from '../find-project.ts';
 import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
 import { classMapRoutes } from './class-map-routes.ts';
+import { comparisonRoutes } from './comparison-routes.ts';
 import { reproductionRoutes } from './reproduction-routes.ts';
 import { findRunTarget, runParams } from './find-run.ts';
 
@@ -98,4 +99,5 @@ export const runRoutes = [
   }),
   ...reproductionRoutes,
   ...classMapRoutes.map(hideWhileInterpreting),
+  ...comparisonRoutes.map(hideWhileInterpreting),
 ];

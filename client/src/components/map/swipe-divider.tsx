@@ -23,14 +23,14 @@ export function SwipeDivider({ share, onChange, leftName, rightName }: SwipeDivi
   return (
     <div ref={frame} className="pointer-events-none absolute inset-0 z-[1005] overflow-hidden">
       <span
-        className="absolute top-3 max-w-56 -translate-x-full truncate rounded bg-card px-2 py-0.5 text-xs shadow-lift"
+        className="absolute top-14 max-w-56 -translate-x-full truncate rounded bg-card px-2 py-0.5 text-xs shadow-lift"
         style={{ left: `calc(${percent}% - 24px)` }}
         aria-hidden
       >
         {leftName}
       </span>
       <span
-        className="absolute top-3 max-w-56 truncate rounded bg-card px-2 py-0.5 text-xs shadow-lift"
+        className="absolute top-14 max-w-56 truncate rounded bg-card px-2 py-0.5 text-xs shadow-lift"
         style={{ left: `calc(${percent}% + 24px)` }}
         aria-hidden
       >

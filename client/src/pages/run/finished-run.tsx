@@ -1,6 +1,6 @@
 import type { Map as LeafletMap } from 'leaflet';
 import { useRef, useState } from 'react';
-import { Link } from 'react-router-dom';
+import { Link, useSearchParams } from 'react-router-dom';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Run } from '../../../../shared/contracts/run.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
@@ -39,9 +39,10 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
   const [view, setView] = useSceneView(project.id);
   const [opacity, setOpacity] = useState(0.8);
   const [place, setPlace] = useState<Place | null>(null);
+  const [params] = useSearchParams();
   const [layer, setLayer] = useState<ShownLayer>('classes');
   const [hidden, setHidden] = useState<ReadonlySet<string>>(new Set());
-  const [swipe, setSwipe] = useState<SwipeChoice>('none');
+  const [swipe, setSwipe] = useState<SwipeChoice>(params.get('swipe') ?? 'none');
   const [share, setShare] = useState(0.5);
   const runs = useRuns(project.id);
   const others = (runs.data ?? []).filter((one) => one.id !== run.id && one.areas && isAlike(one, run));
@@ -111,7 +112,7 @@ export function FinishedRun({ run, scene, scheme }: FinishedRunProps) {
                 share={share}
                 onChange={setShare}
                 leftName={`${runTitle(run)}, ${LAYER_NAMES[layer].toLowerCase()}`}
-                rightName={swipe === 'scene' ? scene.name : others.find(({ id }) => id === swipe)?.name || 'Other run'}
+                rightName={swipe === 'scene' ? scene.name : nameOf(others.find(({ id }) => id === swipe))}
               />
             )}
           </>

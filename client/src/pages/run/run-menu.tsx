@@ -1,6 +1,7 @@
 import {
   BookmarkPlus,
   ChartNoAxesColumn,
+  Columns2,
   MoreHorizontal,
   RotateCcw,
   ScrollText,
@@ -47,6 +48,11 @@ export function RunMenu({ run }: { run: Run }) {
         {abilities.readAccuracy && run.job.state === 'finished' && (
           <MenuItem icon={<ChartNoAxesColumn />} to={paths.accuracy(id, run.id)}>
             Accuracy
+          </MenuItem>
+        )}
+        {abilities.readAccuracy && run.job.state === 'finished' && (
+          <MenuItem icon={<Columns2 />} to={paths.compareRuns(id, run.id)}>
+            Compare with another run
           </MenuItem>
         )}
         {run.abilities.delete && (

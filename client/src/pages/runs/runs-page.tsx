@@ -76,6 +76,13 @@ function RunList() {
             {project.abilities.readAccuracy &&
               ' Accuracies are by pixel with their 95 % interval; they describe the held-out samples, not the map.'}
           </p>
+          {project.abilities.readAccuracy && list.filter((run) => run.job.state === 'finished').length > 1 && (
+            <p className="mb-4 text-sm">
+              <Link to={paths.compareRuns(project.id)} className="link">
+                Compare two runs
+              </Link>
+            </p>
+          )}
           <RunsTable runs={list} showsAccuracy={project.abilities.readAccuracy} />
         </>
       )}
