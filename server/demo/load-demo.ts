@@ -6,6 +6,7 @@ import { SiteSetting } from '../entities/site-setting.ts';
 import { User } from '../entities/user.ts';
 import { isSiteEmpty } from '../services/first-admin.ts';
 import { deleteProjectWhole } from '../services/projects.ts';
+import { shareDemoWork } from './demo-blocks.ts';
 import { judgeDemoRun } from './demo-design.ts';
 import { addDemoPeople, addDemoScheme, createDemoProject } from './demo-project.ts';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from './demo-people.ts';
@@ -63,6 +64,8 @@ async function load(app: App, say: (line: string) => void, signal: AbortSignal):
     say('  running the first classification');
     const runId = await startDemoRun(app, project.id, people.modeller, lateSummer, classIds);
     await waitForJob(app, { runId }, signal);
+    say('  sharing the work in blocks, reviewing the samples');
+    await shareDemoWork(app, project.id, people);
     say('  two reviewers judge its map by reference points');
     await judgeDemoRun(app, project.id, runId, people, island.trueClass);
   });

@@ -9,6 +9,9 @@ import { Conflict, InvalidInput } from '../errors.ts';
 import { Block } from '../entities/block.ts';
 import { addBlocks, type NewBlock } from './blocks.ts';
 
+/** Rounding of the ground's corners begins no further row of blocks. */
+const SLACK_METERS = 2;
+
 /** Cuts the study area (or else what the scenes cover) into square blocks. */
 export async function cutBlocks(app: App, project: Project, byId: string, input: CutBlocks): Promise<void> {
   const { sizeMeters, targetPerClass = null, replace = false } = input;
@@ -33,21 +36,14 @@ export async function cutBlocks(app: App, project: Project, byId: string, input:
 
 async function findSceneGround(app: App, projectId: string): Promise<ArealGeometry> {
   const scenes = await app.db.getRepository(Scene).findBy({ projectId, state: 'ready' });
-  const scene = scenes.find(({ bounds }) => bounds);
-  if (!scene?.bounds) {
+  const scene = scenes.find(({ footprint }) => footprint);
+  if (!scene?.footprint) {
     throw new InvalidInput('There is nothing to cut into blocks.', {
       wanted: 'a study area, or a scene that is ready',
       advice: 'Set the study area first.',
     });
   }
-  const [west, south, east, north] = scene.bounds;
-  const corners: Position[] = [
-    [west, south],
-    [east, south],
-    [east, north],
-    [west, north],
-  ];
-  return { type: 'Polygon', coordinates: [[...corners, [west, south]]] };
+  return scene.footprint;
 }
 
 /**
@@ -63,8 +59,8 @@ export function layGrid(ground: ArealGeometry, sizeMeters: number): Omit<NewBloc
   const places = outline.flat(2).map(([lon, lat]) => utm.forward<[number, number]>([lon, lat]));
   const west = Math.floor(Math.min(...places.map(([x]) => x)));
   const north = Math.ceil(Math.max(...places.map(([, y]) => y)));
-  const nColumns = Math.ceil((Math.max(...places.map(([x]) => x)) - west) / sizeMeters);
-  const nRows = Math.ceil((north - Math.min(...places.map(([, y]) => y))) / sizeMeters);
+  const nColumns = Math.ceil((Math.max(...places.map(([x]) => x)) - west - SLACK_METERS) / sizeMeters);
+  const nRows = Math.ceil((north - Math.min(...places.map(([, y]) => y)) - SLACK_METERS) / sizeMeters);
   if (nColumns * nRows > MAX_BLOCKS * 4) throw refuseMany(nColumns * nRows);
   const corner = (column: number, row: number): Position => {
     const [lon, lat] = utm.inverse<[number, number]>([west + column * sizeMeters, north - row * sizeMeters]);

@@ -9,6 +9,7 @@ import { Scene } from '../entities/scene.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import { areMapsWithheld } from './design-blindness.ts';
+import { listWaitingSamples } from './sample-waiting.ts';
 import { listWaitingDesigns } from './design-waiting.ts';
 
 /** Figures, and what waits for the viewer. */
@@ -26,6 +27,7 @@ export async function buildOverview(app: App, project: Project, viewer: Viewer):
   return {
     waiting: [
       ...listWaiting(project, viewer, scenes, samplesPerClass, runs),
+      ...(await listWaitingSamples(app, project.id, viewer)),
       ...(await listWaitingDesigns(app, project.id, viewer)),
     ],
     figures: {

@@ -29,6 +29,10 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/samples/samples-page.tsx'), 'SamplesPage'),
   },
   {
+    path: 'samples/blocks',
+    lazy: lazyPage(() => import('../pages/blocks/blocks-page.tsx'), 'BlocksPage'),
+  },
+  {
     path: 'samples/signatures',
     lazy: lazyPage(() => import('../pages/signatures/signatures-page.tsx'), 'SignaturesPage'),
   },

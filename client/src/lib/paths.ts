@@ -15,6 +15,7 @@ export const paths = {
   sceneBands: (projectId: string, sceneId: string) => `/projects/${projectId}/scenes/${sceneId}/bands`,
   classes: (projectId: string) => `/projects/${projectId}/classes`,
   samples: (projectId: string) => `/projects/${projectId}/samples`,
+  blocks: (projectId: string) => `/projects/${projectId}/samples/blocks`,
   signatures: (projectId: string) => `/projects/${projectId}/samples/signatures`,
   /** The sampling desk with these samples shown and the first of them selected. */
   samplesChosen: (projectId: string, sampleIds: readonly string[]) =>

@@ -50,7 +50,7 @@ export function DataTableRow<T>({
       aria-rowindex={index + 2}
       aria-selected={onPress ? isSelected : undefined}
       tabIndex={onPress ? (isTabStop ? 0 : -1) : undefined}
-      onClick={onPress && (() => onPress(row.original))}
+      onClick={onPress && ((event) => !isOnControl(event.target) && onPress(row.original))}
       onKeyDown={onPress && handleKey}
       style={{ height }}
       className={classNames(
@@ -69,4 +69,9 @@ export function DataTableRow<T>({
       ))}
     </tr>
   );
+}
+
+/** A press on a box or button inside the row is that control's own. */
+function isOnControl(target: EventTarget): boolean {
+  return target instanceof Element && target.closest('button, a, input, label') !== null;
 }

@@ -1,4 +1,4 @@
-import { type RefObject, useEffect, useMemo } from 'react';
+import { type ReactNode, type RefObject, useEffect, useMemo } from 'react';
 import { useMap } from 'react-leaflet';
 import type { DrawingRefusal } from '../../../../shared/contracts/sample.ts';
 import { AreaOutline } from '../../components/map/area-outline.tsx';
@@ -26,10 +26,12 @@ export interface DeskMapProps {
   editor: RefObject<ShapeEditorHandle | null>;
   /** Why the open drawing is refused; its place is marked. */
   refusal: DrawingRefusal | null;
+  /** Blocks, and what others are changing. */
+  children?: ReactNode;
 }
 
 /** The desk's map: scene, study area, samples, and the drawing in hand. */
-export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
+export function DeskMap({ desk, view, editor, refusal, children }: DeskMapProps) {
   const { scene, draft, tool, shown, byId, project, selected } = desk;
   const polygons = useMemo(() => samplePolygons(shown, byId), [shown, byId]);
   const drawTool = desk.canDraw ? drawToolOf(tool) : null;
@@ -48,6 +50,7 @@ export function DeskMap({ desk, view, editor, refusal }: DeskMapProps) {
     >
       <SceneLayer key={scene.id} scene={scene} view={view} />
       <AreaOutline geometry={project.studyArea} />
+      {children}
       <CanvasPolygons
         polygons={polygons}
         selectedId={selected?.id ?? null}

@@ -1,3 +1,4 @@
+import type { Presence } from '../../../../shared/contracts/presence.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { DraftSlip } from './draft-slip.tsx';
 import { MarkedSlip } from './marked-slip.tsx';
@@ -10,11 +11,13 @@ export interface DeskSlipProps {
   desk: Desk;
   viewerId: string;
   scenes: readonly Scene[];
+  /** Who else is at the desk. */
+  people: readonly Presence[];
   measure: ReturnType<typeof useDraftMeasure>;
 }
 
 /** What is open, on the right edge: the drawing, a pixel, or the selected sample. */
-export function DeskSlip({ desk, viewerId, scenes, measure }: DeskSlipProps) {
+export function DeskSlip({ desk, viewerId, scenes, people, measure }: DeskSlipProps) {
   const { draft, probe, selected, scene, classes } = desk;
   if (draft) {
     return (
@@ -59,6 +62,7 @@ export function DeskSlip({ desk, viewerId, scenes, measure }: DeskSlipProps) {
       classes={classes}
       viewerId={viewerId}
       isBusy={desk.isBusy}
+      editedBy={people.find(({ editingSampleId }) => editingSampleId === selected.id)?.person.name ?? null}
       shownVersion={desk.version?.versionNumber ?? null}
       onShowVersion={desk.setVersion}
       onRestore={(versionNumber) => void desk.restoreVersion(selected, versionNumber)}

@@ -13,6 +13,7 @@ const GROUPS: { title: string; keys: [string[], string][] }[] = [
       [['V'], 'Select and change'],
       [['I'], 'Inspect a pixel; or Alt and a press at any time'],
       [['M'], 'Open or close the sample list'],
+      [['B'], 'Go to your next block'],
       [['1', '…', '9', '0'], 'Class, in the order of the scheme'],
     ],
   },

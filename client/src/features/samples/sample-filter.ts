@@ -1,17 +1,33 @@
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
-import type { Confidence, Sample } from '../../../../shared/contracts/sample.ts';
+import type { Confidence, Sample, SampleState } from '../../../../shared/contracts/sample.ts';
 
 export interface SampleFilter {
   text: string;
   classId: string | null;
   authorId: string | null;
   confidence: Confidence | null;
+  state: SampleState | null;
+  blockId: string | null;
+  /** Only samples with open comments. */
+  hasRemarks: boolean;
 }
 
-export const NO_FILTER: SampleFilter = { text: '', classId: null, authorId: null, confidence: null };
+export const NO_FILTER: SampleFilter = {
+  text: '',
+  classId: null,
+  authorId: null,
+  confidence: null,
+  state: null,
+  blockId: null,
+  hasRemarks: false,
+};
 
 export function isFiltering(filter: SampleFilter): boolean {
-  return filter.text.trim() !== '' || Boolean(filter.classId ?? filter.authorId ?? filter.confidence);
+  return (
+    filter.text.trim() !== '' ||
+    Boolean(filter.classId ?? filter.authorId ?? filter.confidence ?? filter.state ?? filter.blockId) ||
+    filter.hasRemarks
+  );
 }
 
 /**
@@ -28,6 +44,9 @@ export function filterSamples(
     if (filter.classId && sample.classId !== filter.classId) return false;
     if (filter.authorId && sample.createdBy?.id !== filter.authorId) return false;
     if (filter.confidence && sample.confidence !== filter.confidence) return false;
+    if (filter.state && sample.state !== filter.state) return false;
+    if (filter.blockId && sample.blockId !== filter.blockId) return false;
+    if (filter.hasRemarks && sample.openRemarks === 0) return false;
     if (words.length === 0) return true;
     const className = classes.get(sample.classId)?.name ?? '';
     const text = `${sample.number} ${className} ${sample.createdBy?.name ?? ''} ${sample.note}`.toLowerCase();

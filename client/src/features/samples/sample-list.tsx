@@ -1,16 +1,20 @@
 import { X } from 'lucide-react';
-import { useMemo } from 'react';
+import { useCallback, useMemo, useState } from 'react';
+import type { Block } from '../../../../shared/contracts/block.ts';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
-import { type Sample, confidenceSchema } from '../../../../shared/contracts/sample.ts';
+import { type Sample, confidenceSchema, sampleStateSchema } from '../../../../shared/contracts/sample.ts';
 import { Button } from '../../components/ui/button.tsx';
+import { Checkbox } from '../../components/ui/checkbox.tsx';
 import { DataTable } from '../../components/ui/data-table.tsx';
 import { IconButton } from '../../components/ui/icon-button.tsx';
 import { Select } from '../../components/ui/select.tsx';
 import { TextInput } from '../../components/ui/text-input.tsx';
 import { formatCount, formatNumber } from '../../lib/format.ts';
+import { BulkActs } from './bulk-acts.tsx';
 import { CONFIDENCE_TEXT } from './confidence-text.ts';
 import { sampleColumns } from './sample-columns.tsx';
 import { NO_FILTER, type SampleFilter, isFiltering, sampleAuthors } from './sample-filter.ts';
+import { SAMPLE_STATE_TEXT } from './sample-state.tsx';
 
 export interface SampleListProps {
   /** All samples of the scene. */
@@ -20,6 +24,9 @@ export interface SampleListProps {
   classes: readonly LandClass[];
   filter: SampleFilter;
   onFilter: (filter: SampleFilter) => void;
+  projectId: string;
+  viewerId: string;
+  blocks: readonly Block[];
   selectedId: string | null;
   onSelect: (sample: Sample) => void;
   onClose: () => void;
@@ -30,8 +37,21 @@ const ALL = 'all';
 /** The samples beside the map: sorted by any column, filtered, a press goes there. */
 export function SampleList(props: SampleListProps) {
   const { samples, shown, classes, filter, onFilter, selectedId, onSelect, onClose } = props;
-  const columns = useMemo(() => sampleColumns(new Map(classes.map((one) => [one.id, one]))), [classes]);
-  const choose = (name: 'classId' | 'authorId' | 'confidence') => (value: string) =>
+  const [ticked, setTicked] = useState<ReadonlySet<string>>(new Set());
+  const tick = useCallback((id: string, isOn: boolean) => {
+    setTicked((now) => {
+      const next = new Set(now);
+      if (isOn) next.add(id);
+      else next.delete(id);
+      return next;
+    });
+  }, []);
+  const chosen = useMemo(() => shown.filter(({ id }) => ticked.has(id)), [shown, ticked]);
+  const columns = useMemo(
+    () => sampleColumns(new Map(classes.map((one) => [one.id, one])), ticked, tick),
+    [classes, ticked, tick],
+  );
+  const choose = (name: 'classId' | 'authorId' | 'confidence' | 'state' | 'blockId') => (value: string) =>
     onFilter({ ...filter, [name]: value === ALL ? null : value });
   const isOn = isFiltering(filter);
   return (
@@ -85,6 +105,40 @@ export function SampleList(props: SampleListProps) {
             ...confidenceSchema.options.map((value) => ({ value, label: CONFIDENCE_TEXT[value] })),
           ]}
         />
+        <Select
+          size="sm"
+          aria-label="State"
+          value={filter.state ?? ALL}
+          onChange={choose('state')}
+          options={[
+            { value: ALL, label: 'Any state' },
+            ...sampleStateSchema.options.map((value) => ({ value, label: SAMPLE_STATE_TEXT[value] })),
+          ]}
+        />
+        {props.blocks.length > 0 && (
+          <Select
+            size="sm"
+            aria-label="Block"
+            value={filter.blockId ?? ALL}
+            onChange={choose('blockId')}
+            options={[
+              { value: ALL, label: 'Any block' },
+              ...props.blocks.map(({ id, name }) => ({ value: id, label: `Block ${name}` })),
+            ]}
+          />
+        )}
+        <Checkbox
+          label={<span className="text-sm">Open comments only</span>}
+          isChecked={filter.hasRemarks}
+          onChange={(hasRemarks) => onFilter({ ...filter, hasRemarks })}
+          className="items-center!"
+        />
+        <Checkbox
+          label={<span className="text-sm">Tick all shown</span>}
+          isChecked={chosen.length === 0 ? false : chosen.length === shown.length ? true : 'mixed'}
+          onChange={(isOn) => setTicked(new Set(isOn ? shown.map(({ id }) => id) : []))}
+          className="items-center!"
+        />
       </div>
       {isOn && (
         <p className="flex items-center justify-between gap-2 px-3.5 pb-1.5 text-xs text-ink-soft">
@@ -110,6 +164,13 @@ export function SampleList(props: SampleListProps) {
             {isOn ? 'No sample passes the filter.' : 'No sample on this scene yet. P draws the first.'}
           </p>
         }
+      />
+      <BulkActs
+        projectId={props.projectId}
+        viewerId={props.viewerId}
+        chosen={chosen}
+        shown={shown}
+        onDone={() => setTicked(new Set())}
       />
     </section>
   );

@@ -3,6 +3,7 @@ import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Sample, SampleVersion } from '../../../../shared/contracts/sample.ts';
 import { Facts, Slip } from '../../components/layout/slip.tsx';
 import { Button } from '../../components/ui/button.tsx';
+import { Callout } from '../../components/ui/callout.tsx';
 import { ClassSwatch } from '../../components/ui/class-swatch.tsx';
 import { Kbd } from '../../components/ui/kbd.tsx';
 import { formatDateTime, formatSince } from '../../lib/format-date.ts';
@@ -11,7 +12,10 @@ import { CONFIDENCE_TEXT } from './confidence-text.ts';
 import { JudgementBlock } from './judgement-block.tsx';
 import { useJudgement } from './judgement-query.ts';
 import { type MeasuredScene, useMeasure } from './measure-query.ts';
+import { ReviewActs } from './review-acts.tsx';
 import { SampleHistory } from './sample-history.tsx';
+import { SampleStateTag } from './sample-state.tsx';
+import { SampleThread } from './sample-thread.tsx';
 import { SpectrumBlock } from './spectrum-block.tsx';
 import { rivalSeries } from './spectrum-series.ts';
 
@@ -21,6 +25,8 @@ export interface SampleSlipProps {
   classes: readonly LandClass[];
   viewerId: string;
   isBusy: boolean;
+  /** Somebody else who is changing it just now. */
+  editedBy: string | null;
   /** The version whose outline is on the map, if any. */
   shownVersion: number | null;
   onShowVersion: (version: SampleVersion | null) => void;
@@ -47,7 +53,12 @@ export function SampleSlip(props: SampleSlipProps) {
     <Slip
       title={`${className} · sample ${sample.number}`}
       mark={landClass && <ClassSwatch colour={landClass.colour} position={landClass.position} />}
-      note={`Drawn by ${author}, ${formatSince(sample.createdAt)} · version ${sample.version}`}
+      note={
+        <span className="flex flex-wrap items-center gap-1.5">
+          Drawn by {author}, {formatSince(sample.createdAt)} · version {sample.version}
+          <SampleStateTag state={sample.state} />
+        </span>
+      }
       onClose={props.onClose}
       footer={
         sample.abilities.edit ? (
@@ -67,6 +78,11 @@ export function SampleSlip(props: SampleSlipProps) {
         ) : undefined
       }
     >
+      {props.editedBy && (
+        <Callout tone="beware" title={`${props.editedBy} is changing this sample.`}>
+          If both of you save, the second is shown both versions.
+        </Callout>
+      )}
       <SpectrumBlock
         measure={measure}
         name="This sample"
@@ -84,11 +100,13 @@ export function SampleSlip(props: SampleSlipProps) {
       />
       <JudgementBlock judgement={judgement} classes={classes} />
       {sample.note && <p className="border-t border-line pt-2.5 whitespace-pre-line">{sample.note}</p>}
+      <ReviewActs sample={sample} />
       {!sample.abilities.edit && (
         <p className="border-t border-line pt-2.5 text-ink-soft">
           {author === 'you' ? 'Your roles here no longer draw samples.' : `Only ${author} or the lead can change it.`}
         </p>
       )}
+      <SampleThread key={`thread ${sample.id}`} sample={sample} viewerId={viewerId} />
       <SampleHistory
         key={sample.id}
         sample={sample}

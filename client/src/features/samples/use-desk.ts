@@ -3,7 +3,12 @@ import { useSearchParams } from 'react-router-dom';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Project } from '../../../../shared/contracts/project.ts';
-import type { Confidence, Sample, SampleVersion } from '../../../../shared/contracts/sample.ts';
+import {
+  type Confidence,
+  type Sample,
+  type SampleVersion,
+  sampleStateSchema,
+} from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import type { ShapeEditorHandle } from '../../components/map/shape-editor.tsx';
 import type { ZoomTarget } from '../../components/map/zoom-to.tsx';
@@ -12,7 +17,7 @@ import type { DeskTool } from './desk-tool.ts';
 import { type Draft, draftOfSample, isSameOutline, newDraft } from './draft.ts';
 import { useGrow } from './grow-from-pixel.ts';
 import { polygonBounds } from './polygon-bounds.ts';
-import { NO_FILTER, filterSamples } from './sample-filter.ts';
+import { NO_FILTER, type SampleFilter, filterSamples } from './sample-filter.ts';
 import { useDeskActs } from './use-desk-acts.ts';
 import { useStoredDraft } from './use-stored-draft.ts';
 
@@ -22,12 +27,14 @@ export interface DeskInput {
   scenes: readonly Scene[];
   classes: readonly LandClass[];
   samples: readonly Sample[];
+  /** Where the desk opens when no link or drawing says otherwise. */
+  firstPlace: Polygon | null;
   /** The map's editor, for leaving a drawing under way. */
   editor: RefObject<ShapeEditorHandle | null>;
 }
 
 /** All that is open on the sampling desk, and what can be done with it. */
-export function useDesk({ project, viewerId, scenes, classes, samples, editor }: DeskInput) {
+export function useDesk({ project, viewerId, scenes, classes, samples, firstPlace, editor }: DeskInput) {
   const [search, setSearch] = useSearchParams();
   const canDraw = project.abilities.drawSamples;
   const { draft, setDraft, isFromBefore } = useStoredDraft(
@@ -44,8 +51,8 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
   const [classId, setClassId] = useState(draft?.classId ?? classes[0]!.id);
   const [confidence, setConfidence] = useState<Confidence>('medium');
   const [probe, setProbe] = useState<Place | null>(null);
-  const [filter, setFilter] = useState(NO_FILTER);
-  const [isListOpen, setIsListOpen] = useState(false);
+  const [filter, setFilter] = useState(() => filterOfLink(search));
+  const [isListOpen, setIsListOpen] = useState(() => search.has('state'));
   const [isKeyListOpen, setIsKeyListOpen] = useState(false);
   const [version, setVersion] = useState<SampleVersion | null>(null);
   const [corners, setCorners] = useState({ canUndo: false, canRedo: false });
@@ -53,7 +60,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
     const places = draft
       ? [draft.geometry]
       : samples.filter(({ id }) => linkedIds.includes(id)).map(({ geometry }) => geometry);
-    return zoomTarget(places, 'fit');
+    return zoomTarget(places.length === 0 && firstPlace ? [firstPlace] : places, 'fit');
   });
 
   const byId = useMemo(() => new Map(classes.map((one) => [one.id, one])), [classes]);
@@ -191,6 +198,7 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
       setClassId(sample.classId);
       showPlace(sample.geometry);
     },
+    goToPlace: (geometry: Polygon) => setZoom(zoomTarget([geometry], 'fit')),
     goTo: (sample: Sample) => {
       if (draft) return;
       select(sample.id);
@@ -200,6 +208,12 @@ export function useDesk({ project, viewerId, scenes, classes, samples, editor }:
 }
 
 export type Desk = ReturnType<typeof useDesk>;
+
+/** A link from a letter or the overview may show samples of one state: `?state=returned`. */
+function filterOfLink(search: URLSearchParams): SampleFilter {
+  const state = sampleStateSchema.safeParse(search.get('state'));
+  return state.success ? { ...NO_FILTER, state: state.data } : NO_FILTER;
+}
 
 /** The id of a list that names one sample: it is selected, not only marked. */
 function onlyOne(ids: string | null): string | null {

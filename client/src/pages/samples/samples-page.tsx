@@ -9,6 +9,7 @@ import { ErrorState } from '../../components/ui/error-state.tsx';
 import { PendingState } from '../../components/ui/pending-state.tsx';
 import { useSamples } from '../../features/samples/samples-query.ts';
 import { paths } from '../../lib/paths.ts';
+import { useBlocks } from '../../lib/project/blocks-query.ts';
 import { useClasses } from '../../lib/project/classes-query.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useScenes } from '../../lib/project/scenes-query.ts';
@@ -32,10 +33,19 @@ function OpenDesk() {
   const scenes = useScenes(project.id);
   const classes = useClasses(project.id);
   const samples = useSamples(project.id);
-  if (scenes.data && classes.data && samples.data) {
+  const blocks = useBlocks(project.id);
+  if (scenes.data && classes.data && samples.data && blocks.data) {
     const ready = scenes.data.filter((scene) => scene.state === 'ready' && scene.bounds);
     if (ready.length > 0 && classes.data.length > 0) {
-      return <SamplingDesk viewerId={account.id} scenes={ready} classes={classes.data} samples={samples.data} />;
+      return (
+        <SamplingDesk
+          viewerId={account.id}
+          scenes={ready}
+          classes={classes.data}
+          samples={samples.data}
+          blocks={blocks.data.blocks}
+        />
+      );
     }
     const isComing = scenes.data.some((scene) => scene.state === 'ingesting');
     return (
@@ -44,7 +54,7 @@ function OpenDesk() {
       </ReadingPage>
     );
   }
-  const failed = [scenes, classes, samples].find((query) => query.isError);
+  const failed = [scenes, classes, samples, blocks].find((query) => query.isError);
   return (
     <ReadingPage header={<PageHeader title="Sampling desk" />}>
       {failed ? (

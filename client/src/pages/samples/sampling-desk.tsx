@@ -1,6 +1,7 @@
-import { ChartSpline, List, PenTool } from 'lucide-react';
+import { ChartSpline, Grid2x2, List, PenTool } from 'lucide-react';
 import { useRef } from 'react';
 import { Link } from 'react-router-dom';
+import type { Block } from '../../../../shared/contracts/block.ts';
 import type { LandClass } from '../../../../shared/contracts/land-class.ts';
 import type { Sample } from '../../../../shared/contracts/sample.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
@@ -13,15 +14,20 @@ import { StretchControl } from '../../components/map/stretch-control.tsx';
 import { Button, buttonClass } from '../../components/ui/button.tsx';
 import { Tooltip } from '../../components/ui/tooltip.tsx';
 import { ConflictDialog } from '../../features/samples/conflict-dialog.tsx';
+import { BlockInWork, BlockOutlines } from '../../features/samples/desk-blocks.tsx';
 import { DeskMap } from '../../features/samples/desk-map.tsx';
 import { DeskSlip } from '../../features/samples/desk-slip.tsx';
 import { DeskStrip } from '../../features/samples/desk-strip.tsx';
 import { drawToolOf } from '../../features/samples/desk-tool.ts';
 import { KeyList } from '../../features/samples/key-list.tsx';
 import { useDraftMeasure } from '../../features/samples/measure-query.ts';
+import { EditedByOthers, PresenceMarks } from '../../features/samples/presence-marks.tsx';
 import { SampleList } from '../../features/samples/sample-list.tsx';
+import { useBlockWork } from '../../features/samples/use-block-work.ts';
 import { useDesk } from '../../features/samples/use-desk.ts';
 import { toolHelp, useDeskKeys } from '../../features/samples/use-desk-keys.ts';
+import { usePresence } from '../../features/samples/use-presence.ts';
+import { useKeys } from '../../lib/keys.ts';
 import { paths } from '../../lib/paths.ts';
 import { useProject } from '../../lib/project/project-context.ts';
 import { useSceneView } from '../../lib/use-scene-view.ts';
@@ -33,13 +39,18 @@ export interface SamplingDeskProps {
   /** At least one. */
   classes: readonly LandClass[];
   samples: readonly Sample[];
+  blocks: readonly Block[];
 }
 
 /** The map with its samples, the key strip, the list and the slip. */
-export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDeskProps) {
+export function SamplingDesk({ viewerId, scenes, classes, samples, blocks }: SamplingDeskProps) {
   const project = useProject();
   const editor = useRef<ShapeEditorHandle>(null);
-  const desk = useDesk({ project, viewerId, scenes, classes, samples, editor });
+  const work = useBlockWork(project.id, viewerId, blocks);
+  const firstPlace = work.current?.geometry ?? null;
+  const desk = useDesk({ project, viewerId, scenes, classes, samples, firstPlace, editor });
+  const people = usePresence(project.id, viewerId, desk.draft?.base ? desk.draft.id : null);
+  useKeys({ b: () => work.next(desk.goToPlace) });
   const [view, setView] = useSceneView(project.id);
   const measure = useDraftMeasure(project.id, desk.scene, desk.draft?.geometry ?? null);
   const refusal = desk.draft ? (measure.data?.refusal ?? null) : null;
@@ -52,8 +63,25 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
         header={
           <PageHeader
             title="Sampling desk"
+            crumb={
+              work.current && (
+                <BlockInWork
+                  block={work.current}
+                  viewerId={viewerId}
+                  nClasses={classes.length}
+                  isPending={work.isMoving}
+                  onDone={() => work.finish(desk.goToPlace)}
+                />
+              )
+            }
             action={
               <>
+                <PresenceMarks people={people} />
+                <Tooltip text="Blocks">
+                  <Link to={paths.blocks(project.id)} aria-label="Blocks" className={buttonClass('secondary', 'sm')}>
+                    <Grid2x2 aria-hidden />
+                  </Link>
+                </Tooltip>
                 <Tooltip text="Signatures">
                   <Link
                     to={paths.signatures(project.id)}
@@ -98,6 +126,9 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
         list={
           desk.isListOpen && (
             <SampleList
+              projectId={project.id}
+              viewerId={viewerId}
+              blocks={blocks}
               samples={desk.sceneSamples}
               shown={desk.shown}
               classes={classes}
@@ -109,7 +140,12 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
             />
           )
         }
-        map={<DeskMap desk={desk} view={view} editor={editor} refusal={refusal} />}
+        map={
+          <DeskMap desk={desk} view={view} editor={editor} refusal={refusal}>
+            <BlockOutlines blocks={blocks} current={work.current} />
+            <EditedByOthers people={people} samples={samples} />
+          </DeskMap>
+        }
         strip={
           <DeskStrip
             canDraw={desk.canDraw}
@@ -134,7 +170,7 @@ export function SamplingDesk({ viewerId, scenes, classes, samples }: SamplingDes
             onKeyList={() => desk.setIsKeyListOpen(true)}
           />
         }
-        slip={<DeskSlip desk={desk} viewerId={viewerId} scenes={scenes} measure={measure} />}
+        slip={<DeskSlip desk={desk} viewerId={viewerId} scenes={scenes} people={people} measure={measure} />}
       />
       {desk.conflict && (
         <ConflictDialog
