@@ -12,7 +12,7 @@ import { readTraining } from './compute/read-training.ts';
 import { summariseSamples } from './compute/summarise-samples.ts';
 import { judgeFold } from './compute/judge-fold.ts';
 import { maskStrip } from './compute/study-area-mask.ts';
-import { compareCodes } from '../raster/compare-codes.ts';
+import { compareMapFiles } from './compute/compare-maps.ts';
 import { joinStrips } from './compute/join-strips.ts';
 import type { ComputeResult, ComputeTask, ComputeTasks, MappedStrip } from './compute/tasks.ts';
 
@@ -93,8 +93,8 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
       return assembleModel(task);
     case 'map-strip':
       return mapStrip(task);
-    case 'compare-codes':
-      return compareCodes(task, [await store.open(task.mapPaths[0]), await store.open(task.mapPaths[1])]);
+    case 'compare-maps':
+      return compareMapFiles(task, [await store.open(task.mapPaths[0]), await store.open(task.mapPaths[1])]);
     case 'join-strips':
       return joinStrips(task);
     case 'finish-map':

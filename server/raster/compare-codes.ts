@@ -1,6 +1,3 @@
-import { assignPixelsOnce } from '../analysis/sampling/assign-pixels-once.ts';
-import type { Polygon } from '../analysis/sampling/polygon.ts';
-import { rasterisePolygon } from '../analysis/sampling/rasterise-polygon.ts';
 import { blockSize } from './band-file-format.ts';
 import type { BandFile } from './band-file.ts';
 import type { RasterGrid } from './raster-grid.ts';
@@ -9,8 +6,8 @@ export interface CodeComparison {
   grid: RasterGrid;
   /** Area of a pixel of each row, m². */
   rowAreaM2: Float64Array;
-  /** Polygons both maps are judged by, in pixel coordinates. */
-  heldOut: readonly { id: string; classIndex: number; polygon: Polygon }[];
+  /** Pixels of the polygons both maps are judged by: ascending flat indices, and the polygon of each. */
+  owned: { pixels: Uint32Array; owners: Uint32Array };
   /** Code of each polygon's class on the first and on the second map. */
   rightCodes: readonly (readonly [number, number])[];
 }
@@ -25,17 +22,12 @@ export interface ComparedCodes {
 
 /** Counts pairs of codes of two class maps on one grid, over all and in the shared held-out polygons. */
 export async function compareCodes(
-  { grid, rowAreaM2, heldOut, rightCodes }: CodeComparison,
+  { grid, rowAreaM2, owned, rightCodes }: CodeComparison,
   [first, second]: readonly [BandFile, BandFile],
 ): Promise<ComparedCodes> {
-  const owned = assignPixelsOnce(
-    heldOut.map(({ id, classIndex, polygon }) => ({
-      ...{ id, classIndex, pixels: rasterisePolygon(polygon, grid.width, grid.height) },
-    })),
-  );
   const pixels = new Float64Array(65536);
   const areaM2 = new Float64Array(65536);
-  const byPolygon = heldOut.map(() => [0, 0, 0, 0] as [number, number, number, number]);
+  const byPolygon = rightCodes.map(() => [0, 0, 0, 0] as [number, number, number, number]);
   let next = 0;
   const inRow = new Float64Array(65536);
   for (let y = 0; y < grid.height; y += blockSize) {

@@ -53,7 +53,7 @@ export async function compareTwoRuns(
   ] as const;
   const compared = await runComputeTask(
     app.workers.compute,
-    'compare-codes',
+    'compare-maps',
     {
       ...{ grid: placed.grid, mapPaths, rowAreaM2: measurePixelAreas(placed).rowAreaM2 },
       heldOut: heldOut.map(({ id, classIndex, polygon }) => ({ id, classIndex, polygon })),

@@ -259,6 +259,7 @@ describe('the blind check', () => {
     const middle = `lon=${(west! + east!) / 2}&lat=${(south! + north!) / 2}`;
     for (const tail of [
       ...['tiles/4/7/4.webp', `probe?${middle}`, 'class-map.tif', 'class-map.zip', 'accuracy', 'accuracy.csv'],
+      ...[`votes?${middle}`, 'layers/margin.tif', 'layers/confidence/tiles/4/7/4.webp'],
       `accuracy/cell?mapped=${ground.classes[0]!.id}&reference=${ground.classes[0]!.id}`,
     ]) {
       expect((await reviewer.get(`${API}/runs/${runId}/${tail}`).expect(403)).body, tail).toMatchObject(withheld);

@@ -125,8 +125,8 @@ export interface ComputeTasks {
     };
     result: MappedStrip;
   };
-  'compare-codes': {
-    input: CodeComparison & { mapPaths: readonly [string, string] };
+  'compare-maps': {
+    input: Omit<CodeComparison, 'owned'> & { mapPaths: readonly [string, string]; heldOut: readonly RunPolygon[] };
     result: ComparedCodes;
   };
   /** Joins the strips of a layer into one raw file at `rawPath`. */
