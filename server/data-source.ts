@@ -13,6 +13,7 @@ import { LandClass } from './entities/land-class.ts';
 import { Membership } from './entities/membership.ts';
 import { NamedRecipe } from './entities/named-recipe.ts';
 import { Presence } from './entities/presence.ts';
+import { PostProcessingRevision } from './entities/post-processing-revision.ts';
 import { Project } from './entities/project.ts';
 import { RateCounter } from './entities/rate-counter.ts';
 import { ReferenceAnswer } from './entities/reference-answer.ts';
@@ -46,6 +47,7 @@ export const entities = [
   Membership,
   NamedRecipe,
   Presence,
+  PostProcessingRevision,
   Project,
   RateCounter,
   ReferenceAnswer,

@@ -42,7 +42,24 @@ export interface RunResult {
   modelKey: string;
   /** Rasters of how sure the map is; runs made before there were layers have none. */
   layerKeys?: Record<RunLayer, string>;
+  /** What the classifier made, once steps were applied to it; the fields above then tell of the map after them. */
+  raw?: ClassifierMap;
+  /** Number of the revision of the post-processing list that the map shows. */
+  revision?: number;
 }
+/** The classifier's own map, which no step changes. */
+export type ClassifierMap = Pick<
+  RunResult,
+  | 'classMapSha256'
+  | 'pixelsByCode'
+  | 'areaHaByCode'
+  | 'overallAccuracy'
+  | 'overallLow'
+  | 'overallHigh'
+  | 'notes'
+  | 'mapKey'
+  | 'mapNamesKey'
+>;
 
 @Entity('runs')
 @Unique(['projectId', 'number'])

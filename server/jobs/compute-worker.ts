@@ -8,6 +8,7 @@ import { BandStore } from '../raster/band-store.ts';
 import { classifyStrip } from '../raster/classify-strip.ts';
 import { prepareClassifier } from './compute/classifier-of-recipe.ts';
 import { finishMap } from './compute/finish-map.ts';
+import { postProcess } from './compute/post-process.ts';
 import { readTraining } from './compute/read-training.ts';
 import { summariseSamples } from './compute/summarise-samples.ts';
 import { judgeFold } from './compute/judge-fold.ts';
@@ -99,5 +100,7 @@ export default async function compute(task: ComputeTask): Promise<ComputeResult>
       return joinStrips(task);
     case 'finish-map':
       return finishMap(task);
+    case 'post-process':
+      return postProcess(task, await store.open(task.mapPath));
   }
 }

@@ -9,6 +9,7 @@ export const JOB_LANES: Record<JobKind, JobLane> = {
   run: 'long',
   reproduce: 'long',
   tune: 'long',
+  'post-process': 'short',
 };
 
 export const jobLanes: readonly JobLane[] = ['long', 'short', 'intake'];

@@ -6,6 +6,7 @@ import { ReferenceDesigns1796104000000 } from './1796104000000-reference-designs
 import { ZoneLayers1796117000000 } from './1796117000000-zone-layers.ts';
 import { QueueAndRecipes1796118000000 } from './1796118000000-queue-and-recipes.ts';
 import { ReviewAndBlocks1796118600000 } from './1796118600000-review-and-blocks.ts';
+import { PostProcessing1796120000000 } from './1796120000000-post-processing.ts';
 
 /** In the order they run; a new one goes to the end. */
 export const migrations = [
@@ -17,4 +18,5 @@ export const migrations = [
   ZoneLayers1796117000000,
   QueueAndRecipes1796118000000,
   ReviewAndBlocks1796118600000,
+  PostProcessing1796120000000,
 ];

@@ -5,7 +5,9 @@ import { MAP_CAUTIONS, PURPOSIVE_CAUTION } from '../../shared/constants/cautions
 import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
 import type { Run as RunContract } from '../../shared/contracts/run.ts';
 import type { App } from '../app-context.ts';
+import { PostProcessingRevision } from '../entities/post-processing-revision.ts';
 import type { Run } from '../entities/run.ts';
+import { describeApplied } from './describe-step.ts';
 import { requireResult } from './accuracy.ts';
 
 type ClassArea = NonNullable<RunContract['areas']>[number];
@@ -23,6 +25,7 @@ export function nameDownload(run: Run, what: string): string {
 
 /** The class map for someone else's hands: GeoTIFF, class names, areas, and what to know before relying on it. */
 export async function packClassMap(app: App, run: Run, projectName: string, areas: ClassArea[]): Promise<Readable> {
+  const applied = await findApplied(app, run);
   const { mapKey, mapNamesKey } = requireResult(run);
   const zip = new ZipFile();
   const mtime = run.job.endedAt ?? run.createdAt;
@@ -31,7 +34,7 @@ export async function packClassMap(app: App, run: Run, projectName: string, area
   zip.addReadStream(mapStream, 'class-map.tif', { mtime, compress: false, size: await app.files.sizeBytes(mapKey) });
   zip.addBuffer(await app.files.read(mapNamesKey), 'class-map.tif.aux.xml', { mtime });
   zip.addBuffer(Buffer.from(writeClassesCsv(areas)), 'classes.csv', { mtime });
-  zip.addBuffer(Buffer.from(writeReadme(run, projectName)), 'README.txt', { mtime });
+  zip.addBuffer(Buffer.from(writeReadme(run, projectName, applied)), 'README.txt', { mtime });
   const out = zip.outputStream as Readable;
   mapStream.on('error', (error) => out.destroy(error));
   out.on('close', () => mapStream.destroy());
@@ -44,7 +47,17 @@ function writeClassesCsv(areas: readonly ClassArea[]): string {
   return stringify([['code', 'name', 'colour', 'pixels', 'area_ha'], ...rows], { escape_formulas: true });
 }
 
-function writeReadme(run: Run, projectName: string): string {
+/** What was done to the map after the classifier, in words. */
+async function findApplied(app: App, run: Run): Promise<ReturnType<typeof describeApplied>> {
+  const { revision: number } = requireResult(run);
+  const revision =
+    number === undefined
+      ? null
+      : await app.db.getRepository(PostProcessingRevision).findOneBy({ runId: run.id, number });
+  return describeApplied(revision?.steps ?? [], revision?.effects ?? [], run.classes);
+}
+
+function writeReadme(run: Run, projectName: string, applied: ReturnType<typeof describeApplied>): string {
   const result = requireResult(run);
   const bullets = (lines: readonly string[]) => lines.map((line) => `- ${line}`).join('\n');
   return [
@@ -74,6 +87,9 @@ function writeReadme(run: Run, projectName: string): string {
       ...result.notes,
     ]),
     '',
+    ...(applied.steps.length > 0 ? ['AFTER CLASSIFICATION, IN THIS ORDER', bullets(applied.steps), ''] : []),
+    ...(applied.byHand.length > 0 ? ['EDITS BY HAND', bullets(applied.byHand), ''] : []),
+    ...(result.raw ? [`SHA-256 of the classifier’s own class codes: ${result.raw.classMapSha256}`] : []),
     `SHA-256 of the class codes (row by row, one byte a pixel): ${result.classMapSha256}`,
     `SHA-256 of samples, classes, study area and bands: ${run.inputSha256}`,
     '',

@@ -1,6 +1,6 @@
 import { NODATA_CODE } from '../../shared/constants/class-codes.ts';
 import type { App } from '../app-context.ts';
-import type { Run } from '../entities/run.ts';
+import type { Run, RunResult } from '../entities/run.ts';
 import { NotFound } from '../errors.ts';
 import { probePixel } from '../raster/probe.ts';
 import { requireResult } from './accuracy.ts';
@@ -16,18 +16,28 @@ export function requirePlace(run: Run): PlacedScene {
 }
 
 /**
- * Plans a Web Mercator tile of the class map in its class colours. A map never changes once it stands, so a browser may keep its
- * tiles for good.
+ * Plans a Web Mercator tile of the class map in its class colours. Post-processing changes a run's map, so a browser may keep
+ * tiles for good only where the address names the map's digest.
+ * @param named the digest in the address
+ * @param map another map of the run than its current one
  * @throws NotFound without a map, or for a tile that does not exist
  */
 export function planClassTile(
   app: App,
   run: Run,
   address: TileAddress,
-  hiddenCodes: readonly number[] = [],
+  {
+    named,
+    hiddenCodes = [],
+    map = requireResult(run),
+  }: {
+    named?: string | undefined;
+    hiddenCodes?: readonly number[];
+    map?: Pick<RunResult, 'mapKey' | 'classMapSha256'>;
+  },
 ): PlannedTile {
   checkTileAddress(address);
-  const { mapKey, classMapSha256 } = requireResult(run);
+  const { mapKey, classMapSha256 } = map;
   const { grid, proj4: crs } = requirePlace(run);
   const shown = run.classes.filter(({ code }) => !hiddenCodes.includes(code));
   const palette = shown.map(({ code, colour }): [number, [number, number, number, number]] => [
@@ -35,7 +45,7 @@ export function planClassTile(
     [...readColour(colour), 255],
   ]);
   return {
-    ...describeCaching(classMapSha256, classMapSha256, [address, palette]),
+    ...describeCaching(classMapSha256, named, [address, palette]),
     async draw(signal) {
       const band = await app.files.localPath(mapKey);
       const task = { ...address, crs, grid, layer: { kind: 'classes' as const, band, palette } };

@@ -122,6 +122,9 @@ async function fillTitles(app: App, rows: readonly { job: Job; entry: QueueEntry
       case 'reproduce':
         entry.title = `Reproducing ${runTitle}`;
         break;
+      case 'post-process':
+        entry.title = `Post-processing of ${runTitle}`;
+        break;
       case 'tune':
         entry.title = tuningName ? `Tuning (${tuningName})` : 'Tuning';
         break;

@@ -75,7 +75,13 @@ async function makeAgain(
   const apart = { ...work, run: Object.assign(new Run(), run, { id: placeId }) };
   const { trainingPixels } = await trainRun(apart);
   const map = await mapRun(apart, trainingPixels);
-  return [{ what: 'Class map of the classifier', expectedSha256: result.classMapSha256, foundSha256: map.sha256 }];
+  return [
+    {
+      what: 'Class map of the classifier',
+      expectedSha256: (result.raw ?? result).classMapSha256,
+      foundSha256: map.sha256,
+    },
+  ];
 }
 
 function describeVerdict(number: number, { verdict }: Reproduction): string {

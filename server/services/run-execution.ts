@@ -4,6 +4,7 @@ import { Run } from '../entities/run.ts';
 import type { JobContext } from '../jobs/job-queue.ts';
 import { measureOverall } from './accuracy-figures.ts';
 import { recordActivity } from './activities.ts';
+import { applyRecipeSteps } from './post-processing-execution.ts';
 import { runFiles } from './run-files.ts';
 import { sendRunLetter } from './run-letter.ts';
 import { mapRun } from './run-mapping.ts';
@@ -34,6 +35,7 @@ export async function executeRun(app: App, context: JobContext): Promise<void> {
       for (const text of training.notes) context.note(text);
       await storeResult(work, training);
     }
+    await applyRecipeSteps(app, run, context);
   } catch (error) {
     if (signal.aborted && signal.reason === 'shutdown') throw error;
     if (signal.aborted) await app.files.remove(runFiles(run.id).root);

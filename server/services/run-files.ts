@@ -18,5 +18,11 @@ export function runFiles(runId: string) {
     layer: (layer: RunLayer) => `${root}${layer}.tif`,
     map: `${root}class-map.tif`,
     mapNames: `${root}class-map.tif.aux.xml`,
+    /** The map after the steps of a revision of the post-processing list. */
+    revisionMap: (number: number) => `${root}revisions/${number}/class-map.tif`,
+    revisionMapNames: (number: number) => `${root}revisions/${number}/class-map.tif.aux.xml`,
+    previews: `${root}previews/`,
+    preview: (previewId: string) => `${root}previews/${previewId}.tif`,
+    previewFigures: (previewId: string) => `${root}previews/${previewId}.json`,
   };
 }

@@ -18,7 +18,7 @@ import type { RunWork } from './run-work.ts';
 /** Rows mapped at a time: one row of blocks, so that each block of a band is decoded once. */
 const STRIP_ROWS = blockSize;
 /** Colour of unclassified pixels in the class map's file. */
-const UNCLASSIFIED_COLOR: [number, number, number] = [128, 128, 128];
+export const UNCLASSIFIED_COLOR: [number, number, number] = [128, 128, 128];
 
 const LAYER_DESCRIPTION: Record<RunLayer, string> = {
   confidence: 'Share of the winning class, percent',

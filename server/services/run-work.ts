@@ -54,7 +54,8 @@ export async function openRunWork(
   };
 }
 
-function toRunPolygon(placed: PlacedScene, run: Run, sample: RunSample): RunPolygon {
+/** A sample as drawn in the scene's pixels. @throws Error when it has no place there */
+export function toRunPolygon(placed: PlacedScene, run: Run, sample: RunSample): RunPolygon {
   const polygon = drawInPixels(placed, sample.geometry);
   if (!polygon) throw new Error(`Sample ${sample.sampleNumber} has no place in the scene’s projection.`);
   return { id: sample.sampleId, classIndex: run.classes.findIndex(({ id }) => id === sample.classId), polygon };

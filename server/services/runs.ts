@@ -134,7 +134,7 @@ export async function deleteRun(app: App, run: Run, byId: string): Promise<void>
       throw new Conflict(
         'The run is still under way.',
         {
-          found: other && !isUnderWay({ job }) ? 'it is being reproduced' : `it is ${job.state}`,
+          found: other && !isUnderWay({ job }) ? 'other work on it goes on' : `it is ${job.state}`,
           advice: 'Cancel it first.',
         },
         'run-under-way',

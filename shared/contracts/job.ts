@@ -4,7 +4,7 @@ import { idSchema, instantSchema } from './common.ts';
 export const jobStateSchema = z.enum(['queued', 'running', 'finished', 'failed', 'cancelled']);
 export type JobState = z.infer<typeof jobStateSchema>;
 /** What background work is about; `JOB_LANES` in server/jobs says which of them wait for each other. */
-export const jobKindSchema = z.enum(['ingest', 'run', 'reproduce', 'tune']);
+export const jobKindSchema = z.enum(['ingest', 'run', 'reproduce', 'tune', 'post-process']);
 export type JobKind = z.infer<typeof jobKindSchema>;
 /** Which of a project's own jobs go first; it moves nothing before the work of other projects. */
 export const jobPrioritySchema = z.enum(['low', 'normal', 'high']);

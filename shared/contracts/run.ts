@@ -2,6 +2,7 @@ import { z } from 'zod';
 import { idSchema, instantSchema, personSchema } from './common.ts';
 import { boundsSchema } from './geometry.ts';
 import { jobSchema } from './job.ts';
+import { postProcessingSchema } from './post-processing.ts';
 import { lineSchema, textSchema } from './text.ts';
 
 const seedSchema = z.number().int('A seed is a whole number.').min(0).max(4_294_967_295);
@@ -62,6 +63,8 @@ export const recipeSchema = z
     classifier: classifierSchema,
     /** Pixels whose class has a smaller share of the votes, or a smaller chance, stay unclassified (code 0). */
     minShare: z.number().min(0, 'A share is 0 or more.').max(1, 'A share is at most 1.').default(0),
+    /** Steps applied to the map in this order; absent where there are none. */
+    postProcessing: postProcessingSchema.optional(),
   })
   .strict();
 export type Recipe = z.infer<typeof recipeSchema>;

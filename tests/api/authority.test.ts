@@ -15,7 +15,8 @@ import type { Route } from '../../server/routes/route.ts';
 import { createDesign } from '../../server/services/designs.ts';
 import { createNamedRecipe } from '../../server/services/named-recipes.ts';
 import { findProject } from '../../server/services/projects.ts';
-import { startRun } from '../../server/services/runs.ts';
+import { previewPostProcessing } from '../../server/services/post-processing.ts';
+import { findRun, startRun } from '../../server/services/runs.ts';
 import { makeBlock } from '../factories/make-block.ts';
 import { makeMembership, makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround } from '../factories/make-run-ground.ts';
@@ -167,6 +168,10 @@ const TABLE: Record<string, Row> = {
   'tunings.read': LEAD_MODELLER,
   'tunings.delete': LEAD_MODELLER,
   'runs.compare': ACCURACY,
+  'post-processing.read': TEAM,
+  'post-processing.change': LEAD_MODELLER,
+  'post-processing.preview': LEAD_MODELLER,
+  'post-processing.preview-tile': LEAD_MODELLER,
   'runs.tile': TEAM,
   'runs.probe': TEAM,
   'runs.votes': TEAM,
@@ -257,6 +262,9 @@ beforeAll(async () => {
     ...{ projectId: project.id, sceneId: ground.scene.id, classId: ground.classes[0]!.id, sampleId: sample.id, runId },
     ...{ memberId: member.id, accountId: (await makeUser(test.app)).id, secret: 'no-such-secret-anywhere-at-all' },
     ...{ jobId: run.jobId, recipeId: await makeSpareRecipe(), tuningId: await makeSpareTuning() },
+    previewId: (
+      await previewPostProcessing(test.app, (await findRun(test.app, runId))!, [], new AbortController().signal)
+    ).previewId,
     ...{ layer: 'confidence', z: '4', x: '7', y: '4', designId: design.id, pointId: point.id, number: '1' },
     ...{ remarkId: await makeSpareRemark(sample.id), blockId: await makeSpareBlock() },
   };

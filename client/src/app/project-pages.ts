@@ -73,6 +73,10 @@ export const projectPages: RouteObject[] = [
     lazy: lazyPage(() => import('../pages/run-comparison/run-comparison-page.tsx'), 'RunComparisonPage'),
   },
   {
+    path: 'runs/:runId/post-processing',
+    lazy: lazyPage(() => import('../pages/post-processing/post-processing-page.tsx'), 'PostProcessingPage'),
+  },
+  {
     path: 'runs/:runId',
     lazy: lazyPage(() => import('../pages/run/run-page.tsx'), 'RunPage'),
   },

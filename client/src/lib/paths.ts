@@ -38,6 +38,7 @@ export const paths = {
   runRecord: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}/record`,
   compareRuns: (projectId: string, secondRunId?: string) =>
     `/projects/${projectId}/runs/compare${secondRunId ? `?second=${secondRunId}` : ''}`,
+  postProcessing: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}/post-processing`,
   run: (projectId: string, runId: string) => `/projects/${projectId}/runs/${runId}`,
   accuracy: (projectId: string, runId?: string) => `/projects/${projectId}/accuracy${runId ? `?run=${runId}` : ''}`,
   newDesign: (projectId: string, runId?: string) =>

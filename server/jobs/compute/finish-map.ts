@@ -52,7 +52,7 @@ export async function finishMap(input: ComputeTasks['finish-map']['input']): Pro
 }
 
 /** Values by code, of the codes that occur. */
-function toRecord(values: ArrayLike<number>, pixels: ArrayLike<number>): Record<string, number> {
+export function toRecord(values: ArrayLike<number>, pixels: ArrayLike<number>): Record<string, number> {
   return Object.fromEntries(
     Array.from(values, (value, code) => [code, value] as const).filter(([code]) => pixels[code]),
   );

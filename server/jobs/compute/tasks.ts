@@ -146,6 +146,35 @@ export interface ComputeTasks {
     };
     result: FinishedMap;
   };
+  /** Applies steps to a finished map, writes the raw codes to `rawPath` and counts what is on the map then. */
+  'post-process': {
+    input: {
+      grid: RasterGrid;
+      mapPath: string;
+      steps: readonly MapStep[];
+      rawPath: string;
+      rowAreaM2: Float64Array;
+      heldOut: readonly RunPolygon[];
+      /** Steps done, in thousandths. */
+      progress: SharedProgress;
+    };
+    result: FinishedMap & { effects: MapStepEffect[] };
+  };
+}
+
+/** A step after mapping, with class codes and pixel coordinates. */
+export type MapStep =
+  | { kind: 'majority'; windowPixels: number; ties: 'keep-centre' | 'lowest-code' }
+  | { kind: 'sieve'; minAreaM2: number; neighbours: 4 | 8 }
+  | { kind: 'recode'; pairs: readonly (readonly [from: number, to: number])[] }
+  /** Pixels inside or outside, of one code or of any but nodata, become another. */
+  | { kind: 'paint'; polygons: MultiPolygon; where: 'inside' | 'outside'; from: number | null; to: number };
+
+export interface MapStepEffect {
+  changedPixels: number;
+  changedM2: number;
+  nMerged: number | null;
+  nLeft: number | null;
 }
 
 export type ComputeKind = keyof ComputeTasks;

@@ -23,6 +23,8 @@ function isHangUp(error: unknown): boolean {
 
 const classTileQuerySchema = z.object({
   /** Codes of classes to leave transparent, with commas between. */
+  /** Digest of the map that is wanted; tiles of it may be kept for good. */
+  v: z.string().max(64).optional(),
   hide: z
     .string()
     .regex(/^\d{1,3}(,\d{1,3})*$/, 'Class codes with commas between, such as 3,7.')
@@ -54,7 +56,7 @@ export const classMapRoutes = [
     query: classTileQuerySchema,
     answer: { mediaType: 'image/webp' },
     handle: ({ app, params: { z, x, y }, query, target, req, res }) =>
-      sendTile(req, res, planClassTile(app, target.run, { z, x, y }, query.hide)),
+      sendTile(req, res, planClassTile(app, target.run, { z, x, y }, { named: query.v, hiddenCodes: query.hide })),
   }),
   route({
     id: 'runs.probe',

@@ -14,6 +14,7 @@ import { hideWhileInterpreting } from '../hide-while-interpreting.ts';
 import { route } from '../route.ts';
 import { classMapRoutes } from './class-map-routes.ts';
 import { comparisonRoutes } from './comparison-routes.ts';
+import { postProcessingRoutes } from './post-processing-routes.ts';
 import { reproductionRoutes } from './reproduction-routes.ts';
 import { findRunTarget, runParams } from './find-run.ts';
 
@@ -98,6 +99,5 @@ export const runRoutes = [
     },
   }),
   ...reproductionRoutes,
-  ...classMapRoutes.map(hideWhileInterpreting),
-  ...comparisonRoutes.map(hideWhileInterpreting),
+  ...[...classMapRoutes, ...comparisonRoutes, ...postProcessingRoutes].map(hideWhileInterpreting),
 ];

@@ -49,7 +49,7 @@ export function ClassMap({ run, scene, view, opacity, studyArea, place, onPress,
     >
       <SceneLayer scene={scene} view={view} />
       <SceneTileLayer
-        url={tileUrl(run.id, layer, hiddenCodes)}
+        url={tileUrl(run.id, layer, hiddenCodes, run.classMapSha256)}
         bounds={bounds}
         maxNativeZoom={finestTileZoom(bounds, scene.height ?? 1)}
         opacity={opacity}
@@ -76,8 +76,9 @@ export function ClassMap({ run, scene, view, opacity, studyArea, place, onPress,
   );
 }
 
-function tileUrl(runId: string, layer: ShownLayer, hiddenCodes: readonly number[]): string {
+function tileUrl(runId: string, layer: ShownLayer, hiddenCodes: readonly number[], version?: string | null): string {
   if (layer !== 'classes') return `${API_BASE}/runs/${runId}/layers/${layer}/tiles/{z}/{x}/{y}.webp`;
-  const query = hiddenCodes.length > 0 ? `?hide=${hiddenCodes.join(',')}` : '';
-  return `${API_BASE}/runs/${runId}/tiles/{z}/{x}/{y}.webp${query}`;
+  // Steps applied later change the map: the address names the one that is meant.
+  const query = [version ? `v=${version}` : '', hiddenCodes.length > 0 ? `hide=${hiddenCodes.join(',')}` : ''];
+  return `${API_BASE}/runs/${runId}/tiles/{z}/{x}/{y}.webp?${query.filter(Boolean).join('&')}`;
 }

@@ -2,6 +2,7 @@ import {
   BookmarkPlus,
   ChartNoAxesColumn,
   Columns2,
+  ListOrdered,
   MoreHorizontal,
   RotateCcw,
   ScrollText,
@@ -40,6 +41,11 @@ export function RunMenu({ run }: { run: Run }) {
         {abilities.startRuns && (
           <MenuItem icon={<SlidersHorizontal />} to={paths.newTuning(id, { runId: run.id })}>
             Tune its classifier
+          </MenuItem>
+        )}
+        {run.job.state === 'finished' && (
+          <MenuItem icon={<ListOrdered />} to={paths.postProcessing(id, run.id)}>
+            Post-processing
           </MenuItem>
         )}
         <MenuItem icon={<ScrollText />} to={paths.runRecord(id, run.id)}>
