@@ -69,6 +69,20 @@ async function memberIdOf(user: User): Promise<string> {
   return row.id;
 }
 
+describe('the time a change takes', () => {
+  it('is under a second from the answer to whoever made it until another browser hears of it', async () => {
+    const listener = await listen(team.labeller);
+    await rename('Renamed while somebody listens');
+    const answeredAt = performance.now();
+    while (!listener.text().includes('"what":"project"')) {
+      if (performance.now() - answeredAt > 5_000) throw new Error('the event did not come');
+      await new Promise((resolve) => setTimeout(resolve, 10));
+    }
+    expect(performance.now() - answeredAt).toBeLessThan(1_000);
+    await listener.leave();
+  });
+});
+
 describe('an open event stream', () => {
   it('ends for a member who is taken out, before the next word of the project, and goes on for the others', async () => {
     const gone = await listen(team.labeller);
