@@ -219,7 +219,7 @@ describe('downloads', () => {
     const x = Math.floor((((west + east) / 2 + 180) / 360) * 2 ** z);
     const lat = (((south + north) / 2) * Math.PI) / 180;
     const y = Math.floor(((1 - Math.asinh(Math.tan(lat)) / Math.PI) / 2) * 2 ** z);
-    const path = `/api/v1/runs/${finished.id}/tiles/${z}/${x}/${y}.webp`;
+    const path = `/api/v1/runs/${finished.id}/tiles/${z}/${x}/${y}.webp?v=${finished.classMapSha256}`;
     const tile = await readBytes(modeller, path);
     const { default: sharp } = await import('sharp');
     const { data } = await sharp(tile).ensureAlpha().raw().toBuffer({ resolveWithObject: true });

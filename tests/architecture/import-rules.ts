@@ -43,7 +43,7 @@ export const LAYERS: readonly Layer[] = [
   {
     name: 'demo',
     prefix: 'server/demo/',
-    may: ['island', 'services', 'entities', 'storage', 'jobs', 'raster', 'analysis', 'ground', 'shared'],
+    may: ['policies', 'island', 'services', 'entities', 'storage', 'jobs', 'raster', 'analysis', 'ground', 'shared'],
   },
   // Config, errors, the app's context: what every server layer stands on. It names the layers' types only.
   { name: 'ground', prefix: 'server/config.ts', may: [] },

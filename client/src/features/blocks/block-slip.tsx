@@ -8,7 +8,7 @@ import { ConfirmDialog } from '../../components/ui/confirm-dialog.tsx';
 import { formatHectares, formatNumber } from '../../lib/format.ts';
 import { asProblem } from '../../lib/problem-error.ts';
 import { paths } from '../../lib/paths.ts';
-import { useMoveBlock } from '../../lib/project/move-block.ts';
+import { useMoveBlock } from '../../components/blocks/move-block.ts';
 import { AgreementPart } from './agreement-part.tsx';
 import { BlockStateTag } from './block-state.tsx';
 import { useDeleteBlock } from './change-blocks.ts';

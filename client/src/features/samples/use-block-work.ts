@@ -3,7 +3,7 @@ import type { Block } from '../../../../shared/contracts/block.ts';
 import type { Polygon } from '../../../../shared/contracts/geometry.ts';
 import { sayDone } from '../../components/ui/toaster.tsx';
 import { openBlocksOf } from '../../lib/project/blocks-query.ts';
-import { useMoveBlock } from '../../lib/project/move-block.ts';
+import { useMoveBlock } from '../../components/blocks/move-block.ts';
 
 /** The block a labeller is in, and the way to their next one. */
 export function useBlockWork(projectId: string, viewerId: string, blocks: readonly Block[]) {

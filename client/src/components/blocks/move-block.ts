@@ -1,9 +1,9 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { type Block, type BlockMove, blockListSchema } from '../../../../shared/contracts/block.ts';
-import { sayDone, sayProblem } from '../../components/ui/toaster.tsx';
-import { fetchJson } from '../fetch-json.ts';
-import { blocksQuery } from './blocks-query.ts';
-import { projectKey } from './project-query.ts';
+import { sayDone, sayProblem } from '../ui/toaster.tsx';
+import { fetchJson } from '../../lib/fetch-json.ts';
+import { blocksQuery } from '../../lib/project/blocks-query.ts';
+import { projectKey } from '../../lib/project/project-query.ts';
 
 const SAID: Record<BlockMove, (name: string) => string> = {
   done: (name) => `You are done with block ${name}`,
