@@ -7,6 +7,7 @@ import { presentJob } from './present-job.ts';
 import { can } from '../policies/policy-table.ts';
 import type { Viewer } from '../policies/viewer.ts';
 import { isUnderWay } from '../services/runs.ts';
+import { completeRecipe } from './complete-recipe.ts';
 
 type ClassArea = z.infer<typeof classAreaSchema>;
 
@@ -47,7 +48,7 @@ export function presentRun(run: Run, viewer: Viewer, isMapWithheld = false): Run
     number: run.number,
     name: run.name,
     note: run.note,
-    recipe: run.recipe,
+    recipe: completeRecipe(run.recipe),
     classes: run.classes,
     sceneName: run.scene.name,
     job: presentJob(job),

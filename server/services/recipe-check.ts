@@ -1,5 +1,6 @@
 import { In, IsNull } from 'typeorm';
 import type { Recipe, RecipeCheck } from '../../shared/contracts/run.ts';
+import { sampleStateSchema } from '../../shared/contracts/sample.ts';
 import { splitSamples } from '../analysis/sampling/split-samples.ts';
 import type { App } from '../app-context.ts';
 import { Band } from '../entities/band.ts';
@@ -77,14 +78,21 @@ export async function checkRecipe(app: App, project: Project, recipe: Recipe): P
   const samples = await app.db
     .getRepository(Sample)
     .find({ where: { projectId: project.id, deletedAt: IsNull() }, order: { number: 'ASC' } });
-  const chosen = samples.filter(({ classId }) => recipe.classIds.includes(classId));
-  const unused = samples.length - chosen.length;
+  const ofClasses = samples.filter(({ classId }) => recipe.classIds.includes(classId));
+  const unused = samples.length - ofClasses.length;
   if (unused > 0) {
     warn(
       'recipe.classIds',
       `${count(unused, 'sample belongs', 'samples belong')} to classes that are not chosen. The map cannot show these classes: their ground goes to others.`,
     );
   }
+  const states = recipe.sampleStates;
+  const chosen = ofClasses.filter(({ state }) => states.includes(state));
+  const leftOut = sampleStateSchema.options.flatMap((state) => {
+    const n = ofClasses.filter((sample) => sample.state === state).length;
+    return n > 0 && !states.includes(state) ? [`${n} ${state}`] : [];
+  });
+  if (leftOut.length > 0) warn('recipe.sampleStates', `Samples left out by their review state: ${leftOut.join(', ')}.`);
   if (problems.some(({ severity }) => severity === 'stops') || !scene || !placed)
     return { problems, perClass: [], plan: null };
 

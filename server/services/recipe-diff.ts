@@ -6,6 +6,7 @@ const LABELS: Record<string, string> = {
   bandIds: 'Bands',
   classIds: 'Classes',
   heldOutShare: 'Held out of each class’s polygons',
+  sampleStates: 'Review states used',
   seed: 'Seed',
   maxPixelsPerClass: 'Most training pixels a class',
   minShare: 'Unclassified below a share of',

@@ -3,6 +3,7 @@ import { idSchema, instantSchema, personSchema } from './common.ts';
 import { boundsSchema } from './geometry.ts';
 import { jobSchema } from './job.ts';
 import { postProcessingSchema } from './post-processing.ts';
+import { sampleStateSchema } from './sample.ts';
 import { lineSchema, textSchema } from './text.ts';
 
 const seedSchema = z.number().int('A seed is a whole number.').min(0).max(4_294_967_295);
@@ -58,6 +59,12 @@ export const recipeSchema = z
     classIds: z.array(idSchema).min(2, 'Choose at least two classes.').max(254),
     /** Share of each class's polygons held out of training for the accuracy figures. */
     heldOutShare: z.number().min(0.05, 'At least 5 % is held out.').max(0.9, 'At most 90 % is held out.').default(0.3),
+    /** Review states of the samples that are used; by default all but returned ones. */
+    sampleStates: z
+      .array(sampleStateSchema)
+      .min(1, 'Choose at least one review state.')
+      .max(sampleStateSchema.options.length)
+      .default(['draft', 'submitted', 'accepted']),
     seed: seedSchema.default(1),
     maxPixelsPerClass: z.number().int().min(10, 'At least 10 pixels a class.').max(200_000).default(1_000),
     classifier: classifierSchema,

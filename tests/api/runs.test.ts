@@ -8,6 +8,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { MAP_CAUTIONS } from '../../shared/constants/cautions.ts';
 import type { Run } from '../../shared/contracts/run.ts';
 import { Project } from '../../server/entities/project.ts';
+import { Run as RunEntity } from '../../server/entities/run.ts';
+import { Sample } from '../../server/entities/sample.ts';
 import { makeClass } from '../factories/make-class.ts';
 import { makeTeam, type Team } from '../factories/make-project.ts';
 import { makeRunGround, type RunGround } from '../factories/make-run-ground.ts';
@@ -299,6 +301,41 @@ describe('the check of a recipe', () => {
     expect(texts[0]).toContain(`samples ${away.number}, ${blank.number}`);
     expect(texts.filter((text) => text.startsWith('warns') && text.includes('only 3 usable'))).toHaveLength(3);
     expect(body.perClass.map((row: { trainingPolygons: number }) => row.trainingPolygons)).toEqual([2, 2, 2]);
+  });
+
+  it('uses samples by their review state, and says how many it leaves out', async () => {
+    const made = await makeTeam(test.app);
+    const own = await makeRunGround(test.app, made.project);
+    const agent = await test.signedIn(made.modeller);
+    const ask = (recipe: object) => agent.post(`/api/v1/projects/${made.project.id}/runs/check`).send(recipe);
+    const [first, second] = own.samples;
+    await test.app.db.getRepository(Sample).update({ id: first?.id }, { state: 'returned' });
+    await test.app.db.getRepository(Sample).update({ id: second?.id }, { state: 'accepted' });
+    const polygons = (rows: { trainingPolygons: number; heldOutPolygons: number }[]) =>
+      rows.reduce((sum, row) => sum + row.trainingPolygons + row.heldOutPolygons, 0);
+
+    const usual = await ask({ ...own.recipe, sampleStates: undefined }).expect(200);
+    expect(polygons(usual.body.perClass)).toBe(own.samples.length - 1);
+    expect(usual.body.problems).toEqual([
+      { severity: 'warns', text: 'Samples left out by their review state: 1 returned.' },
+    ]);
+    const every = await ask({ ...own.recipe, sampleStates: ['draft', 'accepted', 'returned'] }).expect(200);
+    expect(polygons(every.body.perClass)).toBe(own.samples.length);
+    expect(every.body.problems).toEqual([]);
+    const accepted = await ask({ ...own.recipe, sampleStates: ['accepted'] }).expect(200);
+    expect(polygons(accepted.body.perClass)).toBe(1);
+    expect(accepted.body.problems.some(({ severity }: { severity: string }) => severity === 'stops')).toBe(true);
+    await ask({ ...own.recipe, sampleStates: [] }).expect(400);
+    await ask({ ...own.recipe, sampleStates: ['finished'] }).expect(400);
+  });
+
+  it('shows a recipe from before the choice of review states as it was: with every state', async () => {
+    const old = { ...finished.recipe, sampleStates: undefined } as unknown as Run['recipe'];
+    const runs = test.app.db.getRepository(RunEntity);
+    await runs.update({ id: finished.id }, { recipe: JSON.parse(JSON.stringify(old)) as Run['recipe'] });
+    const { body } = await modeller.get(`/api/v1/runs/${finished.id}`).expect(200);
+    expect((body as Run).recipe.sampleStates).toEqual(['draft', 'submitted', 'accepted', 'returned']);
+    await runs.update({ id: finished.id }, { recipe: finished.recipe });
   });
 
   it('maps and counts only what is inside the study area', async () => {

@@ -90,6 +90,7 @@ export async function makeRunGround(
       sceneId: scene.id,
       bandIds: scene.bands.map(({ id }) => id),
       classIds: classes.map(({ id }) => id),
+      sampleStates: ['draft', 'submitted', 'accepted'],
       heldOutShare: 0.4,
       seed: 7,
       maxPixelsPerClass: 120,

@@ -46,6 +46,7 @@ export function defaultDraft(scenes: readonly Scene[], classes: readonly LandCla
       bandIds: defaultBandIds(scene.bands),
       classIds: classes.filter((one) => one.sampleCount >= MIN_SAMPLES_PER_CLASS).map((one) => one.id),
       heldOutShare: 0.3,
+      sampleStates: ['draft', 'submitted', 'accepted'],
       seed: 1,
       maxPixelsPerClass: 1000,
       classifier: defaultClassifier('random-forest'),

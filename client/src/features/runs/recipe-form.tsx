@@ -35,6 +35,7 @@ const FIELDS = [
   'recipe.bandIds',
   'recipe.classIds',
   'recipe.heldOutShare',
+  'recipe.sampleStates',
   'recipe.seed',
   'recipe.maxPixelsPerClass',
   'recipe.classifier.featuresPerTree',

@@ -4,7 +4,7 @@ import type { Run } from '../../../../shared/contracts/run.ts';
 import type { Scene } from '../../../../shared/contracts/scene.ts';
 import { formatDateTime } from '../../lib/format-date.ts';
 import { formatNumber, formatPercent } from '../../lib/format.ts';
-import { CLASSIFIER_NAME, listClassifierSettings } from './recipe-text.ts';
+import { CLASSIFIER_NAME, listClassifierSettings, SAMPLE_STATE_NAME } from './recipe-text.ts';
 
 /** Everything the run was made by. */
 export function RecipeSummary({ run, scene }: { run: Run; scene: Scene | null }) {
@@ -15,6 +15,7 @@ export function RecipeSummary({ run, scene }: { run: Run; scene: Scene | null })
     { name: 'Classifier', value: CLASSIFIER_NAME[recipe.classifier.kind] },
     ...listClassifierSettings(recipe.classifier),
     ...(recipe.minShare > 0 ? [{ name: 'Unclassified', value: `below ${formatPercent(recipe.minShare)}` }] : []),
+    { name: 'Samples', value: recipe.sampleStates.map((state) => SAMPLE_STATE_NAME[state].toLowerCase()).join(', ') },
     { name: 'Held out', value: `${formatPercent(recipe.heldOutShare)} of each class’s polygons` },
     { name: 'Pixels a class', value: `at most ${formatNumber(recipe.maxPixelsPerClass)}` },
     { name: 'Seed', value: recipe.seed },

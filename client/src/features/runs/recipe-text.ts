@@ -1,4 +1,5 @@
 import type { ClassifierRecipe, Recipe, Run } from '../../../../shared/contracts/run.ts';
+import type { SampleState } from '../../../../shared/contracts/sample.ts';
 import { formatCount, formatNumber, formatPercent } from '../../lib/format.ts';
 
 export type ClassifierKind = ClassifierRecipe['kind'];
@@ -11,6 +12,14 @@ export const CLASSIFIER_NAME: Record<ClassifierKind, string> = {
   'nearest-neighbours': 'k-nearest neighbours',
   'gaussian-maximum-likelihood': 'Gaussian maximum likelihood',
   'minimum-distance': 'minimum distance',
+};
+
+/** What the review states of samples are called. */
+export const SAMPLE_STATE_NAME: Record<SampleState, string> = {
+  draft: 'Draft',
+  submitted: 'Submitted',
+  accepted: 'Accepted',
+  returned: 'Returned',
 };
 
 /** A run as people call it: "Run 3". */

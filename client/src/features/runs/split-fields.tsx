@@ -1,9 +1,13 @@
-import { Controller } from 'react-hook-form';
+import { Controller, useController } from 'react-hook-form';
+import { sampleStateSchema } from '../../../../shared/contracts/sample.ts';
+import { Checkbox } from '../../components/ui/checkbox.tsx';
 import { Field } from '../../components/ui/field.tsx';
 import { NumberInput } from '../../components/ui/number-input.tsx';
 import { Slider } from '../../components/ui/slider.tsx';
 import { FormSection } from './form-section.tsx';
 import { NumberField } from './number-field.tsx';
+import { FieldFault } from './pick-all.tsx';
+import { SAMPLE_STATE_NAME } from './recipe-text.ts';
 import type { RunFormControl } from './run-form-values.ts';
 
 /** What is learned from and what is held out, and how many pixels are drawn. */
@@ -13,6 +17,7 @@ export function SplitFields({ control }: { control: RunFormControl }) {
       title="Samples"
       note="Held out by whole polygon, within each class, drawn by the seed: no pixel of a held-out polygon is learned from."
     >
+      <SampleStatesField control={control} />
       <HeldOutField control={control} />
       <div className="grid items-end gap-4 sm:grid-cols-2">
         <NumberField
@@ -29,6 +34,29 @@ export function SplitFields({ control }: { control: RunFormControl }) {
         />
       </div>
     </FormSection>
+  );
+}
+
+function SampleStatesField({ control }: { control: RunFormControl }) {
+  const { field, fieldState } = useController({ control, name: 'recipe.sampleStates' });
+  const chosen = field.value ?? [];
+  return (
+    <div role="group" aria-label="Samples used, by review state">
+      <p className="text-sm font-medium">Samples used, by review state</p>
+      <div className="mt-1.5 flex flex-wrap gap-x-6 gap-y-2">
+        {sampleStateSchema.options.map((state) => (
+          <Checkbox
+            key={state}
+            isChecked={chosen.includes(state)}
+            onChange={(on) =>
+              field.onChange(sampleStateSchema.options.filter((one) => (one === state ? on : chosen.includes(one))))
+            }
+            label={SAMPLE_STATE_NAME[state]}
+          />
+        ))}
+      </div>
+      <FieldFault text={fieldState.error?.message} />
+    </div>
   );
 }
 
