@@ -56,7 +56,7 @@ export function StepCard(props: StepCardProps) {
         <IconButton label={`Remove ${name}`} size="sm" icon={<Trash2 />} disabled={isLocked} onClick={onRemove} />
       </div>
       {step.isOn && (
-        <fieldset disabled={isLocked} className="mt-2">
+        <fieldset disabled={isLocked} className="mt-2 min-w-0">
           <legend className="sr-only">{name}</legend>
           <StepFields {...props} />
         </fieldset>

@@ -43,6 +43,19 @@ export function useStepList(first: Steps): StepList {
   };
 }
 
+/** Whether two lists do the same. Who made an edit and when is the server's to say, and the order of fields tells nothing. */
+export function areSameSteps(one: Steps, other: Steps): boolean {
+  const plain = (steps: Steps) =>
+    JSON.stringify(
+      steps.map((step) =>
+        Object.entries(step)
+          .filter(([field]) => field !== 'by' && field !== 'at')
+          .sort(([a], [b]) => (a < b ? -1 : 1)),
+      ),
+    );
+  return plain(one) === plain(other);
+}
+
 /** The list with one member moved a place up (−1) or down (+1). */
 export function moveStep(steps: Steps, index: number, by: -1 | 1): Steps {
   const to = index + by;

@@ -14,7 +14,7 @@ import { useZoneLayers } from '../../features/designs/zone-layers.ts';
 import { usePreview } from '../../features/post-processing/post-processing-queries.ts';
 import { ProcessedMap } from '../../features/post-processing/processed-map.tsx';
 import { makeStep, type StepKind } from '../../features/post-processing/step-text.ts';
-import { useStepList } from '../../features/post-processing/use-step-list.ts';
+import { areSameSteps, useStepList } from '../../features/post-processing/use-step-list.ts';
 import { runTitle } from '../../features/runs/recipe-text.ts';
 import { apiUrl } from '../../lib/fetch-json.ts';
 import { useKeys } from '../../lib/keys.ts';
@@ -43,7 +43,7 @@ export function PostProcessingDesk({ run, list, scene }: PostProcessingDeskProps
   const preview = usePreview(project.id, run.id, steps.steps, mayChange && isComplete);
   const empty = usePreview(project.id, run.id, [], mayChange);
   const layers = useZoneLayers(project.id);
-  const isChanged = JSON.stringify(steps.steps) !== JSON.stringify(applied);
+  const isChanged = !areSameSteps(steps.steps, applied);
 
   const add = (kind: StepKind) => {
     if (kind === 'reclass') setIsDrawing(true);
