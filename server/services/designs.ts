@@ -6,7 +6,7 @@ import { LandClass } from '../entities/land-class.ts';
 import { Project } from '../entities/project.ts';
 import { ReferenceDesign } from '../entities/reference-design.ts';
 import { ReferencePoint } from '../entities/reference-point.ts';
-import type { Run, RunClass } from '../entities/run.ts';
+import { Run, type RunClass } from '../entities/run.ts';
 import { Conflict, InvalidInput, NotFound } from '../errors.ts';
 import { recordActivity } from './activities.ts';
 import { drawDesign } from './design-draw.ts';
@@ -62,6 +62,7 @@ export async function createDesign(
   const mapped = await readCodesAt(app, run, points);
   const classes = await listAnswerClasses(app, run);
   const id = await app.db.transaction(async (manager) => {
+    await holdMap(manager, run);
     const design = await insertDesign(manager, {
       ...{ projectId, runId: run.id, name, plan: input, strata, classes, seed, minSpacingMeters, answersPerPoint },
       ...{ leftOutBySpacing: leftOut, augmentsId: null, createdById: byId },
@@ -71,6 +72,13 @@ export async function createDesign(
     return design.id;
   });
   return announceDesign(app, projectId, id, byId);
+}
+
+/** Keeps the map the points were drawn from in place. @throws Conflict when it was post-processed meanwhile */
+async function holdMap(manager: EntityManager, run: Run): Promise<void> {
+  const current = await manager.findOne(Run, { where: { id: run.id }, lock: { mode: 'pessimistic_write' } });
+  if (current?.result && current.result.mapKey === run.result?.mapKey) return;
+  throw new Conflict('The map was changed while the points were drawn.', { advice: 'Draw them again.' });
 }
 
 type NewDesign = Pick<
