@@ -48,12 +48,16 @@ export function poolSummaries(summaries: readonly SampleSummary[], nFeatures: nu
     const difference = summary.mean.map((value, f) => value - mean[f]);
     const weight = (nPixels * summary.nPixels) / total;
     for (let f = 0; f < nFeatures; f++) {
-      for (let g = 0; g < nFeatures; g++) {
+      // The lower triangle alone, mirrored below: rounding would make the two differ, and factoring wants them the same.
+      for (let g = 0; g <= f; g++) {
         scatter[f * nFeatures + g] += summary.scatter[f * nFeatures + g] + weight * difference[f] * difference[g];
       }
     }
     for (let f = 0; f < nFeatures; f++) mean[f] += (difference[f] * summary.nPixels) / total;
     nPixels = total;
+  }
+  for (let f = 0; f < nFeatures; f++) {
+    for (let g = 0; g < f; g++) scatter[g * nFeatures + f] = scatter[f * nFeatures + g];
   }
   if (nPixels === 0) return { nPixels, mean: mean.fill(Number.NaN), covariance: null };
   return { nPixels, mean, covariance: nPixels < 2 ? null : scatter.map((value) => value / (nPixels - 1)) };

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { createRng } from '../../../server/analysis/sampling/rng.ts';
 import { computeSignatures } from '../../../server/analysis/spectral/class-signature.ts';
 import { pickFeatures, poolSummaries, summarisePixels } from '../../../server/analysis/spectral/sample-summary.ts';
 
@@ -22,6 +23,18 @@ describe('summaries of samples', () => {
     expect(pooled.nPixels).toBe(6);
     whole!.mean.forEach((value, f) => expect(pooled.mean[f]).toBeCloseTo(value, 12));
     whole!.covariance!.forEach((value, i) => expect(pooled.covariance![i]).toBeCloseTo(value, 12));
+  });
+
+  it('has a covariance that is the same above and below the diagonal to the last digit', () => {
+    const rng = createRng(3);
+    const samples = Array.from({ length: 40 }, () =>
+      summarisePixels(
+        Float32Array.from({ length: 5 * (1 + rng.nextBelow(30)) }, () => rng.nextFloat() * 1000),
+        5,
+      ),
+    );
+    const { covariance } = poolSummaries(samples, 5);
+    for (let f = 0; f < 5; f++) for (let g = 0; g < f; g++) expect(covariance![g * 5 + f]).toBe(covariance![f * 5 + g]);
   });
 
   it('has no mean without a pixel and no covariance with one', () => {
