@@ -125,8 +125,8 @@ describe('what a run has made of the land', () => {
   });
 
   it('is in no answer of any route that reads', async () => {
-    // Areas of the classes, to the square metre, are found nowhere else by chance.
-    const figures = run.areas!.flatMap(({ areaHa, pixels }) => [String(areaHa), `"pixels":${pixels}`]);
+    // Under the names a run gives them: a bare 5.76 may as well be part of the time of day.
+    const figures = run.areas!.flatMap(({ areaHa, pixels }) => [`"areaHa":${areaHa}`, `"pixels":${pixels}`]);
     expect(figures.length).toBeGreaterThan(4);
     const before = JSON.stringify((await lead.get(`${API}/runs/${run.id}`).expect(200)).body);
     expect(figures.every((figure) => before.includes(figure))).toBe(true);
