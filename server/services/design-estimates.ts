@@ -16,7 +16,7 @@ import { Project } from '../entities/project.ts';
 import type { ReferenceDesign } from '../entities/reference-design.ts';
 import { Conflict } from '../errors.ts';
 import { requireResult } from './accuracy.ts';
-import { presentFigure, presentPlain } from './design-figures.ts';
+import { presentFigure } from './design-figures.ts';
 import { loadAnsweredPoints, type AnsweredPoint } from './design-settle.ts';
 
 type Rows = Estimates['rows'];
@@ -125,12 +125,8 @@ export async function estimateDesign(app: App, design: ReferenceDesign): Promise
     proportions: primary.estimate && toProportions(primary.estimate, design.classes.length),
     overall,
     kappa: presentKappa(primary.report?.kappa ?? null, shared),
-    quantityDisagreement: presentPlain(
-      ...([primary.report?.quantityDisagreement ?? null, units.length, 'quantity', shared] as const),
-    ),
-    allocationDisagreement: presentPlain(
-      ...([primary.report?.allocationDisagreement ?? null, units.length, 'allocation', shared] as const),
-    ),
+    quantityDisagreement: presentFigure(primary.report?.quantityDisagreement ?? null, 'quantity', shared),
+    allocationDisagreement: presentFigure(primary.report?.allocationDisagreement ?? null, 'allocation', shared),
     perClass: design.classes.map((landClass, k) => {
       const of = primary.report?.perClass[k] ?? null;
       const mappedPoints = (primary.counts[k] ?? []).reduce((sum, count) => sum + count, 0);

@@ -38,12 +38,16 @@ export const FORMULAS = {
     source: `Cohen 1960, Educational and Psychological Measurement 20:37–46; ${STEHMAN}`,
   },
   quantity: {
-    formula: 'Q = ½ Σ_k |p_k+ − p_+k| of the estimated proportions; no interval is published',
-    source: 'Pontius & Millones 2011, International Journal of Remote Sensing 32:4407–4429',
+    formula:
+      'Q = ½ Σ_k |p_k+ − p_+k| of the estimated proportions; standard error by its derivatives (Taylor linearisation), undefined where a mistaken class has equal amounts; 95 % interval Q ± 1.96 S, cut at 0 and 1; near 0 the figure leans upwards, since it sums absolute differences',
+    source:
+      'Pontius & Millones 2011, International Journal of Remote Sensing 32:4407–4429; Woodruff 1971, Journal of the American Statistical Association 66:411–414',
   },
   allocation: {
-    formula: 'A = Σ_k min(p_k+ − p_kk, p_+k − p_kk) of the estimated proportions; no interval is published',
-    source: 'Pontius & Millones 2011, International Journal of Remote Sensing 32:4407–4429',
+    formula:
+      'A = Σ_k min(p_k+ − p_kk, p_+k − p_kk) of the estimated proportions; standard error by its derivatives (Taylor linearisation), undefined where a mistaken class has equal amounts; 95 % interval A ± 1.96 S, cut at 0 and 1',
+    source:
+      'Pontius & Millones 2011, International Journal of Remote Sensing 32:4407–4429; Woodruff 1971, Journal of the American Statistical Association 66:411–414',
   },
 } as const;
 
@@ -57,16 +61,6 @@ export function presentFigure(
   if (!figure) return { ...UNDEFINED, how };
   const { value, standardError, low, high, nUnits, isFragile, cautious } = figure;
   return { value, standardError, low, high, n: nUnits, isFragile, cautious, how };
-}
-
-/** A share without a standard error. */
-export function presentPlain(
-  value: number | null,
-  nUnits: number,
-  kind: keyof typeof FORMULAS,
-  inputs: How['inputs'],
-): DesignFigure {
-  return { ...UNDEFINED, value, n: nUnits, isFragile: false, how: { ...FORMULAS[kind], inputs } };
 }
 
 const UNDEFINED = {

@@ -3,6 +3,7 @@ import {
   addToConfusionMatrix,
   confusionMatrixFromRows,
   createConfusionMatrix,
+  summariseConfusionMatrix,
 } from '../../server/analysis/accuracy/confusion-matrix.ts';
 import { computeDisagreement, toPopulationMatrix } from '../../server/analysis/accuracy/disagreement.ts';
 import {
@@ -11,6 +12,7 @@ import {
   type AllocationRule,
 } from '../../server/analysis/accuracy/allocate-sample.ts';
 import { planSampleSize } from '../../server/analysis/accuracy/plan-sample-size.ts';
+import { createRng } from '../../server/analysis/sampling/rng.ts';
 import { estimateStratified, type StratumSample } from '../../server/analysis/accuracy/stratified-estimate.ts';
 import { checkValues } from '../fixtures/check-values.ts';
 
@@ -55,8 +57,18 @@ describe('Olofsson et al. 2014, Remote Sensing of Environment 148:42–57, Table
     });
   });
 
-  it('is not what the counts say without their weights (587/640)', () => {
+  it('is not what the counts say without their weights: 587/640, and the shares of the columns (control)', () => {
     expect(Math.abs(result.overall.value - 587 / 640)).toBeGreaterThan(0.02);
+    const unweighted = summariseConfusionMatrix(confusionMatrixFromRows(counts)).perClass;
+    [0.956522, 0.982143, 0.874286, 0.920588].forEach((dropped, k) => {
+      expect(unweighted[k].producers).toBeCloseTo(dropped, 6);
+      expect(Math.abs(result.perClass[k].producers!.value - dropped)).toBeGreaterThan(0.02);
+    });
+  });
+
+  it('has a standard error of the deforested area of 34,907 pixels, where the paper prints 34,097', () => {
+    const nPixels = mappedPixels.reduce((sum, size) => sum + size);
+    expect(result.perClass[0].areaShare.standardError! * nPixels).toBeCloseTo(34_907.22, 1);
   });
 
   it('has the same proportions as the matrix that quantity and allocation disagreement are taken from', () => {
@@ -99,6 +111,58 @@ describe('Stehman 2014, International Journal of Remote Sensing 35:4923–4939: 
     expect(one.users!.standardError).toBeCloseTo(seUsers, 6);
     expect(one.producers!.value).toBeCloseTo(producers, 6);
     expect(one.producers!.standardError).toBeCloseTo(seProducers, 6);
+  });
+});
+
+describe('standard errors of quantity and allocation disagreement, in one stratum worked by hand', () => {
+  const n = 200;
+  const [only12, only21] = [24 / n, 10 / n];
+  const result = estimateStratified([{ size: 50_000, counts: confusionMatrixFromRows([[90, 24], [10, 76]]) }])!; // prettier-ignore
+
+  it('are those of the difference of two paired shares and of twice the smaller one', () => {
+    const difference = only12 - only21;
+    expect(result.quantity.value).toBeCloseTo(difference, 12);
+    expect(result.quantity.standardError).toBeCloseTo(Math.sqrt((only12 + only21 - difference ** 2) / (n - 1)), 12);
+    expect(result.allocation.value).toBeCloseTo(2 * only21, 12);
+    expect(result.allocation.standardError).toBeCloseTo(2 * Math.sqrt((only21 * (1 - only21)) / (n - 1)), 12);
+  });
+
+  it('agree with the spread over 3000 samples drawn again from the estimated proportions', () => {
+    const rng = createRng(5);
+    const cells = [90, 24, 10, 76];
+    const drawn = Array.from({ length: 3000 }, () => {
+      const counts = [0, 0, 0, 0];
+      for (let i = 0; i < n; i++) {
+        let left = rng.nextFloat() * n;
+        let cell = 0;
+        while (left >= cells[cell]) left -= cells[cell++];
+        counts[cell]++;
+      }
+      return computeDisagreement(confusionMatrixFromRows([counts.slice(0, 2), counts.slice(2)]))!;
+    });
+    for (const figure of ['quantity', 'allocation'] as const) {
+      const mean = drawn.reduce((sum, one) => sum + one[figure], 0) / drawn.length;
+      const spread = Math.sqrt(drawn.reduce((sum, one) => sum + (one[figure] - mean) ** 2, 0) / drawn.length);
+      // Quantity is folded at 0, which takes a little off its spread.
+      expect(Math.abs(spread / result[figure].standardError! - 1)).toBeLessThan(0.06);
+    }
+  });
+
+  it('are undefined, not 0, where amounts come out alike though places do not', () => {
+    const alike = estimateStratified([{ size: 50_000, counts: confusionMatrixFromRows([[30, 20], [20, 30]]) }])!; // prettier-ignore
+    expect(alike.quantity).toMatchObject({ value: 0, standardError: null });
+    expect(alike.allocation.standardError).toBeNull();
+  });
+
+  it('are exactly 0 for perfect agreement, with that of kappa and of every class', () => {
+    const perfect = estimateStratified(strataOfMapClasses([[37, 0, 0], [0, 11, 0], [0, 0, 3]], [123_457, 7_919, 311]))!; // prettier-ignore
+    expect(perfect.kappa).toMatchObject({ value: 1, standardError: 0 });
+    expect(perfect.overall).toMatchObject({ value: 1, standardError: 0 });
+    expect(perfect.quantity).toMatchObject({ value: 0, standardError: 0 });
+    expect(perfect.allocation.standardError).toBe(0);
+    for (const { users, producers, f1, areaShare } of perfect.perClass) {
+      for (const figure of [users, producers, f1, areaShare]) expect(figure!.standardError).toBe(0);
+    }
   });
 });
 

@@ -23,6 +23,9 @@ export interface Estimate {
   effectiveUnits: number;
 }
 
+/** Share of the largest value below which residuals differ by rounding only. */
+const ROUNDING = 1e-12;
+
 /** Value of a unit that was mapped as one class and is another on the ground. */
 export type CellValue = (mapped: number, reference: number) => number;
 
@@ -32,7 +35,8 @@ export type CellValue = (mapped: number, reference: number) => number;
  *
  * `y` and `x` give a unit's values from its cell; units outside the zone have zeros. `null` when no unit has any x.
  * f_h is n_h / N_h with the finite population correction and 0 without. `onlyWhereX` leaves strata without any x out of
- * the variance (they add nothing to it) even where they hold a single unit.
+ * the variance (they add nothing to it) even where they hold a single unit. Residuals that differ by rounding only count
+ * as equal, so that perfect agreement has a standard error of 0.
  * Source: Cochran 1977, Sampling Techniques, sec. 6.11; Stehman 2014, International Journal of Remote Sensing
  * 35:4923–4939. Effective number: Kish 1965, Survey Sampling.
  */
@@ -60,22 +64,34 @@ export function estimateCombinedRatio(
   let variance: number | null = 0;
   for (const { weight, size, nUnits: n, counts } of strata) {
     let sum = 0;
-    let squares = 0;
+    let scale = 0;
+    let nOutside = n;
     let hasX = false;
     forEachCell(counts, (count, mapped, reference) => {
       const valueX = x(mapped, reference);
-      const residual = y(mapped, reference) - value * valueX;
+      const valueY = y(mapped, reference);
       hasX ||= valueX !== 0;
-      sum += count * residual;
-      squares += count * residual ** 2;
+      sum += count * (valueY - value * valueX);
+      scale = Math.max(scale, Math.abs(valueY), Math.abs(value * valueX));
+      nOutside -= count;
     });
     if (!hasX && onlyWhereX) continue;
     if (n < 2) {
       variance = null;
       break;
     }
+    // Second pass about the mean: Σr² − (Σr)²/n would lose half the digits where residuals are nearly equal.
+    const mean = sum / n;
+    const squareOf = (residual: number): number => {
+      const deviation = residual - mean;
+      return Math.abs(deviation) <= ROUNDING * scale ? 0 : deviation ** 2;
+    };
+    let squares = nOutside > 0 ? nOutside * squareOf(0) : 0;
+    forEachCell(counts, (count, mapped, reference) => {
+      squares += count * squareOf(y(mapped, reference) - value * x(mapped, reference));
+    });
     const correction = finitePopulationCorrection ? 1 - n / size : 1;
-    variance += (weight ** 2 * correction * Math.max(0, squares - sum ** 2 / n)) / ((n - 1) * n);
+    variance += (weight ** 2 * correction * squares) / ((n - 1) * n);
   }
   return {
     value,

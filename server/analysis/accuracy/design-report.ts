@@ -1,5 +1,4 @@
 import type { Estimate } from './combined-ratio.ts';
-import { computeDisagreement } from './disagreement.ts';
 import { intervalOfShare, normalInterval, type DesignIntervalKind } from './design-interval.ts';
 import type { Interval } from './interval.ts';
 import type { RecoveredIntervals } from './recovered-interval.ts';
@@ -41,9 +40,9 @@ export interface DesignReport {
   nUnits: number;
   overall: ReportedFigure;
   kappa: ReportedFigure;
-  /** Of the estimated population proportions; without standard errors. */
-  quantityDisagreement: number;
-  allocationDisagreement: number;
+  /** Of the estimated population proportions, with the interval ± z·S cut at 0 and 1. */
+  quantityDisagreement: ReportedFigure;
+  allocationDisagreement: ReportedFigure;
   perClass: ReportedClass[];
 }
 
@@ -82,13 +81,12 @@ export function reportDesign(
   }
   const share = (figure: Estimate | null, kind = interval): ReportedFigure =>
     toFigure(figure, intervalOfShare(figure, kind, confidence));
-  const disagreement = computeDisagreement(estimate.proportions)!;
   return {
     nUnits: estimate.nUnits,
     overall: share(estimate.overall),
     kappa: toFigure(estimate.kappa, clip(normalInterval(estimate.kappa, confidence), -1, 1)),
-    quantityDisagreement: disagreement.quantity,
-    allocationDisagreement: disagreement.allocation,
+    quantityDisagreement: share(estimate.quantity, 'normal'),
+    allocationDisagreement: share(estimate.allocation, 'normal'),
     perClass: estimate.perClass.map(({ users, producers, f1, areaShare }, k) => {
       const shareOfArea = share(areaShare, 'normal');
       const mapped = mappedAreaHa?.[k] ?? null;

@@ -1,3 +1,4 @@
+import type { CellValue } from './combined-ratio.ts';
 import { confusionMatrixMargins, type ConfusionMatrix } from './confusion-matrix.ts';
 
 export interface Disagreement {
@@ -67,4 +68,29 @@ export function computeDisagreement(matrix: ConfusionMatrix): Disagreement | nul
     return { quantity: q, allocation: a };
   });
   return { agreement, quantity, allocation, perClass };
+}
+
+/**
+ * Derivatives of quantity and allocation disagreement by the cells of the estimated proportions, for their standard
+ * errors by Taylor linearisation.
+ *
+ * ∂Q/∂p_ij = ½(s_i − s_j) with s_k the sign of p_k+ − p_+k; allocation is 1 − agreement − Q. `null` where a class that is
+ * mistaken for others, or they for it, has the same amount on the map and in the reference: Q has a kink there, so no
+ * derivative, and 0 would claim what is not known.
+ * Source: Woodruff 1971, Journal of the American Statistical Association 66:411–414, for the linearisation; figures as
+ * in `computeDisagreement`.
+ */
+export function differentiateDisagreement(
+  proportions: ConfusionMatrix,
+): { quantity: CellValue; allocation: CellValue } | null {
+  const { mapped, reference } = confusionMatrixMargins(proportions);
+  const sign: number[] = [];
+  for (let k = 0; k < proportions.nClasses; k++) {
+    const difference = mapped[k] - reference[k];
+    const isLevel = Math.abs(difference) <= 1e-12;
+    if (isLevel && mapped[k] - proportions.counts[k * proportions.nClasses + k] > 1e-12) return null;
+    sign.push(isLevel ? 0 : Math.sign(difference));
+  }
+  const quantity: CellValue = (i, j) => (sign[i] - sign[j]) / 2;
+  return { quantity, allocation: (i, j) => -Number(i === j) - quantity(i, j) };
 }

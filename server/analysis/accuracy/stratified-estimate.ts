@@ -1,4 +1,5 @@
 import { estimateCombinedRatio, type CellValue, type CountedStratum, type Estimate } from './combined-ratio.ts';
+import { computeDisagreement, differentiateDisagreement } from './disagreement.ts';
 import { confusionMatrixMargins, createConfusionMatrix, type ConfusionMatrix } from './confusion-matrix.ts';
 
 /** A stratum of the mapped area and what was found at the reference units drawn in it at random. */
@@ -21,6 +22,9 @@ export interface StratifiedEstimate {
   overall: Estimate;
   /** Kappa of the estimated proportions; `null` where expected agreement is 1. */
   kappa: Estimate | null;
+  /** Quantity and allocation disagreement of the estimated proportions. */
+  quantity: Estimate;
+  allocation: Estimate;
   perClass: {
     /** Estimated share of the area that is of this class on the ground. */
     areaShare: Estimate;
@@ -39,8 +43,8 @@ export interface StratifiedEstimate {
  * Shares are weighted means over strata; user's and producer's accuracy and F1 are combined ratio estimates. With strata
  * equal to the map classes and no finite population correction this is Olofsson et al. 2014, eq. 5–7 and 10–11. For a
  * zone, pass only the units inside it in `counts` and the others of the stratum in `nOutside` (estimation for a domain).
- * The standard error of kappa comes from its derivatives by the cells (Taylor linearisation); in a single stratum it is
- * the large-sample one of `computeKappa` with n − 1 for n.
+ * The standard errors of kappa and of both disagreements come from their derivatives by the cells (Taylor linearisation); that of kappa in a single
+ * stratum is the large-sample one of `computeKappa` with n − 1 for n.
  * Returns `null` when a stratum of some size has no unit, since nothing is then known of it, and when no unit lies in
  * the zone.
  * Source: Stehman 2014, International Journal of Remote Sensing 35:4923–4939; Olofsson et al. 2014, Remote Sensing of
@@ -78,12 +82,18 @@ export function estimateStratified(
   for (let i = 0; i < proportions.counts.length; i++) proportions.counts[i] /= inZone;
 
   const kappa = linearise(proportions);
+  const disagreement = computeDisagreement(proportions)!;
+  const derivatives = differentiateDisagreement(proportions);
+  const spreadOr = (spread: Estimate | null, value: number): Estimate =>
+    spread ? { ...spread, value } : { ...overall, value, standardError: null };
   const spreadOfKappa = kappa && ratio(kappa.derivative, one);
   return {
     nUnits: overall.nUnits,
     proportions,
     overall,
     kappa: spreadOfKappa && { ...spreadOfKappa, value: kappa.value },
+    quantity: spreadOr(derivatives && ratio(derivatives.quantity, one), disagreement.quantity),
+    allocation: spreadOr(derivatives && ratio(derivatives.allocation, one), disagreement.allocation),
     perClass: Array.from({ length: nClasses }, (_, k) => {
       const isMapped: CellValue = (mapped) => Number(mapped === k);
       const isReference: CellValue = (_mapped, reference) => Number(reference === k);

@@ -97,7 +97,7 @@ describe('report of a design', () => {
     expect(report.overall.value).toBeCloseTo(0.946512, 6);
     expect(Math.abs(report.overall.value! - 587 / 640)).toBeGreaterThan(0.02);
     const { quantityDisagreement, allocationDisagreement } = report;
-    expect(report.overall.value! + quantityDisagreement + allocationDisagreement).toBeCloseTo(1, 12);
+    expect(report.overall.value! + quantityDisagreement.value! + allocationDisagreement.value!).toBeCloseTo(1, 12);
   });
 
   it('calls figures fragile that rest on few points, and gives the cautious interval beside', () => {

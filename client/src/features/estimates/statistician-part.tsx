@@ -72,10 +72,9 @@ function Figures({ estimates }: { estimates: Estimates }) {
   );
 }
 
-/** Some figures have no published standard error: that is not the same as one that cannot be computed. */
-function standardErrorText({ value, standardError }: DesignFigure): string {
-  if (standardError !== null) return formatNumber(standardError, 4);
-  return value === null ? 'undefined' : 'none published';
+/** A standard error that cannot be computed is undefined, never 0. */
+function standardErrorText({ standardError }: DesignFigure): string {
+  return standardError === null ? 'undefined' : formatNumber(standardError, 4);
 }
 
 function Strata({ estimates: { design } }: { estimates: Estimates }) {
