@@ -32,7 +32,7 @@ let lead: Agent;
 let reviewer: Agent;
 let dir = '';
 let projectPath = '';
-let runIds: string[] = [];
+const runIds: string[] = [];
 let maps: Uint8Array[] = [];
 
 /** Two zones side by side: columns 0–39 and 40–79; the last sixteen columns lie in none. */
