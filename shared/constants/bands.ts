@@ -41,4 +41,3 @@ export const COMPOSITES = [
   { id: 'infrared', name: 'Colour infrared', roles: ['nir', 'red', 'green'] },
   { id: 'shortwave', name: 'Shortwave', roles: ['swir2', 'nir', 'red'] },
 ] as const satisfies readonly { id: string; name: string; roles: readonly [BandRole, BandRole, BandRole] }[];
-export type CompositeId = (typeof COMPOSITES)[number]['id'];

@@ -44,7 +44,6 @@ export const deviceSchema = z.object({
   current: z.boolean(),
 });
 export const deviceListSchema = z.object({ devices: z.array(deviceSchema) });
-export type Device = z.infer<typeof deviceSchema>;
 
 /** A welcome or reset link, opened: whom it is for. */
 export const welcomeSchema = z.object({ email: z.string(), name: z.string(), purpose: z.enum(['welcome', 'reset']) });

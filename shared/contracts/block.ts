@@ -18,7 +18,6 @@ export const blockAssignmentSchema = z.object({
   /** Classes of which they drew the target; null without a target. */
   classesReached: z.number().int().nullable(),
 });
-export type BlockAssignment = z.infer<typeof blockAssignmentSchema>;
 
 export const blockSchema = z.object({
   id: idSchema,

@@ -7,7 +7,6 @@ import { textSchema } from './text.ts';
 /** What a pixel may be before a step: a class by its id, or unclassified. Pixels without data are never changed to a class. */
 const mapValueSchema = z.union([z.literal('unclassified'), idSchema]);
 const mapTargetSchema = z.union([z.literal('unclassified'), z.literal('nodata'), idSchema]);
-export type MapTarget = z.infer<typeof mapTargetSchema>;
 
 const stepFields = {
   /** Made by whoever adds the step; the same over all revisions. */

@@ -36,7 +36,6 @@ export const strataKindSchema = z.union([
   z.object({ kind: z.literal('from-to'), runId: idSchema }).strict(),
   z.object({ kind: z.literal('zones'), layerId: idSchema }).strict(),
 ]);
-export type StrataKind = z.infer<typeof strataKindSchema>;
 
 const planFields = {
   runId: idSchema,

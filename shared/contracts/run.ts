@@ -75,7 +75,6 @@ export const recipeSchema = z
   })
   .strict();
 export type Recipe = z.infer<typeof recipeSchema>;
-export type RecipeInput = z.input<typeof recipeSchema>;
 
 export const startRunSchema = z
   .object({

@@ -29,7 +29,6 @@ export const reviewSamplesSchema = z
     path: ['comment'],
     error: 'Say what is to be done: a sample is returned with a comment.',
   });
-export type ReviewSamples = z.input<typeof reviewSamplesSchema>;
 
 export const reviewOutcomeSchema = z.object({
   samples: z.array(sampleSchema),
@@ -71,6 +70,5 @@ export const sampleThreadSchema = z.object({
   remarks: z.array(sampleRemarkSchema),
   abilities: z.object({ resolve: z.boolean() }),
 });
-export type SampleThread = z.infer<typeof sampleThreadSchema>;
 export const addRemarkSchema = z.object({ text: commentSchema.min(1, 'Write the comment.') }).strict();
 export const resolveRemarkSchema = z.object({ resolved: z.boolean() }).strict();

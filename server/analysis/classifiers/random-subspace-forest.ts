@@ -111,11 +111,11 @@ function trainTree(
 /** Decrease of impurity by feature; the library keeps it at each node as `gain`, of the rows that reached the node. */
 function sumGains(root: CartNode, usedFeatures: readonly number[], nFeatures: number, nRows: number): Float64Array {
   const sums = new Float64Array(nFeatures);
-  const todo = [root];
-  for (let node = todo.pop(); node; node = todo.pop()) {
+  const pending = [root];
+  for (let node = pending.pop(); node; node = pending.pop()) {
     if (!node.left || !node.right) continue;
     sums[usedFeatures[node.splitColumn!]] += (node.gain! * node.numberSamples!) / nRows;
-    todo.push(node.left, node.right);
+    pending.push(node.left, node.right);
   }
   return sums;
 }
